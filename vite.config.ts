@@ -1,0 +1,32 @@
+import tailwind from '@tailwindcss/vite';
+import react from '@vitejs/plugin-react';
+import { defineConfig } from 'vitest/config';
+
+const api = `http://127.0.0.1:${process.env.ORIEL_PORT ?? '4000'}`;
+
+/**
+ * One configuration for two tools: Vite builds web/ into dist/web, Vitest runs tests/ from the top of the tree.
+ * Tests that draw pages ask for a document in their first line: `@vitest-environment happy-dom`.
+ */
+export default defineConfig({
+  root: process.env.VITEST ? '.' : 'web',
+  plugins: [react(), tailwind()],
+  build: {
+    outDir: process.env.VITEST ? 'dist/web' : '../dist/web',
+    emptyOutDir: true,
+    target: 'es2022',
+    manifest: true,
+    // Pictures and fonts stay files: the page's content policy allows no data: address for scripts or fonts.
+    assetsInlineLimit: 0,
+  },
+  server: {
+    host: '127.0.0.1',
+    proxy: { '/api': api, '/pictures': api },
+  },
+  test: {
+    include: ['tests/**/*.test.ts', 'tests/**/*.test.tsx'],
+    environment: 'node',
+    testTimeout: 30_000,
+    hookTimeout: 90_000,
+  },
+});

@@ -1,0 +1,14 @@
+import i18next from 'i18next';
+import { initReactI18next } from 'react-i18next';
+import english from '../messages/en.json' with { type: 'json' };
+
+/** Starts the words of the page. English ships with the page; another language is one more file beside en.json. */
+export async function startWords(): Promise<void> {
+  await i18next.use(initReactI18next).init({
+    lng: 'en',
+    fallbackLng: 'en',
+    resources: { en: { translation: english } },
+    // React escapes what it writes; escaping twice would show &amp; in names.
+    interpolation: { escapeValue: false },
+  });
+}

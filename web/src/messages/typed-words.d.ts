@@ -1,0 +1,9 @@
+import 'i18next';
+import type english from './en.json';
+
+declare module 'i18next' {
+  interface CustomTypeOptions {
+    defaultNS: 'translation';
+    resources: { translation: typeof english };
+  }
+}

@@ -1,0 +1,30 @@
+import { createBrowserRouter, type RouteObject } from 'react-router-dom';
+import { BrokenPage } from './pages/broken-page.tsx';
+import { NotFoundPage } from './pages/not-found-page.tsx';
+import { Root } from './pages/root.tsx';
+import { Pending } from './ui/pending.tsx';
+
+/** Without a session: signing in and up, resetting, joining a studio. */
+const doorPages: RouteObject[] = [];
+
+/** The studio's pages, inside the shell with the navigation at the left. */
+const studioPages: RouteObject[] = [];
+
+/** The guests' pages: sheets, deliveries and what they were ever invited to. */
+const guestPages: RouteObject[] = [];
+
+/** The site map. Every page is loaded when it is first visited. */
+export const router = createBrowserRouter([
+  {
+    path: '/',
+    element: <Root />,
+    errorElement: <BrokenPage />,
+    hydrateFallbackElement: <Pending />,
+    children: [
+      ...doorPages,
+      ...guestPages,
+      { lazy: () => import('./pages/studio/studio-layout.tsx'), children: studioPages },
+      { path: '*', element: <NotFoundPage /> },
+    ],
+  },
+]);
