@@ -1,13 +1,11 @@
 import fs from 'node:fs';
 import os from 'node:os';
 import path from 'node:path';
+import { OWNER_FILE } from '../folder-owner.ts';
 import { commandLine, isAlive, readMark, stillRuns, waitForEnd } from '../processes.ts';
 
 /** Temporary clusters are made under os.tmpdir() with this prefix, so that a later start can find those left behind. */
 export const TEMPORARY_PREFIX = 'oriel-pg-';
-
-/** File beside the cluster that names the process that started it. */
-export const OWNER_FILE = 'owner.json';
 
 const CLUSTER = 'cluster';
 
