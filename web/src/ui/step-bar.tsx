@@ -1,0 +1,41 @@
+import { useTranslation } from 'react-i18next';
+import { NavLink } from 'react-router-dom';
+import { joinClasses } from './join-classes.ts';
+
+export interface Step {
+  to: string;
+  words: string;
+  /** Its one figure: "184", "42 chosen", "–". */
+  figure: string;
+}
+
+/** A commission's pages as its steps, left to right; drawn below the cells of the title block. */
+export function StepBar({ steps, label }: { steps: Step[]; label?: string }) {
+  const { t } = useTranslation();
+  return (
+    <nav aria-label={label ?? t('ui.steps')} className="overflow-x-auto border-t border-ink">
+      <ul className="flex">
+        {steps.map((step, at) => (
+          <li key={step.to} className={joinClasses('min-w-24 flex-1', at > 0 && 'border-l border-line')}>
+            <NavLink
+              to={step.to}
+              className={({ isActive }) =>
+                joinClasses(
+                  'block h-full px-3.5 py-2 -outline-offset-4 focus-visible:shadow-none',
+                  isActive ? 'bg-ink text-sheet focus-visible:outline-sheet' : 'text-mute hover:bg-hair',
+                )
+              }
+            >
+              {({ isActive }) => (
+                <>
+                  <span className={joinClasses('block', isActive && 'font-bold')}>{step.words}</span>
+                  <span className="block text-13 whitespace-nowrap">{step.figure}</span>
+                </>
+              )}
+            </NavLink>
+          </li>
+        ))}
+      </ul>
+    </nav>
+  );
+}
