@@ -24,7 +24,13 @@ export function TitleBlock({ cells, children, className }: Props) {
     <div className={joinClasses('border border-ink bg-sheet', className)}>
       <dl className="grid grid-cols-2 overflow-hidden md:grid-cols-(--columns)" style={{ '--columns': columns } as React.CSSProperties}>
         {cells.map((cell) => (
-          <div key={cell.label} className={joinClasses('-mt-px -ml-px min-w-0 border-t border-l border-line px-3 py-2 md:px-3.5', cell.wideOnly && 'hidden md:block')}>
+          <div
+            key={cell.label}
+            className={joinClasses(
+              '-mt-px -ml-px min-w-0 border-t border-l border-line px-3 py-2 md:px-3.5',
+              cell.wideOnly && 'hidden md:block',
+            )}
+          >
             <dt className="lettering">{cell.label}</dt>
             <dd className="font-bold wrap-break-word">{cell.value}</dd>
           </div>
