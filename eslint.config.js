@@ -26,5 +26,9 @@ export default ts.config(
     plugins: { 'react-hooks': hooks },
     rules: { ...hooks.configs.recommended.rules },
   },
-  { files: ['**/*.cjs'], languageOptions: { globals: { ...globals.node, ...globals.commonjs } }, rules: { '@typescript-eslint/no-require-imports': 'off' } },
+  {
+    files: ['**/*.cjs'],
+    languageOptions: { globals: { ...globals.node, ...globals.commonjs } },
+    rules: { '@typescript-eslint/no-require-imports': 'off' },
+  },
 );

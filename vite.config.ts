@@ -2,7 +2,7 @@ import tailwind from '@tailwindcss/vite';
 import react from '@vitejs/plugin-react';
 import { defineConfig } from 'vitest/config';
 
-const api = `http://127.0.0.1:${process.env.ORIEL_PORT ?? '4000'}`;
+const api = `http://127.0.0.1:${process.env.ORIEL_PORT ?? '4400'}`;
 
 /**
  * One configuration for two tools: Vite builds web/ into dist/web, Vitest runs tests/ from the top of the tree.
@@ -24,9 +24,31 @@ export default defineConfig({
     proxy: { '/api': api, '/pictures': api },
   },
   test: {
-    include: ['tests/**/*.test.ts', 'tests/**/*.test.tsx'],
-    environment: 'node',
     testTimeout: 30_000,
     hookTimeout: 90_000,
+    projects: [
+      {
+        extends: true,
+        test: { name: 'pure', include: ['tests/{domain,imaging,web}/**/*.test.{ts,tsx}'] },
+      },
+      {
+        extends: true,
+        test: {
+          name: 'house',
+          include: ['tests/**/*.test.ts'],
+          exclude: ['tests/{domain,imaging,web,browser}/**'],
+          globalSetup: ['tests/support/cluster.ts'],
+        },
+      },
+      {
+        extends: true,
+        test: {
+          name: 'browser',
+          include: ['tests/browser/**/*.test.ts'],
+          globalSetup: ['tests/support/cluster.ts', 'tests/browser/build-web.ts'],
+          testTimeout: 60_000,
+        },
+      },
+    ],
   },
 });

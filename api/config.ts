@@ -7,6 +7,7 @@ const Environment = z.object({
   NODE_ENV: z.enum(['development', 'test', 'production']).default('production'),
   ORIEL_PORT: z.coerce.number().int().min(0).default(4400),
   ORIEL_METRICS_PORT: z.coerce.number().int().min(0).default(4401),
+  ORIEL_WORKER_METRICS_PORT: z.coerce.number().int().min(0).optional(),
   ORIEL_HOST: z.string().default('127.0.0.1'),
   /** What links in mails and signed addresses begin with. */
   ORIEL_ADDRESS: z.url().optional(),
@@ -55,6 +56,7 @@ export function loadConfig(environment: Record<string, string | undefined>) {
     host: env.ORIEL_HOST,
     port: env.ORIEL_PORT,
     metricsPort: env.ORIEL_METRICS_PORT,
+    workerMetricsPort: env.ORIEL_WORKER_METRICS_PORT,
     address: address.replace(/\/$/, ''),
     /** Cookies are Secure wherever the public address is https. */
     secureCookies: address.startsWith('https:'),

@@ -41,11 +41,7 @@ async function* walkAll(held: Held[]): AsyncGenerator<FoundFile> {
   }
 }
 
-async function* walkHandle(
-  handle: FileSystemHandle,
-  above: string,
-  root?: FileSystemDirectoryHandle,
-): AsyncGenerator<FoundFile> {
+async function* walkHandle(handle: FileSystemHandle, above: string, root?: FileSystemDirectoryHandle): AsyncGenerator<FoundFile> {
   const path = above + handle.name;
   if (handle.kind === 'file') {
     const fileHandle = handle as FileSystemFileHandle;

@@ -2,9 +2,7 @@ import type { UploadItem } from './upload-item.ts';
 
 /** One request that a file needs next. */
 export type NextRequest =
-  | { kind: 'offer'; item: UploadItem }
-  | { kind: 'part'; item: UploadItem; number: number }
-  | { kind: 'complete'; item: UploadItem };
+  { kind: 'offer'; item: UploadItem } | { kind: 'part'; item: UploadItem; number: number } | { kind: 'complete'; item: UploadItem };
 
 /** Files that are begun on the server at the same time, those that wait to retry among them. */
 export const BEGUN_AT_ONCE = 8;

@@ -10,11 +10,7 @@ export type Outcome = { kind: 'going' } | { kind: 'sent' } | { kind: 'known'; se
  * @param moved is told of bytes that left
  * @throws what the transport throws
  */
-export async function perform(
-  next: NextRequest,
-  transport: UploadTransport,
-  moved: (bytes: number) => void,
-): Promise<Outcome> {
+export async function perform(next: NextRequest, transport: UploadTransport, moved: (bytes: number) => void): Promise<Outcome> {
   const { item } = next;
   const { signal } = item.stop;
   if (next.kind === 'part') return sendPart(item, next.number, transport, moved, signal);

@@ -35,7 +35,11 @@ export function unfinishedInBrowser(scope: string): UnfinishedStore {
       const all = await entries<string, Unfinished>(store);
       return all.filter(([name]) => name.startsWith(`${scope}/`)).map(([, file]) => file);
     },
-    keep: (files) => setMany(files.map((file): [string, Unfinished] => [key(file.id), file]), store),
+    keep: (files) =>
+      setMany(
+        files.map((file): [string, Unfinished] => [key(file.id), file]),
+        store,
+      ),
     drop: (ids) => delMany(ids.map(key), store),
   };
 }

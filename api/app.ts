@@ -1,0 +1,70 @@
+import path from 'node:path';
+import express, { type Express, Router } from 'express';
+import helmet from 'helmet';
+import { healthRoutes } from './features/health/routes.ts';
+import { notFound, problems } from './middleware/problem.ts';
+import { requestLog } from './middleware/request-log.ts';
+import type { RouteContext } from './middleware/route-context.ts';
+import { sameOrigin } from './middleware/same-origin.ts';
+
+/** The features' routers below /api, in the order of a commission's life. */
+export function apiRoutes(_routes: RouteContext): Router {
+  const api = Router();
+  return api;
+}
+
+/** The application without a port: middleware in its order, the features, the web pages, the errors. */
+export function buildApp(routes: RouteContext, observe?: express.RequestHandler): Express {
+  const { ctx } = routes;
+  const { config, log } = ctx;
+  const app = express();
+  app.disable('x-powered-by');
+  app.set('trust proxy', config.trustProxy);
+  app.set('query parser', 'simple');
+  app.use(requestLog(log));
+  if (observe) app.use(observe);
+  app.use(securityHeaders(config.secureCookies, config.picturesFrom === 'store' ? config.store.endpoint : undefined));
+  app.use(healthRoutes(ctx));
+  app.use('/api', sameOrigin(config), express.json({ limit: '256kb' }), noStore, apiRoutes(routes), notFound);
+  app.use(webPages(path.resolve(config.webRoot)));
+  app.use(problems(log));
+  return app;
+}
+
+const noStore: express.RequestHandler = (_req, res, next) => {
+  res.setHeader('Cache-Control', 'private, no-store');
+  next();
+};
+
+function securityHeaders(https: boolean, pictures: string | undefined): express.RequestHandler {
+  return helmet({
+    contentSecurityPolicy: {
+      useDefaults: false,
+      directives: {
+        defaultSrc: ["'self'"],
+        imgSrc: ["'self'", 'data:', 'blob:', ...(pictures ? [pictures] : [])],
+        styleSrc: ["'self'", "'unsafe-inline'"],
+        workerSrc: ["'self'", 'blob:'],
+        objectSrc: ["'none'"],
+        baseUri: ["'none'"],
+        formAction: ["'self'"],
+        frameAncestors: ["'none'"],
+        scriptSrc: ["'self'", "'wasm-unsafe-eval'"],
+      },
+    },
+    strictTransportSecurity: https,
+    referrerPolicy: { policy: 'no-referrer' },
+  });
+}
+
+/** The built pages: files with a hash in their name are kept for a year, everything else is the one page that routes by itself. */
+function webPages(root: string): Router {
+  const router = Router();
+  router.use('/assets', express.static(path.join(root, 'assets'), { immutable: true, maxAge: '1y', index: false, fallthrough: false }));
+  router.use(express.static(root, { index: false, maxAge: '1h' }));
+  router.get('/{*page}', (_req, res) => {
+    res.setHeader('Cache-Control', 'no-cache');
+    res.sendFile('index.html', { root });
+  });
+  return router;
+}

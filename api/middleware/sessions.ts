@@ -1,0 +1,110 @@
+import { createHash, randomBytes } from 'node:crypto';
+import { NodePostgresAdapter } from '@lucia-auth/adapter-postgresql';
+import type { CookieOptions, Request, Response } from 'express';
+import { Lucia, TimeSpan } from 'lucia';
+import pg from 'pg';
+import type { Config } from '../config.ts';
+
+export type SessionKind = 'staff' | 'guest';
+
+declare module 'lucia' {
+  interface Register {
+    Lucia: Lucia<{ kind: SessionKind }, { email: string; name: string }>;
+    UserId: string;
+    DatabaseSessionAttributes: { kind: SessionKind };
+    DatabaseUserAttributes: { email: string; name: string };
+  }
+}
+
+export interface LiveSession {
+  id: string;
+  kind: SessionKind;
+  accountId: string;
+  email: string;
+  name: string;
+}
+
+/** Idle sessions end after this many days; one in use is prolonged at half-time. */
+const DAYS = { staff: 14, guest: 30 } as const;
+const COOKIES = { staff: 'oriel_studio', guest: 'oriel_guest' } as const;
+
+const hash = (token: string) => createHash('sha256').update(token).digest('hex');
+
+/**
+ * Sessions in PostgreSQL. The cookie holds a random token of 160 bits; the table holds its SHA-256 alone, so a copy of the table opens nothing.
+ * A person of a studio and a guest have cookies of their own: opening a link does not sign anybody out.
+ */
+export class Sessions {
+  readonly #pool: pg.Pool;
+  readonly #lucia: Record<SessionKind, Lucia<{ kind: SessionKind }, { email: string; name: string }>>;
+
+  constructor(private readonly config: Config) {
+    this.#pool = new pg.Pool({ connectionString: config.database.url, max: 4, application_name: 'oriel-sessions' });
+    this.#pool.on('error', () => undefined);
+    const adapter = new NodePostgresAdapter(this.#pool, { user: 'accounts', session: 'sessions' });
+    const make = (kind: SessionKind) =>
+      new Lucia(adapter, {
+        sessionExpiresIn: new TimeSpan(DAYS[kind], 'd'),
+        getSessionAttributes: ({ kind: stored }) => ({ kind: stored }),
+        getUserAttributes: ({ email, name }) => ({ email, name }),
+      });
+    this.#lucia = { staff: make('staff'), guest: make('guest') };
+  }
+
+  /** Opens a session under a new token and ends the one this browser had: a token never outlives a sign-in. */
+  async open(req: Request, res: Response, kind: SessionKind, accountId: string): Promise<void> {
+    const before = this.#token(req, kind);
+    if (before) await this.#lucia[kind].invalidateSession(hash(before));
+    const token = randomBytes(20).toString('base64url');
+    await this.#lucia[kind].createSession(accountId, { kind }, { sessionId: hash(token) });
+    this.#setCookie(res, kind, token);
+  }
+
+  /** Whose session this is; prolongs it, and takes the cookie away where it has ended. */
+  async read(req: Request, res: Response, kind: SessionKind): Promise<LiveSession | undefined> {
+    const token = this.#token(req, kind);
+    if (!token) return undefined;
+    const { session, user } = await this.#lucia[kind].validateSession(hash(token));
+    if (!session || session.kind !== kind) {
+      res.clearCookie(COOKIES[kind], this.#cookie());
+      return undefined;
+    }
+    if (session.fresh) this.#setCookie(res, kind, token);
+    return { id: session.id, kind, accountId: user.id, email: user.email, name: user.name };
+  }
+
+  /** Signs this browser out, on the server too. */
+  async close(req: Request, res: Response, kind: SessionKind): Promise<void> {
+    const token = this.#token(req, kind);
+    if (token) await this.#lucia[kind].invalidateSession(hash(token));
+    res.clearCookie(COOKIES[kind], this.#cookie());
+  }
+
+  /** Signs an account out everywhere. */
+  async closeAll(accountId: string): Promise<void> {
+    await this.#lucia.staff.invalidateUserSessions(accountId);
+  }
+
+  /** Removes what has ended; nobody misses it. */
+  async sweep(): Promise<void> {
+    await this.#lucia.staff.deleteExpiredSessions();
+  }
+
+  async stop(): Promise<void> {
+    await this.#pool.end();
+  }
+
+  #token(req: Request, kind: SessionKind): string | undefined {
+    const pair = (req.headers.cookie ?? '').split(/; */).find((each) => each.startsWith(`${COOKIES[kind]}=`));
+    const token = pair?.slice(COOKIES[kind].length + 1);
+    return token && /^[\w-]{20,64}$/.test(token) ? token : undefined;
+  }
+
+  #cookie(): CookieOptions {
+    return { httpOnly: true, sameSite: 'lax', secure: this.config.secureCookies, path: '/' };
+  }
+
+  #setCookie(res: Response, kind: SessionKind, token: string): void {
+    res.cookie(COOKIES[kind], token, { ...this.#cookie(), maxAge: DAYS[kind] * 24 * 60 * 60 * 1000 });
+  }
+}

@@ -1,0 +1,18 @@
+import { Model } from 'objection';
+
+/** A single-use token sent by mail; the table holds its SHA-256. */
+export class AccountToken extends Model {
+  static override tableName = 'accountTokens';
+
+  declare id: string;
+  declare purpose: 'reset-password' | 'confirm-email' | 'join-studio';
+  declare tokenHash: string;
+  declare email: string;
+  declare accountId: string | null;
+  declare studioId: string | null;
+  declare name: string | null;
+  declare expiresAt: Date;
+  declare usedAt: Date | null;
+  declare createdBy: string | null;
+  declare createdAt: Date;
+}

@@ -1,0 +1,54 @@
+import { randomUUID } from 'node:crypto';
+
+/** Version of the recipe that derivatives are made by; part of their keys, so that a new recipe never meets an old picture. */
+export const RECIPE = 1;
+
+export type DerivativeSize = 480 | 960 | 2560;
+
+const commission = (studioId: string, commissionId: string) => `studios/${studioId}/commissions/${commissionId}`;
+
+/** Where the file of an upload is stored, once, byte for byte. Keys hold ids only, never a name that tells something. */
+export function originalKey(studioId: string, commissionId: string): string {
+  return `${commission(studioId, commissionId)}/originals/${randomUUID()}`;
+}
+
+/** A frame's picture without watermark. Longest side in pixels. */
+export function frameKey(
+  frame: { studioId: string; commissionId: string; id: string; recipe?: number | null },
+  size: DerivativeSize,
+): string {
+  return `${commission(frame.studioId, frame.commissionId)}/pictures/frames/${frame.id}/r${frame.recipe ?? RECIPE}-${size}.jpg`;
+}
+
+/** A proof's picture with the sheet's watermark. */
+export function proofKey(
+  proof: { studioId: string; sheetId: string; id: string; watermarkHash: string | null },
+  commissionId: string,
+  size: DerivativeSize,
+): string {
+  return `${commission(proof.studioId, commissionId)}/pictures/sheets/${proof.sheetId}/${proof.id}/w${proof.watermarkHash ?? ''}-${size}.jpg`;
+}
+
+/** A finished file's picture without watermark. */
+export function finalKey(
+  version: { studioId: string; id: string; recipe?: number | null },
+  commissionId: string,
+  size: DerivativeSize,
+): string {
+  return `${commission(version.studioId, commissionId)}/pictures/finals/${version.id}/r${version.recipe ?? RECIPE}-${size}.jpg`;
+}
+
+/** A finished file at web size, for deliveries. */
+export function webSizeKey(version: { studioId: string; id: string }, commissionId: string): string {
+  return `${commission(version.studioId, commissionId)}/web/${version.id}/r${RECIPE}.jpg`;
+}
+
+/** Where an archive is written. */
+export function archiveKey(studioId: string, commissionId: string): string {
+  return `${commission(studioId, commissionId)}/archives/${randomUUID()}.zip`;
+}
+
+/** A studio's watermark picture, named by its content. */
+export function watermarkKey(studioId: string, sha256: string): string {
+  return `studios/${studioId}/watermarks/${sha256}.png`;
+}

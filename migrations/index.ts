@@ -1,0 +1,31 @@
+import type { Knex } from 'knex';
+import * as accounts from './20261201100000_accounts.ts';
+import * as commissions from './20261201101000_commissions.ts';
+import * as frames from './20261201102000_frames.ts';
+import * as sheets from './20261201103000_sheets.ts';
+import * as pickLists from './20261201104000_pick_lists.ts';
+import * as deliveries from './20261201105000_deliveries.ts';
+import * as mailsAndRecord from './20261201110000_mails_and_record.ts';
+import * as workerBeats from './20261201111000_worker_beats.ts';
+
+/** Every migration in the order it runs. Names carry no file ending, so that they stay the same however the code is run. */
+const migrations: Record<string, Knex.Migration> = {
+  '20261201100000_accounts': accounts,
+  '20261201101000_commissions': commissions,
+  '20261201102000_frames': frames,
+  '20261201103000_sheets': sheets,
+  '20261201104000_pick_lists': pickLists,
+  '20261201105000_deliveries': deliveries,
+  '20261201110000_mails_and_record': mailsAndRecord,
+  '20261201111000_worker_beats': workerBeats,
+};
+
+export const migrationSource: Knex.MigrationSource<string> = {
+  getMigrations: async () => Object.keys(migrations).sort(),
+  getMigrationName: (name) => name,
+  getMigration: async (name) => {
+    const migration = migrations[name];
+    if (!migration) throw new Error(`There is no migration ${name}.`);
+    return migration;
+  },
+};
