@@ -3,6 +3,7 @@ import { mkdtempSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
 import { promisify } from 'node:util';
+import type {} from '../support/cluster.ts';
 import type { TestProject } from 'vitest/node';
 
 declare module 'vitest' {

@@ -13,6 +13,11 @@ const studioPages: RouteObject[] = [];
 /** The guests' pages: sheets, deliveries and what they were ever invited to. */
 const guestPages: RouteObject[] = [];
 
+/** Every part of the pages at once, while building. */
+const developmentPages: RouteObject[] = import.meta.env.DEV
+  ? [{ path: 'gallery', lazy: () => import('./pages/development/gallery-page.tsx') }]
+  : [];
+
 /** The site map. Every page is loaded when it is first visited. */
 export const router = createBrowserRouter([
   {
@@ -23,6 +28,7 @@ export const router = createBrowserRouter([
     children: [
       ...doorPages,
       ...guestPages,
+      ...developmentPages,
       { lazy: () => import('./pages/studio/studio-layout.tsx'), children: studioPages },
       { path: '*', element: <NotFoundPage /> },
     ],

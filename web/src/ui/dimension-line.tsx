@@ -45,7 +45,10 @@ export function DimensionLine({ picked, included, price, className }: Props) {
         <p className="absolute top-0 left-0">
           <b>{t('allowance.picked', { count: picked })}</b> {t('allowance.of', { included })}
         </p>
-        <p className="absolute top-0 pl-1.5 whitespace-nowrap" style={{ left: percent(Math.min(drawing.tick, 0.82)) }}>
+        <p
+          className="absolute top-0 pl-1.5 whitespace-nowrap"
+          style={{ left: `clamp(168px, ${percent(drawing.tick)}, calc(100% - 96px))` }}
+        >
           <span className="max-sm:hidden">{then}</span>
           <span className="sm:hidden">{price === null ? then : t('allowance.thenShort', { price })}</span>
         </p>
@@ -55,7 +58,7 @@ export function DimensionLine({ picked, included, price, className }: Props) {
           className="hatched absolute top-[25px] h-[7px] border-copper transition-[width]"
           style={{ left: percent(drawing.tick), width: percent(drawing.hatch - drawing.tick) }}
         />
-        {[0, drawing.tick, 1].map((at) => (
+        {[...new Set([0, drawing.tick, 1])].map((at) => (
           <i key={at} className="absolute top-5 h-[17px] border-l border-ink" style={at === 1 ? { right: 0 } : { left: percent(at) }} />
         ))}
       </div>

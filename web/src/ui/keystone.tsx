@@ -11,7 +11,9 @@ interface Props {
   silent?: boolean;
 }
 
-const WIDTHS = { small: 40, normal: 60, large: 88 };
+const WIDTHS = { small: 44, normal: 60, large: 88 };
+/** Of the number, in CSS pixels. */
+const LETTERS = { small: 13, normal: 15, large: 17 };
 const WEDGE = 'M0 0H60L48 32H12Z';
 
 /** The mark of a pick: the wedge at the crown of an arch, with the pick's number in it. */
@@ -34,7 +36,8 @@ export function Keystone({ number, extra = false, size = 'normal', className, si
         y="16"
         textAnchor="middle"
         dominantBaseline="central"
-        className={joinClasses('text-[15px] font-black', extra ? 'fill-copper' : 'fill-sheet')}
+        fontSize={(LETTERS[size] * 60) / width}
+        className={joinClasses('font-black', extra ? 'fill-copper' : 'fill-sheet')}
       >
         {number}
       </text>

@@ -27,7 +27,7 @@ export function TitleBlock({ cells, children, className }: Props) {
           <div
             key={cell.label}
             className={joinClasses(
-              '-mt-px -ml-px min-w-0 border-t border-l border-line px-3 py-2 md:px-3.5',
+              '-mt-px -ml-px min-w-0 border-t border-l border-line px-3 py-2 max-md:last:odd:col-span-2 md:px-3.5',
               cell.wideOnly && 'hidden md:block',
             )}
           >
