@@ -3,13 +3,13 @@ import { CheckWatch } from './check-watch.ts';
 import type { Clock } from './clock.ts';
 import type { Gate } from './gate.ts';
 import type { Hasher } from './hash-pool.ts';
-import { Line } from './line.ts';
+import type { Line } from './line.ts';
 import { BEGUN_AT_ONCE, nextRequest, type NextRequest } from './next-request.ts';
 import { perform, type Outcome } from './perform.ts';
 import { readAhead } from './read-ahead.ts';
 import { isReadable } from './readable.ts';
 import type { Shelves } from './shelves.ts';
-import { TransportProblem, type UploadTransport } from './transport.ts';
+import { TransportProblem, type CheckState, type UploadTransport } from './transport.ts';
 import type { Stage, UploadItem } from './upload-item.ts';
 import { Wake } from './wake.ts';
 
@@ -22,6 +22,7 @@ export interface EngineParts {
   transport: UploadTransport;
   hasher: Hasher;
   gate: Gate;
+  line: Line;
   clock: Clock;
   /** A number from 0 up to 1, for the jitter of the waits. */
   chance: () => number;
@@ -31,8 +32,8 @@ export interface EngineParts {
 export interface EngineEars {
   moved(item: UploadItem, bytes: number): void;
   changed(item: UploadItem): void;
-  /** The sum is known. */
-  summed(item: UploadItem): void;
+  /** Something is known of the file that a later visit can use: its sum, its upload. */
+  learned(item: UploadItem): void;
   /** The file is done, known or failed. */
   settled(item: UploadItem): void;
   /** Nothing can go on before the person does something. */
@@ -41,7 +42,6 @@ export interface EngineEars {
 
 /** Moves files through the stages: reads, offers, sends, completes, asks for the check, waits and tries again. */
 export class Engine {
-  readonly line = new Line();
   readonly #checks: CheckWatch;
   readonly #wake: Wake;
 
@@ -71,10 +71,15 @@ export class Engine {
 
   /** Forgets the waits: it is worth trying now. */
   tryNow(): void {
-    this.line.tryNow();
+    this.parts.line.tryNow();
     for (const item of this.shelves.in('open')) item.notBefore = 0;
     this.#checks.soon();
     this.pump();
+  }
+
+  /** The server's check of a whole file is over. */
+  checked(item: UploadItem, { state, problem }: CheckState): void {
+    if (item.stage === 'checking') this.#settle(item, state === 'done' ? 'done' : 'failed', problem);
   }
 
   move(item: UploadItem, stage: Stage): void {
@@ -90,7 +95,7 @@ export class Engine {
       this.#settle(item, 'known', `The same picture as ${first.path}.`);
     } else {
       this.move(item, 'read');
-      this.ears.summed(item);
+      this.ears.learned(item);
     }
     this.pump();
   }
@@ -107,7 +112,7 @@ export class Engine {
     const { gate, clock } = this.parts;
     for (;;) {
       const now = clock.now();
-      if (gate.busy >= this.line.room(now, gate.limit)) return;
+      if (gate.busy >= this.parts.line.room(now, gate.limit)) return;
       if (this.#checks.due(this.shelves.in('checking').size, now)) {
         void gate.pass(() => this.#check());
         continue;
@@ -119,7 +124,7 @@ export class Engine {
   }
 
   #sleep(): void {
-    const moments = [this.line.openAt];
+    const moments = [this.parts.line.openAt];
     for (const item of this.shelves.in('open')) moments.push(item.notBefore);
     if (this.shelves.in('checking').size > 0) moments.push(this.#checks.nextAt);
     this.#wake.at(moments);
@@ -130,7 +135,7 @@ export class Engine {
     const { signal } = item.stop;
     try {
       const outcome = await perform(next, this.parts.transport, (bytes) => this.ears.moved(item, bytes));
-      if (!signal.aborted) this.#worked(item, outcome);
+      if (!signal.aborted) this.#worked(next, outcome);
     } catch (error) {
       const readable = await isReadable(item);
       if (signal.aborted) return;
@@ -139,11 +144,13 @@ export class Engine {
     }
   }
 
-  #worked(item: UploadItem, outcome: Outcome): void {
-    this.line.worked();
-    item.failures = 0;
+  #worked({ kind, item }: NextRequest, outcome: Outcome): void {
+    this.parts.line.worked(this.parts.clock.now());
+    // After a failure the parts are asked for first; that this works says nothing about the part that failed.
+    if (kind !== 'offer') item.failures = 0;
     item.problem = undefined;
     if (outcome.kind === 'known') return this.#settle(item, 'known', outcome.sentence);
+    if (kind === 'offer') this.ears.learned(item);
     if (outcome.kind === 'going') return this.ears.changed(item);
     this.#checks.completed(this.shelves.in('checking').size);
     this.move(item, 'checking');
@@ -162,7 +169,7 @@ export class Engine {
   }
 
   #lineFailed(problem: TransportProblem): void {
-    this.line.failed(this.parts.clock.now(), problem.message, problem.waitMs, this.parts.chance());
+    this.parts.line.failed(this.parts.clock.now(), problem.message, problem.waitMs, this.parts.chance());
   }
 
   #serverFailed(item: UploadItem, problem: TransportProblem): void {
@@ -175,11 +182,9 @@ export class Engine {
   async #check(): Promise<void> {
     try {
       const over = await this.#checks.ask(this.shelves.in('checking'));
-      this.line.worked();
+      this.parts.line.worked(this.parts.clock.now());
       if (over.size > 0) this.#checks.soon();
-      for (const [item, { state, problem }] of over) {
-        if (item.stage === 'checking') this.#settle(item, state === 'done' ? 'done' : 'failed', problem);
-      }
+      for (const [item, state] of over) this.checked(item, state);
     } catch (error) {
       const problem = asProblem(error);
       if (problem.kind === 'signed-out') this.ears.stuck(problem.message);
@@ -190,8 +195,8 @@ export class Engine {
   #settle(item: UploadItem, stage: 'done' | 'known' | 'failed', sentence: string | undefined): void {
     if (stage === 'failed') item.halt();
     item.problem = sentence;
-    // Files that need nothing more are let go; a failed one may be tried again.
-    if (stage !== 'failed') item.file = undefined;
+    // A file that needs nothing more is let go; one that failed or leans on its twin may still have to be sent.
+    if (stage !== 'failed' && !item.twinOf) item.file = undefined;
     this.move(item, stage);
     this.ears.settled(item);
   }

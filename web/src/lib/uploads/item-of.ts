@@ -5,10 +5,11 @@ import { UploadItem } from './upload-item.ts';
 
 let count = 0;
 
-/** Ids sort in the order in which the files came, over reloads too. */
+/** Ids sort in the order in which the files came, over reloads too; the end keeps two tabs apart. */
 function newId(): string {
   count += 1;
-  return `${Date.now().toString(36).padStart(9, '0')}-${String(count).padStart(7, '0')}`;
+  const chance = Math.random().toString(36).slice(2, 8);
+  return `${Date.now().toString(36).padStart(9, '0')}-${String(count).padStart(7, '0')}-${chance}`;
 }
 
 /** A new file of the queue, or one that is named and left out. */
@@ -29,6 +30,7 @@ export function itemOfUnfinished(kept: Unfinished): UploadItem {
   item.stage = kept.problem === undefined ? 'held' : 'failed';
   item.problem = kept.problem;
   item.sha256 = kept.sha256;
+  item.uploadId = kept.uploadId;
   item.handle = kept.handle;
   item.root = kept.root;
   return item;
@@ -36,7 +38,7 @@ export function itemOfUnfinished(kept: Unfinished): UploadItem {
 
 /** What is kept of a file over a reload. */
 export function unfinishedOf(item: UploadItem): Unfinished {
-  const { id, name, path, size, lastModified, sha256, handle, root } = item;
+  const { id, name, path, size, lastModified, sha256, uploadId, handle, root } = item;
   return {
     id,
     name,
@@ -44,6 +46,7 @@ export function unfinishedOf(item: UploadItem): Unfinished {
     size,
     lastModified,
     ...(sha256 !== undefined && { sha256 }),
+    ...(uploadId !== undefined && { uploadId }),
     ...(handle && { handle }),
     ...(root && { root }),
     ...(item.stage === 'failed' && item.problem !== undefined && { problem: item.problem }),

@@ -31,8 +31,9 @@ export class Line {
     this.openAt = Math.max(this.openAt, now + waitAfter(this.failures, wish, chance));
   }
 
-  /** Something went through. */
-  worked(): void {
+  /** Something went through. What was under way before a failure does not end the wait after it. */
+  worked(now: number): void {
+    if (now < this.openAt) return;
     this.failures = 0;
     this.openAt = 0;
     this.problem = undefined;

@@ -7,6 +7,7 @@ const READ_AHEAD = 12;
 
 /** What becomes of a file that was read. */
 export interface ReadResult {
+  started(item: UploadItem): void;
   read(item: UploadItem, sha256: string): void;
   unreadable(item: UploadItem): void;
 }
@@ -18,17 +19,18 @@ export interface ReadResult {
 export function readAhead(shelves: Shelves, hasher: Hasher, result: ReadResult): void {
   for (const item of shelves.in('new')) {
     if (shelves.in('reading').size >= hasher.width || shelves.in('read').size >= READ_AHEAD) return;
-    if (item.sha256 !== undefined) shelves.move(item, 'read');
-    else void read(item, shelves, hasher, result);
+    shelves.move(item, 'reading');
+    result.started(item);
+    void read(item, hasher, result);
   }
 }
 
-async function read(item: UploadItem, shelves: Shelves, hasher: Hasher, result: ReadResult): Promise<void> {
+async function read(item: UploadItem, hasher: Hasher, result: ReadResult): Promise<void> {
   const { signal } = item.stop;
-  shelves.move(item, 'reading');
   try {
     if (!item.file) throw new Error('There is no file to read.');
-    const sha256 = await hasher.sum(item.file, signal);
+    // A file of an earlier visit has been read before; the server compares the sum with what arrived anyway.
+    const sha256 = item.sha256 ?? (await hasher.sum(item.file, signal));
     if (!signal.aborted) result.read(item, sha256);
   } catch {
     if (!signal.aborted) result.unreadable(item);

@@ -1,10 +1,13 @@
 import type { Stage, UploadItem } from './upload-item.ts';
 
+const ON_THE_WAY: Stage[] = ['read', 'open', 'checking'];
+
 /** All files of a queue, and those of each stage in the order in which they reached it. */
 export class Shelves {
   readonly all = new Map<string, UploadItem>();
   readonly #shelves = new Map<Stage, Set<UploadItem>>();
   readonly #alike = new Map<string, Set<UploadItem>>();
+  readonly #bySum = new Map<string, UploadItem>();
 
   /** The files in a stage, oldest first. */
   in(stage: Stage): ReadonlySet<UploadItem> {
@@ -35,6 +38,14 @@ export class Shelves {
   /** Files that by name, size and time of change are the same file. */
   like(file: Pick<File, 'name' | 'size' | 'lastModified'>): UploadItem[] {
     return [...(this.#alike.get(likeness(file)) ?? [])];
+  }
+
+  /** Another file with the same bytes that is on its way; without one, `item` is from now on the first with its bytes. */
+  firstWith(sha256: string, item: UploadItem): UploadItem | undefined {
+    const first = this.#bySum.get(sha256);
+    if (first && first !== item && this.all.has(first.id) && ON_THE_WAY.includes(first.stage)) return first;
+    this.#bySum.set(sha256, item);
+    return undefined;
   }
 
   #shelf(stage: Stage): Set<UploadItem> {

@@ -8,6 +8,8 @@ export interface Unfinished {
   size: number;
   lastModified: number;
   sha256?: string;
+  /** The server's name for it, so that parts can be given up. */
+  uploadId?: string;
   /** Opens the file again, where the browser gives such a thing. */
   handle?: FileSystemFileHandle;
   /** The dropped folder it came from. */

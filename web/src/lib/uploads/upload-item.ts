@@ -45,6 +45,8 @@ export class UploadItem {
   /** Nothing is asked for this file before this moment. */
   notBefore = 0;
   problem: string | undefined;
+  /** The same picture, which is on its way already. */
+  twinOf: UploadItem | undefined;
   /** Ends the requests of this file. */
   stop = new AbortController();
 
@@ -86,6 +88,12 @@ export class UploadItem {
     for (const number of this.partsThere) bytes += this.bytesOf(number);
     for (const loaded of this.partsFlying.values()) bytes += loaded;
     return Math.min(bytes, this.size);
+  }
+
+  /** The server does not know the upload any more: everything has to be sent again. */
+  forgetParts(): void {
+    this.uploadId = undefined;
+    this.partsThere.clear();
   }
 
   /** Ends what is under way and makes the item ready for new requests. */

@@ -3,14 +3,16 @@ import { Engine, type EngineParts } from './engine.ts';
 import type { FoundFile } from './found-file.ts';
 import { openHeld } from './held-files.ts';
 import { itemOf, itemOfUnfinished } from './item-of.ts';
+import { Line } from './line.ts';
 import { Memory } from './memory.ts';
 import { QueueStore } from './queue-store.ts';
 import { Shelves } from './shelves.ts';
+import type { CheckState } from './transport.ts';
 import type { UnfinishedStore } from './unfinished.ts';
-import type { Stage, UploadItem } from './upload-item.ts';
+import type { Stage, UploadItem, UploadView } from './upload-item.ts';
 
 /** What a queue needs from outside. */
-export type QueueParts = Omit<EngineParts, 'clock' | 'chance'> & {
+export type QueueParts = Omit<EngineParts, 'clock' | 'chance' | 'line'> & {
   unfinished: UnfinishedStore;
   clock?: Clock;
   /** A number from 0 up to 1, for the jitter of the waits. */
@@ -23,10 +25,12 @@ const FINISHED: Stage[] = ['done', 'known', 'left-out'];
 export class UploadQueue {
   /** What the page shows. */
   readonly store: QueueStore;
+  readonly #line = new Line();
   readonly #shelves = new Shelves();
   readonly #memory: Memory;
   readonly #engine: Engine;
   readonly #transport: QueueParts['transport'];
+  readonly #settledListeners = new Set<(file: UploadView) => void>();
   #paused = false;
   /** What keeps everything from going on until the person does something. */
   #stuck: string | undefined;
@@ -45,14 +49,14 @@ export class UploadQueue {
         this.store.touch(item);
       },
       changed: (item: UploadItem) => this.store.touch(item),
-      summed: (item: UploadItem) => this.#memory.keep([item]),
+      learned: (item: UploadItem) => this.#memory.keep([item]),
       settled: (item: UploadItem) => this.#settled(item),
       stuck: (sentence: string) => {
         this.#stuck = sentence;
         this.pause();
       },
     };
-    this.#engine = new Engine({ ...parts, clock, chance }, this.#shelves, ears, () => this.#paused);
+    this.#engine = new Engine({ ...parts, clock, chance, line: this.#line }, this.#shelves, ears, () => this.#paused);
   }
 
   /** Takes in files; those of an earlier visit are recognised and go on, those already in the list are not doubled. */
@@ -96,9 +100,17 @@ export class UploadQueue {
     this.#engine.tryNow();
   }
 
+  /** The server told by itself how a check ended; without this the queue asks now and then. */
+  heard(state: CheckState): void {
+    if (state.state === 'checking') return;
+    for (const item of this.#shelves.in('checking')) {
+      if (item.uploadId === state.uploadId) this.#engine.checked(item, state);
+    }
+  }
+
   /** What the browser says about its network. */
   setOnline(online: boolean): void {
-    this.#engine.line.online = online;
+    this.#line.online = online;
     this.store.touch();
     if (online) this.#engine.tryNow();
   }
@@ -110,6 +122,7 @@ export class UploadQueue {
     item.halt();
     if (item.uploadId !== undefined && !FINISHED.includes(item.stage)) void this.#transport.abandon(item.uploadId);
     this.#shelves.remove(item);
+    this.#freeTwins(item);
     this.#memory.drop([item]);
     this.store.touchList();
     this.#engine.pump();
@@ -160,6 +173,12 @@ export class UploadQueue {
     this.#engine.pump();
   }
 
+  /** `tell` hears of each file that is done, known or failed; the answer ends that. */
+  whenSettled(tell: (file: UploadView) => void): () => void {
+    this.#settledListeners.add(tell);
+    return () => this.#settledListeners.delete(tell);
+  }
+
   #put(item: UploadItem): UploadItem {
     this.#shelves.put(item);
     this.store.touch(item);
@@ -173,17 +192,32 @@ export class UploadQueue {
     item.failures = 0;
     item.notBefore = 0;
     item.problem = undefined;
+    item.twinOf = undefined;
     this.#engine.move(item, file ? 'new' : 'held');
   }
 
   #settled(item: UploadItem): void {
-    if (item.stage === 'failed') this.#memory.keep([item]);
-    else this.#memory.drop([item]);
-    this.store.settled(item);
+    if (item.stage === 'failed') {
+      this.#memory.keep([item]);
+      this.#freeTwins(item);
+    } else if (!item.twinOf) {
+      this.#memory.drop([item, ...this.#twinsOf(item)]);
+    }
+    const view = item.view();
+    for (const tell of this.#settledListeners) tell(view);
+  }
+
+  /** The file that others leaned on will not arrive: they have to go themselves. */
+  #freeTwins(item: UploadItem): void {
+    for (const twin of this.#twinsOf(item)) this.#goOn(twin, twin.file);
+  }
+
+  #twinsOf(item: UploadItem): UploadItem[] {
+    return [...this.#shelves.in('known')].filter((twin) => twin.twinOf === item);
   }
 
   #lineProblem(): string | undefined {
-    const { online, problem } = this.#engine.line;
+    const { online, problem } = this.#line;
     return online ? problem : 'There is no network. The upload goes on as soon as there is one.';
   }
 }
