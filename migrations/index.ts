@@ -7,6 +7,8 @@ import * as pickLists from './20261201104000_pick_lists.ts';
 import * as deliveries from './20261201105000_deliveries.ts';
 import * as mailsAndRecord from './20261201110000_mails_and_record.ts';
 import * as workerBeats from './20261201111000_worker_beats.ts';
+import * as links from './20261201112000_links.ts';
+import * as versionsOfViewsAndContacts from './20261201112000_versions_of_views_and_contacts.ts';
 
 /** Every migration in the order it runs. Names carry no file ending, so that they stay the same however the code is run. */
 const migrations: Record<string, Knex.Migration> = {
@@ -18,6 +20,8 @@ const migrations: Record<string, Knex.Migration> = {
   '20261201105000_deliveries': deliveries,
   '20261201110000_mails_and_record': mailsAndRecord,
   '20261201111000_worker_beats': workerBeats,
+  '20261201112000_links': links,
+  '20261201112000_versions_of_views_and_contacts': versionsOfViewsAndContacts,
 };
 
 export const migrationSource: Knex.MigrationSource<string> = {

@@ -11,6 +11,8 @@ export class AccountToken extends Model {
   declare accountId: string | null;
   declare studioId: string | null;
   declare name: string | null;
+  /** Of a sign-up with the address of a guest: taken over when the address is confirmed. */
+  declare passwordHash: string | null;
   declare expiresAt: Date;
   declare usedAt: Date | null;
   declare createdBy: string | null;
