@@ -103,10 +103,13 @@ function upright(orientation: number | undefined): number {
 async function judgeOpen(file: FileHandle, path: string, limits: PictureLimits): Promise<JudgedFile> {
   const { size } = await file.stat();
   refuseSize(size, limits);
-  const { buffer, bytesRead } = await file.read(Buffer.alloc(HEAD_BYTES), 0, HEAD_BYTES, 0);
-  const head = buffer.subarray(0, bytesRead);
+  const readAt = async (offset: number, length: number) => {
+    const { buffer, bytesRead } = await file.read(Buffer.alloc(length), 0, length, offset);
+    return buffer.subarray(0, bytesRead);
+  };
+  const head = await readAt(0, HEAD_BYTES);
   const kind = fileKind(head);
-  if (kind === 'png' && (await isAnimatedPng(file))) {
+  if (kind === 'png' && (await isAnimatedPng(readAt))) {
     throw new Refusal('animated', 'The file is an animated PNG; single pictures are taken in, films are not.');
   }
   const preview = kind === 'tiff' ? await findRawPreview(file, head) : null;

@@ -51,7 +51,7 @@ export async function decodeInside(
  * Writes a JPEG. Huffman tables are the standard ones: making tables to measure takes five times as long and saves 4 % of
  * the bytes. Only the viewer's size keeps full chroma, which thin coloured lines of a façade need.
  */
-async function encode(picture: RawPicture, size: DerivativeSize): Promise<Derivative> {
+export async function encodeDerivative(picture: RawPicture, size: DerivativeSize): Promise<Derivative> {
   const data = await fromRaw(picture)
     .jpeg({ quality: QUALITY, chromaSubsampling: size === 2560 ? '4:4:4' : '4:2:0', optimiseCoding: false })
     .toBuffer();
@@ -59,7 +59,7 @@ async function encode(picture: RawPicture, size: DerivativeSize): Promise<Deriva
 }
 
 /** A smaller copy; the picture itself where it is small already. */
-async function shrink(picture: RawPicture, size: number): Promise<RawPicture> {
+export async function shrink(picture: RawPicture, size: number): Promise<RawPicture> {
   return Math.max(picture.width, picture.height) <= size ? picture : toRaw(fromRaw(picture).resize(inside(size)));
 }
 
@@ -72,6 +72,6 @@ export async function makeDerivatives(path: string, judged: JudgedFile, limits: 
   const large = await decodeInside(path, judged, 2560, limits);
   const medium = await shrink(large, 960);
   const small = await shrink(medium, 480);
-  const pictures = [await encode(small, 480), await encode(medium, 960), await encode(large, 2560)];
+  const pictures = [await encodeDerivative(small, 480), await encodeDerivative(medium, 960), await encodeDerivative(large, 2560)];
   return { pictures, placeholder: await makePlaceholder(small) };
 }

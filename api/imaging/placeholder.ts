@@ -1,17 +1,10 @@
 import { rgbaToThumbHash } from 'thumbhash';
 import { fromRaw, toRaw, type RawPicture } from './upright.ts';
 
-/** A grey, RGB or RGBA picture as RGBA. */
-function asRgba({ data, width, height, channels }: RawPicture): Uint8Array {
-  const rgba = new Uint8Array(width * height * 4);
-  for (let pixel = 0; pixel < width * height; pixel++) {
-    const from = pixel * channels;
-    const grey = channels < 3;
-    rgba[pixel * 4] = data[from] ?? 0;
-    rgba[pixel * 4 + 1] = data[grey ? from : from + 1] ?? 0;
-    rgba[pixel * 4 + 2] = data[grey ? from : from + 2] ?? 0;
-    rgba[pixel * 4 + 3] = 255;
-  }
+/** A picture without transparency as RGBA. */
+function asRgba({ data, width, height }: RawPicture): Uint8Array {
+  const rgba = new Uint8Array(width * height * 4).fill(255);
+  for (let pixel = 0; pixel < width * height; pixel++) rgba.set(data.subarray(pixel * 3, pixel * 3 + 3), pixel * 4);
   return rgba;
 }
 

@@ -58,11 +58,17 @@ const OPTIONS = {
 } as unknown as Parameters<typeof exifr.parse>[1];
 
 const LONGEST_TEXT = 200;
-const CONTROLS = /[\u0000-\u001f\u007f-\u009f]/g;
+const CONTROLS = /\p{Cc}/gu;
 
 function text(value: unknown): string | null {
   if (typeof value !== 'string') return null;
-  const written = value.split('\0')[0]?.replace(/\p{Surrogate}/gu, '\ufffd').replace(CONTROLS, ' ').trim().slice(0, LONGEST_TEXT) ?? '';
+  const written =
+    value
+      .split('\0')[0]
+      ?.replace(/\p{Surrogate}/gu, '\ufffd')
+      .replace(CONTROLS, ' ')
+      .trim()
+      .slice(0, LONGEST_TEXT) ?? '';
   return written === '' ? null : written;
 }
 

@@ -5,7 +5,7 @@ export interface RawPicture {
   data: Buffer;
   width: number;
   height: number;
-  channels: 1 | 2 | 3 | 4;
+  channels: 3 | 4;
 }
 
 /** Opens pixels in memory for the next step. */
@@ -16,7 +16,8 @@ export function fromRaw({ data, width, height, channels }: RawPicture): Sharp {
 /** Ends a pipeline in memory. */
 export async function toRaw(picture: Sharp): Promise<RawPicture> {
   const { data, info } = await picture.raw().toBuffer({ resolveWithObject: true });
-  return { data, width: info.width, height: info.height, channels: info.channels };
+  // Grey pictures come out of the decoder with three channels too.
+  return { data, width: info.width, height: info.height, channels: info.channels === 4 ? 4 : 3 };
 }
 
 /** Quarter turns clockwise, then mirrors, for each EXIF Orientation (CIPA DC-008, tag 0x0112). */

@@ -1,0 +1,89 @@
+import { availableParallelism } from 'node:os';
+import { createRequire } from 'node:module';
+import { fileURLToPath, pathToFileURL } from 'node:url';
+import workerpool from 'workerpool';
+import type { WatermarkSettings } from '../../domain/watermark-settings.ts';
+import type { JudgedFile } from '../judge-file.ts';
+import type { Derivative, DerivativeSize } from '../make-derivatives.ts';
+import type { WebPicture } from '../make-web-size.ts';
+import { Refusal, type RefusalCode } from '../refusal.ts';
+import type { Prepared } from './tasks.ts';
+
+/** Work on pixels, done in child processes. Paths name files on this machine; a broken picture rejects with a Refusal. */
+export interface Pixels {
+  /** Says what a file is, and reads it to its end. */
+  judge(path: string): Promise<JudgedFile>;
+  /** Judges a file, reads its settings and makes its pictures: all that taking a file in needs, from one decoding. */
+  prepare(path: string): Promise<Prepared>;
+  /** Lays a watermark over a picture's largest derivative; gives the sizes asked for, all of them where none is. */
+  watermark(picture: Buffer, settings: WatermarkSettings, image: Buffer | null, sizes?: readonly DerivativeSize[]): Promise<Derivative[]>;
+  /** Makes a PNG fit to be a watermark. */
+  cleanWatermark(png: Buffer): Promise<{ data: Buffer; width: number; height: number }>;
+  /** Makes the web size of a finished file. */
+  webSize(path: string): Promise<WebPicture>;
+  /** Ends the children, busy or not. */
+  stop(): Promise<void>;
+}
+
+export interface PixelsOptions {
+  /** Children at most; one for each core where nothing is said. They start when they are needed. */
+  processes?: number | undefined;
+  /** A call that runs longer is ended, with its child. */
+  timeoutSeconds: number;
+  /** Pictures of more pixels are refused. */
+  maxPixels: number;
+}
+
+/** Something went wrong with a child, not with the picture: the same call may go through when it is made again. */
+export class PixelsFailure extends Error {
+  override name = 'PixelsFailure';
+}
+
+function startPool(processes: number): workerpool.Pool {
+  const loader = pathToFileURL(createRequire(import.meta.url).resolve('tsx')).href;
+  return workerpool.pool(fileURLToPath(new URL('./child.ts', import.meta.url)), {
+    workerType: 'process',
+    maxWorkers: processes,
+    workerTerminateTimeout: 500,
+    forkArgs: [String(Math.max(1, Math.floor(availableParallelism() / processes)))],
+    forkOpts: {
+      execArgv: ['--import', loader],
+      // Buffers as they are, not as lists of numbers in JSON.
+      serialization: 'advanced',
+      // Decoders of strangers' files get nothing to know: none of the installation's secrets is in their environment.
+      env: { MALLOC_ARENA_MAX: '2' },
+    },
+  });
+}
+
+/** Errors cross the line between processes as plain data; a refusal becomes one again. */
+function revive(error: unknown, what: string, timeoutSeconds: number): Error {
+  if (error instanceof workerpool.Promise.TimeoutError)
+    return new PixelsFailure(`${what} took longer than ${timeoutSeconds} s and was ended.`);
+  if (!(error instanceof Error)) return new PixelsFailure(String(error));
+  if (error.name === 'Refusal') return new Refusal((error as Error & { code: RefusalCode }).code, error.message);
+  if (/terminated|disconnected|channel closed/i.test(error.message))
+    return new PixelsFailure(`${what}: the process at work ended unexpectedly.`);
+  return error;
+}
+
+/** Opens the pool of child processes that all work on pixels goes through, so that no picture can harm the process that asks. */
+export function createPixels(options: PixelsOptions): Pixels {
+  const pool = startPool(options.processes ?? availableParallelism());
+  const limits = { pixels: options.maxPixels, bytes: Number.MAX_SAFE_INTEGER };
+  async function run<Answer>(task: string, args: unknown[]): Promise<Answer> {
+    try {
+      return (await pool.exec(task, args).timeout(options.timeoutSeconds * 1000)) as Answer;
+    } catch (error) {
+      throw revive(error, task, options.timeoutSeconds);
+    }
+  }
+  return {
+    judge: (path) => run('judge', [path, limits]),
+    prepare: (path) => run('prepare', [path, limits]),
+    watermark: (picture, settings, image, sizes) => run('watermark', [picture, settings, image, sizes]),
+    cleanWatermark: (png) => run('cleanWatermark', [png]),
+    webSize: (path) => run('webSize', [path, limits]),
+    stop: async () => void (await pool.terminate(true)),
+  };
+}

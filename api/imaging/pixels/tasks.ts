@@ -1,0 +1,31 @@
+import { judgeFile, judgeHeader, type JudgedFile, type PictureLimits } from '../judge-file.ts';
+import { makeDerivatives, type Derivatives } from '../make-derivatives.ts';
+import { makeWebSize, type WebPicture } from '../make-web-size.ts';
+import { readSettings, type ShootingSettings } from '../read-settings.ts';
+import { uprightSize } from '../upright.ts';
+import { watermarkPicture } from '../watermark.ts';
+import { cleanWatermarkImage } from '../watermark-mark.ts';
+
+/** A file taken apart: what it is, how it was shot, and its pictures. */
+export interface Prepared extends Derivatives {
+  judged: JudgedFile;
+  settings: ShootingSettings;
+  /** Pixels, upright. */
+  width: number;
+  height: number;
+}
+
+/** What the children can do. Each takes and gives plain data and Buffers only. */
+export const tasks = {
+  judge: (path: string, limits: PictureLimits): Promise<JudgedFile> => judgeFile(path, limits),
+  async prepare(path: string, limits: PictureLimits): Promise<Prepared> {
+    const judged = await judgeHeader(path, limits);
+    const derivatives = await makeDerivatives(path, judged, limits);
+    return { judged, settings: await readSettings(path, judged), ...uprightSize(judged), ...derivatives };
+  },
+  async webSize(path: string, limits: PictureLimits): Promise<WebPicture> {
+    return makeWebSize(path, await judgeHeader(path, limits), limits);
+  },
+  watermark: watermarkPicture,
+  cleanWatermark: cleanWatermarkImage,
+};
