@@ -1,4 +1,4 @@
-import { Model, type QueryBuilder, type TransactionOrKnex } from 'objection';
+import { type Constructor, Model, type ModelClass, type QueryBuilderType, type TransactionOrKnex } from 'objection';
 import type { StudioScope } from '../db/scope.ts';
 
 /** A row that belongs to a studio. Reached through a scope, so that the tenant cannot be forgotten. */
@@ -7,11 +7,9 @@ export class StudioRow extends Model {
   declare studioId: string;
 
   /** The rows of one studio. An insert through it still has to name the studio. */
-  static within<M extends StudioRow>(
-    this: { new (): M; query(trx?: TransactionOrKnex): QueryBuilder<M>; tableName: string },
-    scope: StudioScope,
-    trx?: TransactionOrKnex,
-  ): QueryBuilder<M> {
-    return this.query(trx).where(`${this.tableName}.studioId`, scope.studioId);
+  static within<M extends StudioRow>(this: Constructor<M>, scope: StudioScope, trx?: TransactionOrKnex): QueryBuilderType<M> {
+    // The constructor of a model is the model: objection's own static methods are typed by it in the same way.
+    const model = this as unknown as ModelClass<M>;
+    return model.query(trx).where(`${model.tableName}.studioId`, scope.studioId) as QueryBuilderType<M>;
   }
 }

@@ -1,0 +1,23 @@
+import { matchFinal, type Doubt } from '../../domain/match-finals.ts';
+import type { CurrentPick } from './current-picks.ts';
+
+/** What to do with a finished file: hang it to a pick, ask, or let it stand as a further final where nothing was picked. */
+export interface FoundMatch {
+  match: 'by-name' | 'ask' | 'none';
+  frameId: string | null;
+  /** Frames that come into consideration, likeliest first. */
+  candidates: string[];
+  doubt: Doubt | null;
+}
+
+/** Finds the pick of a finished file by name and time. Without any pick there is nothing to ask about. */
+export function findMatch(file: { originalName: string; takenLocal: string | null }, picks: readonly CurrentPick[]): FoundMatch {
+  if (picks.length === 0) return { match: 'none', frameId: null, candidates: [], doubt: null };
+  const found = matchFinal(
+    { name: file.originalName, taken: file.takenLocal },
+    picks.map(({ frameId, frameName, frame }) => ({ id: frameId, names: [frameName], taken: frame.takenLocal ? [frame.takenLocal] : [] })),
+  );
+  return found.kind === 'matched'
+    ? { match: 'by-name', frameId: found.pickId, candidates: [], doubt: null }
+    : { match: 'ask', frameId: null, candidates: found.candidates, doubt: found.doubt };
+}
