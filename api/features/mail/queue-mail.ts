@@ -32,6 +32,14 @@ export async function queueMail(trx: Transaction, mail: MailToSend): Promise<str
     text: mail.text,
     html: mail.html,
   });
-  await enqueue(trx, 'send-mail', { mailId: row.id }, { key: `send-mail:${row.id}`, priority: -5 });
+  await enqueueSending(trx, row.id);
   return row.id;
+}
+
+/** Servers that ask to come back later (greylisting) want hours at times: twelve tries with the queue's back-off span some eleven hours. */
+const ATTEMPTS = 12;
+
+/** Puts the sending of a waiting mail into the queue. A second call while the first waits changes nothing. */
+export async function enqueueSending(trx: Transaction, mailId: string): Promise<void> {
+  await enqueue(trx, 'send-mail', { mailId }, { key: `send-mail:${mailId}`, priority: -5, maxAttempts: ATTEMPTS });
 }
