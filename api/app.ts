@@ -1,6 +1,7 @@
 import path from 'node:path';
 import express, { type Express, Router } from 'express';
 import helmet from 'helmet';
+import { commissionRoutes } from './features/commissions/routes.ts';
 import { healthRoutes } from './features/health/routes.ts';
 import { notFound, problems } from './middleware/problem.ts';
 import { requestLog } from './middleware/request-log.ts';
@@ -8,8 +9,9 @@ import type { RouteContext } from './middleware/route-context.ts';
 import { sameOrigin } from './middleware/same-origin.ts';
 
 /** The features' routers below /api, in the order of a commission's life. */
-export function apiRoutes(_routes: RouteContext): Router {
+export function apiRoutes(routes: RouteContext): Router {
   const api = Router();
+  api.use(commissionRoutes(routes));
   return api;
 }
 

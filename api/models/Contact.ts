@@ -8,5 +8,6 @@ export class Contact extends StudioRow {
   declare email: string;
   declare position: string;
   declare telephone: string;
+  declare version: number;
   declare createdAt: Date;
 }

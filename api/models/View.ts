@@ -8,5 +8,6 @@ export class View extends StudioRow {
   declare position: number;
   declare title: string;
   declare askedFor: string;
+  declare version: number;
   declare createdAt: Date;
 }

@@ -8,7 +8,13 @@ import { Pending } from './ui/pending.tsx';
 const doorPages: RouteObject[] = [];
 
 /** The studio's pages, inside the shell with the navigation at the left. */
-const studioPages: RouteObject[] = [];
+const studioPages: RouteObject[] = [
+  {
+    path: 'commissions/:commissionId',
+    lazy: () => import('./pages/studio/commission/layout.tsx'),
+    children: [],
+  },
+];
 
 /** The guests' pages: sheets, deliveries and what they were ever invited to. */
 const guestPages: RouteObject[] = [];
