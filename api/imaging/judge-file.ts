@@ -4,6 +4,7 @@ import { fileKind, HEAD_BYTES, type FileKind } from './file-kind.ts';
 import { isAnimatedPng } from './animated-png.ts';
 import { findRawPreview, readSpan, type RawPreview } from './raw-preview.ts';
 import { Refusal } from './refusal.ts';
+import { refuseSize } from './refuse-size.ts';
 
 /** What an installation takes in at most. */
 export interface PictureLimits {
@@ -28,7 +29,6 @@ const DAMAGED = 'The file is cut short or damaged and cannot be read to its end.
 const FAULT_OF_OURS = /is missing|ENOENT|EACCES|EMFILE|ENOSPC|out of memory|No space left/i;
 
 const grouped = (value: number) => new Intl.NumberFormat('en-GB').format(value);
-const megabytes = (bytes: number) => `${grouped(Math.round(bytes / 100_000) / 10)} MB`;
 
 /** Turns what the decoder says about a broken picture into a refusal; other errors come back as they are. */
 export function asRefusal(error: unknown): unknown {
@@ -39,14 +39,6 @@ export function asRefusal(error: unknown): unknown {
 /** How pictures are decoded: strictly, in one pass, the first page only, and never more pixels than allowed. */
 export function decodeOptions(limits: Pick<PictureLimits, 'pixels'>): SharpOptions {
   return { limitInputPixels: limits.pixels, sequentialRead: true, failOn: 'warning', pages: 1 };
-}
-
-/** @throws Refusal for an empty file or one beyond the limit. */
-export function refuseSize(bytes: number, limits: Pick<PictureLimits, 'bytes'>): void {
-  if (bytes === 0) throw new Refusal('empty', 'The file is empty.');
-  if (bytes > limits.bytes) {
-    throw new Refusal('too-large', `The file has ${megabytes(bytes)}; at most ${megabytes(limits.bytes)} are taken in.`);
-  }
 }
 
 function refusePixels(width: number, height: number, limits: PictureLimits): void {

@@ -1,22 +1,8 @@
-import { createHash } from 'node:crypto';
 import sharp from 'sharp';
 import type { WatermarkSettings } from '../domain/watermark-settings.ts';
 import { DERIVATIVE_SIZES, encodeDerivative, shrink, type Derivative, type DerivativeSize } from './make-derivatives.ts';
 import { drawMark } from './watermark-mark.ts';
 import { toRaw, type RawPicture } from './upright.ts';
-
-/** Counts up whenever the same settings would draw something else. */
-const WATERMARK_RECIPE = 1;
-
-/** Names a watermark by everything that its look depends on; part of the keys of the pictures that carry it. */
-export function watermarkHash(settings: WatermarkSettings): string {
-  const { kind, text, imageKey, opacity, size, tiled } = settings;
-  const look = kind === 'none' ? { kind } : { kind, what: kind === 'text' ? text : imageKey, opacity, size, tiled };
-  return createHash('sha256')
-    .update(JSON.stringify([WATERMARK_RECIPE, look]))
-    .digest('hex')
-    .slice(0, 16);
-}
 
 /** Lays one pixel of the mark over one of the picture. */
 function blendPixel(picture: RawPicture, at: number, mark: RawPicture, from: number, opacity: number): void {

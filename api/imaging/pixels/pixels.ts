@@ -3,17 +3,16 @@ import { createRequire } from 'node:module';
 import { fileURLToPath, pathToFileURL } from 'node:url';
 import workerpool from 'workerpool';
 import type { WatermarkSettings } from '../../domain/watermark-settings.ts';
-import type { JudgedFile } from '../judge-file.ts';
 import type { Derivative, DerivativeSize } from '../make-derivatives.ts';
 import type { WebPicture } from '../make-web-size.ts';
 import { Refusal, type RefusalCode } from '../refusal.ts';
-import type { Prepared } from './tasks.ts';
+import type { Examined, Prepared } from './tasks.ts';
 
 /** Work on pixels, done in child processes. Paths name files on this machine; a broken picture rejects with a Refusal. */
 export interface Pixels {
-  /** Says what a file is, and reads it to its end. */
-  judge(path: string): Promise<JudgedFile>;
-  /** Judges a file, reads its settings and makes its pictures: all that taking a file in needs, from one decoding. */
+  /** Says what a file is and how it was shot, and reads it to its end. */
+  judge(path: string): Promise<Examined>;
+  /** The same, and makes the file's pictures from the same decoding. */
   prepare(path: string): Promise<Prepared>;
   /** Lays a watermark over a picture's largest derivative; gives the sizes asked for, all of them where none is. */
   watermark(picture: Buffer, settings: WatermarkSettings, image: Buffer | null, sizes?: readonly DerivativeSize[]): Promise<Derivative[]>;

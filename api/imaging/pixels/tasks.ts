@@ -6,22 +6,27 @@ import { uprightSize } from '../upright.ts';
 import { watermarkPicture } from '../watermark.ts';
 import { cleanWatermarkImage } from '../watermark-mark.ts';
 
-/** A file taken apart: what it is, how it was shot, and its pictures. */
-export interface Prepared extends Derivatives {
+/** A file known for what it is and how it was shot. */
+export interface Examined {
   judged: JudgedFile;
   settings: ShootingSettings;
   /** Pixels, upright. */
   width: number;
   height: number;
 }
+export type Prepared = Examined & Derivatives;
+
+async function examine(path: string, judged: JudgedFile): Promise<Examined> {
+  return { judged, settings: await readSettings(path, judged), ...uprightSize(judged) };
+}
 
 /** What the children can do. Each takes and gives plain data and Buffers only. */
 export const tasks = {
-  judge: (path: string, limits: PictureLimits): Promise<JudgedFile> => judgeFile(path, limits),
+  judge: async (path: string, limits: PictureLimits): Promise<Examined> => examine(path, await judgeFile(path, limits)),
   async prepare(path: string, limits: PictureLimits): Promise<Prepared> {
     const judged = await judgeHeader(path, limits);
     const derivatives = await makeDerivatives(path, judged, limits);
-    return { judged, settings: await readSettings(path, judged), ...uprightSize(judged), ...derivatives };
+    return { ...(await examine(path, judged)), ...derivatives };
   },
   async webSize(path: string, limits: PictureLimits): Promise<WebPicture> {
     return makeWebSize(path, await judgeHeader(path, limits), limits);
