@@ -2,7 +2,14 @@ import path from 'node:path';
 import express, { type Express, Router } from 'express';
 import helmet from 'helmet';
 import { commissionRoutes } from './features/commissions/routes.ts';
+import { guestRoutes } from './features/guests/routes.ts';
+import { guestSheetRoutes } from './features/guest-sheets/routes.ts';
 import { healthRoutes } from './features/health/routes.ts';
+import { mailRoutes } from './features/mail/routes.ts';
+import { markRoutes } from './features/marks/routes.ts';
+import { pickListRoutes } from './features/pick-lists/routes.ts';
+import { sheetRoutes } from './features/sheets/routes.ts';
+import { watermarkRoutes } from './features/watermark/routes.ts';
 import { notFound, problems } from './middleware/problem.ts';
 import { requestLog } from './middleware/request-log.ts';
 import type { RouteContext } from './middleware/route-context.ts';
@@ -12,6 +19,13 @@ import { sameOrigin } from './middleware/same-origin.ts';
 export function apiRoutes(routes: RouteContext): Router {
   const api = Router();
   api.use(commissionRoutes(routes));
+  api.use(guestRoutes(routes));
+  api.use(mailRoutes(routes));
+  api.use(watermarkRoutes(routes));
+  api.use(sheetRoutes(routes));
+  api.use(guestSheetRoutes(routes));
+  api.use(markRoutes(routes));
+  api.use(pickListRoutes(routes));
   return api;
 }
 
