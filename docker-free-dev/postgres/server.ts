@@ -16,6 +16,8 @@ export interface Server {
   port: number;
   /** SIGINT: fast shutdown with a checkpoint. SIGQUIT: at once, with recovery at the next start. */
   stop(signal: 'SIGINT' | 'SIGQUIT'): Promise<void>;
+  /** Settles when the server is gone, asked to or not. */
+  ended: Promise<void>;
 }
 
 /** What every start needs to know. */
@@ -70,7 +72,7 @@ async function launch({ dir, bin, account, durable }: Launch, port: number): Pro
   void ended.then(dismissGuard);
   await untilReady(child, dir);
   child.unref();
-  return { pid: child.pid ?? 0, port, stop: (signal) => end(child, ended, signal) };
+  return { pid: child.pid ?? 0, port, ended, stop: (signal) => end(child, ended, signal) };
 }
 
 async function end(child: ChildProcess, ended: Promise<void>, signal: 'SIGINT' | 'SIGQUIT'): Promise<void> {
