@@ -1,4 +1,6 @@
 import { createBrowserRouter, type RouteObject } from 'react-router-dom';
+import { sheetLoader } from './features/sheets-guest/queries.ts';
+import { queryClient } from './lib/query-client.ts';
 import { BrokenPage } from './pages/broken-page.tsx';
 import { NotFoundPage } from './pages/not-found-page.tsx';
 import { Root } from './pages/root.tsx';
@@ -17,7 +19,9 @@ const studioPages: RouteObject[] = [
 ];
 
 /** The guests' pages: sheets, deliveries and what they were ever invited to. */
-const guestPages: RouteObject[] = [];
+const guestPages: RouteObject[] = [
+  { path: 'sheets/:sheetId', loader: sheetLoader(queryClient), lazy: () => import('./pages/guest/sheet-page.tsx') },
+];
 
 /** Every part of the pages at once, while building. */
 const developmentPages: RouteObject[] = import.meta.env.DEV

@@ -24,7 +24,7 @@ export function GuestShell({ studio, aside, foot, children }: GuestShellProps) {
         </p>
         {aside ? <div className="flex min-w-0 items-center gap-3 text-13 text-mute">{aside}</div> : null}
       </header>
-      <main id="content" tabIndex={-1} className="flex-1 px-4 pt-3 pb-10 md:px-10">
+      <main id="content" tabIndex={-1} className="flex flex-1 flex-col px-4 pt-3 md:px-10">
         {children}
       </main>
       {foot ? <footer className="sticky bottom-0 z-20 border-t border-ink bg-sheet px-4 py-3 md:px-10">{foot}</footer> : null}

@@ -1,6 +1,5 @@
 import { useEffect, useRef, type ReactNode } from 'react';
 import { useLocation } from 'react-router-dom';
-import { joinClasses } from './join-classes.ts';
 
 interface PageTitleProps {
   /** The words of the heading, and of the browser's tab. */
@@ -13,6 +12,7 @@ interface PageTitleProps {
   hidden?: boolean;
   /** False where the page puts the focus somewhere better itself. */
   takesFocus?: boolean;
+  /** Instead of the usual size. */
   className?: string;
 }
 
@@ -31,7 +31,7 @@ export function PageTitle({ title, where, children, hidden, takesFocus = true, c
   return (
     <>
       <title>{[title, where, 'Oriel'].filter(Boolean).join(' · ')}</title>
-      <h1 ref={heading} tabIndex={-1} className={joinClasses(hidden ? 'sr-only' : 'text-30', className)}>
+      <h1 ref={heading} tabIndex={-1} className={hidden ? 'sr-only' : (className ?? 'text-30')}>
         {children ?? title}
       </h1>
     </>

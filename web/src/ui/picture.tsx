@@ -21,6 +21,8 @@ interface Props {
   drawnWidth: number;
   /** eager: the first row of a page. */
   loading?: 'lazy' | 'eager';
+  /** Told when the address led nowhere: it may have run out. */
+  onFailed?: () => void;
   className?: string;
 }
 
@@ -39,8 +41,8 @@ function srcSet(source: PictureSource): string | undefined {
 }
 
 /** A picture in its own proportions, never cropped, on its blurred placeholder, so that nothing jumps when it arrives. */
-export function Picture({ source, alt, drawnWidth, loading = 'lazy', className }: Props) {
-  const [failed, setFailed] = useState(false);
+export function Picture({ source, alt, drawnWidth, loading = 'lazy', onFailed, className }: Props) {
+  const [failed, setFailed] = useState<string>();
   const placeholder = thumbhashAddress(source.thumbhash);
   const address = source.small ?? source.medium;
   return (
@@ -48,7 +50,7 @@ export function Picture({ source, alt, drawnWidth, loading = 'lazy', className }
       className={joinClasses('relative block overflow-hidden bg-line bg-cover', className)}
       style={{ aspectRatio: `${source.width} / ${source.height}`, ...(placeholder ? { backgroundImage: `url(${placeholder})` } : {}) }}
     >
-      {address && !failed ? (
+      {address && failed !== address ? (
         <img
           src={address}
           srcSet={srcSet(source)}
@@ -60,10 +62,13 @@ export function Picture({ source, alt, drawnWidth, loading = 'lazy', className }
           decoding="async"
           draggable={false}
           className="absolute inset-0 size-full"
-          onError={() => setFailed(true)}
+          onError={() => {
+            setFailed(address);
+            onFailed?.();
+          }}
         />
       ) : (
-        <span role="img" aria-label={alt} className="absolute inset-0" />
+        <span {...(alt ? { role: 'img', 'aria-label': alt } : {})} className="absolute inset-0" />
       )}
     </span>
   );

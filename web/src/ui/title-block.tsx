@@ -17,17 +17,20 @@ interface Props {
   className?: string;
 }
 
-/** The title block of a drawing: labelled cells in one row, in two columns on a phone. */
+/** The title block of a drawing: labelled cells in one row, three abreast on a tablet, two on a phone. */
 export function TitleBlock({ cells, children, className }: Props) {
   const columns = cells.map((cell) => `minmax(0, ${cell.share ?? 1}fr)`).join(' ');
   return (
     <div className={joinClasses('border border-ink bg-sheet', className)}>
-      <dl className="grid grid-cols-2 overflow-hidden md:grid-cols-(--columns)" style={{ '--columns': columns } as React.CSSProperties}>
+      <dl
+        className="flex flex-wrap overflow-hidden lg:grid lg:grid-cols-(--columns)"
+        style={{ '--columns': columns } as React.CSSProperties}
+      >
         {cells.map((cell) => (
           <div
             key={cell.label}
             className={joinClasses(
-              '-mt-px -ml-px min-w-0 border-t border-l border-line px-3 py-2 max-md:last:odd:col-span-2 md:px-3.5',
+              '-mt-px -ml-px min-w-0 grow basis-2/5 border-t border-l border-line px-3 py-2 md:basis-[30%] md:px-3.5',
               cell.wideOnly && 'hidden md:block',
             )}
           >

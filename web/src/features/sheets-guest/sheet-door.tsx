@@ -1,0 +1,117 @@
+import { useQuery, useQueryClient, type QueryClient } from '@tanstack/react-query';
+import { useCallback, useEffect, useMemo, type ReactNode } from 'react';
+import type { GuestProofs, GuestSheet, SheetMarks } from '../../../../api/contract/guest-sheets.ts';
+import { useLive, type LiveChange } from '../../lib/live.ts';
+import { QueryView } from '../../ui/query-view.tsx';
+import { withMark } from '../marks/mark-keeper.ts';
+import { numberPicks, readMarks } from '../marks/read-marks.ts';
+import { useMarks } from '../marks/use-marks.ts';
+import { GuestRefused } from './guest-refused.tsx';
+import { eventsAddress, marksQuery, proofsQuery, sheetKeys, sheetQuery } from './queries.ts';
+import { readStoreys } from './sheet-rows.ts';
+
+/** Changes of one second are read together, so that 200 guests marking at once are no storm of requests. */
+const GATHER = 800;
+
+/** Everything a page of a sheet draws from. */
+export type SheetData = ReturnType<typeof useSheetData>;
+
+interface Props {
+  sheetId: string;
+  children: (data: SheetData) => ReactNode;
+}
+
+/** The door to a sheet: its three answers, kept up to date while the page is open. */
+export function SheetDoor({ sheetId, children }: Props) {
+  const sheet = useQuery(sheetQuery(sheetId));
+  const proofs = useQuery(proofsQuery(sheetId));
+  const marks = useQuery(marksQuery(sheetId));
+  useSheetLive(sheetId, sheet.isSuccess);
+  const failed = (error: Error) => <GuestRefused error={error} />;
+  return (
+    <QueryView query={sheet} failed={failed}>
+      {(sheetNow) => (
+        <QueryView query={proofs} failed={failed}>
+          {(proofsNow) => (
+            <QueryView query={marks} failed={failed}>
+              {(marksNow) => (
+                <SheetInside sheet={sheetNow} proofs={proofsNow} marks={marksNow}>
+                  {children}
+                </SheetInside>
+              )}
+            </QueryView>
+          )}
+        </QueryView>
+      )}
+    </QueryView>
+  );
+}
+
+interface InsideProps {
+  sheet: GuestSheet;
+  proofs: GuestProofs;
+  marks: SheetMarks;
+  children: (data: SheetData) => ReactNode;
+}
+
+function SheetInside({ sheet, proofs, marks, children }: InsideProps) {
+  return <>{children(useSheetData(sheet, proofs, marks))}</>;
+}
+
+function useSheetData(sheet: GuestSheet, answer: GuestProofs, serverMarks: SheetMarks) {
+  const queryClient = useQueryClient();
+  const { marks, mark } = useMarks(sheet, serverMarks.marks);
+  const read = useMemo(() => readMarks(marks, sheet.people, sheet.me.accountId), [marks, sheet.people, sheet.me.accountId]);
+  const storeys = useMemo(() => readStoreys(answer), [answer]);
+  const proofs = useMemo(() => storeys.flatMap((storey) => storey.proofs), [storeys]);
+  const places = useMemo(() => numberPicks(proofs, read, sheet.allowance), [proofs, read, sheet.allowance]);
+
+  useEffect(() => {
+    if (sheet.revision > answer.revision) void queryClient.invalidateQueries({ queryKey: sheetKeys.proofs(sheet.id) });
+  }, [sheet.revision, sheet.id, answer.revision, queryClient]);
+
+  const renewPictures = useRenewPictures(queryClient, sheet.id);
+  return { sheet, storeys, proofs, marks: read, places, mark: sheet.can.mark ? mark : undefined, renewPictures };
+}
+
+/** The addresses of pictures end after some hours; an open page asks for new ones, at most once in half a minute. */
+function useRenewPictures(queryClient: QueryClient, sheetId: string) {
+  return useCallback(() => {
+    const key = sheetKeys.proofs(sheetId);
+    const age = Date.now() - (queryClient.getQueryState(key)?.dataUpdatedAt ?? 0);
+    if (age > 30_000) void queryClient.invalidateQueries({ queryKey: key });
+  }, [queryClient, sheetId]);
+}
+
+/** Applies what another guest marked at once where the change says it; reads anew what else has changed. */
+function useSheetLive(sheetId: string, ready: boolean): void {
+  const queryClient = useQueryClient();
+  const gather = useMemo(() => gatherer((key) => void queryClient.invalidateQueries({ queryKey: key })), [queryClient]);
+  useEffect(() => gather.stop, [gather]);
+  useLive(ready ? eventsAddress(sheetId) : undefined, (change: LiveChange) => {
+    const { proofId, accountId, marked, what } = change as Record<string, unknown>;
+    if (typeof proofId === 'string' && typeof accountId === 'string' && typeof marked === 'boolean') {
+      queryClient.setQueryData<SheetMarks>(
+        sheetKeys.marks(sheetId),
+        (now) => now && { marks: withMark(now.marks, proofId, accountId, marked) },
+      );
+    }
+    gather.add(what === 'mark' || what === 'marks' ? sheetKeys.marks(sheetId) : sheetKeys.all(sheetId));
+  });
+}
+
+function gatherer(ask: (key: readonly string[]) => void) {
+  const waiting = new Map<string, readonly string[]>();
+  let timer: ReturnType<typeof setTimeout> | undefined;
+  return {
+    add(key: readonly string[]) {
+      waiting.set(key.join('/'), key);
+      timer ??= setTimeout(() => {
+        timer = undefined;
+        waiting.forEach(ask);
+        waiting.clear();
+      }, GATHER);
+    },
+    stop: () => clearTimeout(timer),
+  };
+}
