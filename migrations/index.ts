@@ -9,6 +9,7 @@ import * as mailsAndRecord from './20261201110000_mails_and_record.ts';
 import * as workerBeats from './20261201111000_worker_beats.ts';
 import * as links from './20261201112000_links.ts';
 import * as versionsOfViewsAndContacts from './20261201112000_versions_of_views_and_contacts.ts';
+import * as downloadsCovered from './20261201113000_downloads_covered.ts';
 
 /** Every migration in the order it runs. Names carry no file ending, so that they stay the same however the code is run. */
 const migrations: Record<string, Knex.Migration> = {
@@ -22,6 +23,7 @@ const migrations: Record<string, Knex.Migration> = {
   '20261201111000_worker_beats': workerBeats,
   '20261201112000_links': links,
   '20261201112000_versions_of_views_and_contacts': versionsOfViewsAndContacts,
+  '20261201113000_downloads_covered': downloadsCovered,
 };
 
 export const migrationSource: Knex.MigrationSource<string> = {
