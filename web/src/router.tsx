@@ -14,7 +14,13 @@ const studioPages: RouteObject[] = [
   {
     path: 'commissions/:commissionId',
     lazy: () => import('./pages/studio/commission/layout.tsx'),
-    children: [],
+    children: [
+      {
+        path: 'frames',
+        lazy: () => import('./pages/studio/commission/frames-page.tsx'),
+        children: [{ path: ':frameId', lazy: () => import('./pages/studio/commission/frames-viewer-page.tsx') }],
+      },
+    ],
   },
 ];
 

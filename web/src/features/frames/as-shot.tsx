@@ -1,0 +1,75 @@
+import type { ReactNode } from 'react';
+import type { Frame } from '../../../../api/contract/frames.ts';
+import { formatAperture, formatBias, formatFocalLength, formatIso, formatShutter } from '../../../../api/domain/photo-notation.ts';
+import { formatBytes } from '../../lib/bytes.ts';
+import { formatTime } from '../../lib/dates.ts';
+import { formatLocalTime } from './local-time.ts';
+
+const MODES = ['Automatic', 'By hand', 'Automatic bracket'];
+const UNKNOWN = 'not recorded';
+
+/** The settings with which a frame was taken, and its file. What the camera did not write says so. */
+export function AsShot({ frame }: { frame: Frame }) {
+  return (
+    <>
+      <Facts title="As shot">
+        <Fact label="Aperture" value={formatAperture(frame.fNumber)} />
+        <Fact label="Shutter" value={formatShutter(frame.exposureTime)} />
+        <Fact label="ISO" value={formatIso(frame.iso)?.replace('ISO ', '')} />
+        <Fact label="Focal length" value={formatFocalLength(frame.focalLength, frame.focalLength35)} />
+        <Fact label="Exposure bias" value={formatBias(frame.exposureBias)} />
+        <Fact label="Exposure" value={frame.exposureMode === null ? null : MODES[frame.exposureMode]} />
+        <Fact label="Taken" value={taken(frame)} />
+        <Fact label="Camera" value={[frame.make, frame.model].filter(Boolean).join(' ') || null} />
+        <Fact label="Lens" value={frame.lens} />
+        <Fact label="Serial number" value={frame.serial} />
+        <Fact label="Place" value={place(frame)} />
+      </Facts>
+      <Facts title="File">
+        <Fact label="Name" value={frame.originalName} />
+        <Fact label="Pixels" value={frame.width > 0 ? `${frame.width} × ${frame.height}` : null} />
+        <Fact label="Size" value={formatBytes(frame.size)} />
+        <Fact label="Type" value={frame.mediaType} />
+        <Fact label="Uploaded" value={formatTime(frame.createdAt)} />
+        <Fact label="SHA-256" value={frame.sha256} />
+      </Facts>
+    </>
+  );
+}
+
+function Facts({ title, children }: { title: string; children: ReactNode }) {
+  return (
+    <section className="mb-6 border-t border-ink pt-2">
+      <h2 className="lettering">{title}</h2>
+      <dl>{children}</dl>
+    </section>
+  );
+}
+
+function Fact({ label, value }: { label: string; value: string | null | undefined }) {
+  return (
+    <div className="flex justify-between gap-4 border-b border-hair py-1.5">
+      <dt className="shrink-0">{label}</dt>
+      <dd className={`min-w-0 text-right break-words ${value ? '' : 'text-mute'}`}>{value ?? UNKNOWN}</dd>
+    </div>
+  );
+}
+
+/** The camera's wall clock, with its zone where the camera wrote one. */
+function taken({ takenLocal, takenOffsetMinutes }: Frame): string | null {
+  if (takenLocal === null) return null;
+  return [formatLocalTime(takenLocal), takenOffsetMinutes === null ? '' : offset(takenOffsetMinutes)].join(' ').trim();
+}
+
+function offset(minutes: number): string {
+  const size = Math.abs(minutes);
+  const clock = [Math.floor(size / 60), size % 60].map((part) => String(part).padStart(2, '0')).join(':');
+  return `UTC${minutes < 0 ? '−' : '+'}${clock}`;
+}
+
+function place({ latitude, longitude }: Frame): string | null {
+  if (latitude === null || longitude === null) return null;
+  const side = (degrees: number, positive: string, negative: string) =>
+    `${Math.abs(degrees).toFixed(4)}° ${degrees < 0 ? negative : positive}`;
+  return `${side(latitude, 'N', 'S')}, ${side(longitude, 'E', 'W')}`;
+}

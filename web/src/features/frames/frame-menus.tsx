@@ -1,0 +1,38 @@
+import { useQuery } from '@tanstack/react-query';
+import type { SheetSummary } from '../../../../api/contract/sheets.ts';
+import { Menu } from '../../ui/menu.tsx';
+import type { FrameActions } from './actions.ts';
+import { sheetChoicesQuery } from './queries.ts';
+
+interface Props {
+  ids: readonly string[];
+  actions: FrameActions;
+}
+
+/** Hangs frames under a view of the brief, or takes them down. */
+export function HangMenu({ ids, actions, views }: Props & { views: ReadonlyMap<string, { title: string; number: number }> }) {
+  const entries = [...views].map(([id, { title, number }]) => ({
+    words: `View ${number} · ${title}`,
+    onChoose: () => void actions.hang(ids, { id, title }),
+  }));
+  return <Menu label="Hang under" entries={[...entries, { words: 'Under no view', onChoose: () => void actions.hang(ids, null) }]} />;
+}
+
+/** Puts frames on a sheet that is still being made or open, or on a new one. */
+export function SheetMenu({ ids, actions, commissionId }: Props & { commissionId: string }) {
+  const sheets = useQuery(sheetChoicesQuery(commissionId)).data?.items ?? [];
+  const entries = sheets.filter(takesProofs).map((sheet) => ({
+    words: `Sheet ${sheet.number} · ${sheet.state.toLowerCase()} · ${sheet.proofCount} ${sheet.proofCount === 1 ? 'proof' : 'proofs'}`,
+    onChoose: () => void actions.putOnSheet(ids, sheet),
+  }));
+  return (
+    <Menu
+      label="Put on proof sheet"
+      entries={[...entries, { words: 'A new proof sheet', onChoose: () => void actions.putOnSheet(ids, null) }]}
+    />
+  );
+}
+
+function takesProofs(sheet: SheetSummary): boolean {
+  return (sheet.state === 'Draft' || sheet.state === 'Open') && sheet.withdrawnAt === null;
+}

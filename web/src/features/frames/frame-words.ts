@@ -1,0 +1,31 @@
+import type { FrameItem } from '../../../../api/contract/frames.ts';
+import { formatAperture, formatFocalLength, formatIso, formatShutter } from '../../../../api/domain/photo-notation.ts';
+
+/** The settings below a frame, as short as they can be: "f/8 · 1/125 · ISO 100"; without an ISO the focal length. */
+export function captionSettings(frame: FrameItem): string {
+  const parts = [
+    formatAperture(frame.fNumber),
+    // A fraction is a time in any case; "2 s" needs its unit.
+    formatShutter(frame.exposureTime)?.replace(/^(1\/\d+) s$/, '$1'),
+    formatIso(frame.iso) ?? formatFocalLength(frame.focalLength),
+  ];
+  return parts.filter(Boolean).join(' · ');
+}
+
+/** The name without its extension, as captions have it; the whole name where there is none. */
+export function stem(name: string): string {
+  return name.replace(/(?<=.)\.[^.]+$/, '');
+}
+
+/** What a frame is called for those who do not see it. */
+export function frameLabel(frame: FrameItem, viewTitle: string | undefined): string {
+  const parts = [
+    frame.name,
+    captionSettings(frame),
+    viewTitle && `under ${viewTitle}`,
+    frame.hidden && 'hidden',
+    frame.state === 'reading' && 'being read',
+    frame.state === 'failed' && `failed: ${frame.problem ?? 'it could not be read'}`,
+  ];
+  return parts.filter(Boolean).join(', ');
+}

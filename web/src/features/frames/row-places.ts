@@ -1,0 +1,34 @@
+import type { JustifiedRow } from '../../ui/justify.ts';
+
+/** The row that holds picture `index`. */
+export function rowOf(rows: readonly JustifiedRow[], index: number): number {
+  let [low, high] = [0, rows.length - 1];
+  while (low < high) {
+    const middle = Math.ceil((low + high) / 2);
+    if ((rows[middle]?.first ?? 0) <= index) low = middle;
+    else high = middle - 1;
+  }
+  return low;
+}
+
+/** The picture above or below `index` (`step` −1 or 1): the one whose middle is nearest; `index` itself at the edges. */
+export function acrossRows(rows: readonly JustifiedRow[], index: number, step: -1 | 1, gap: number): number {
+  const at = rowOf(rows, index);
+  const [here, there] = [rows[at], rows[at + step]];
+  if (!here || !there) return index;
+  const wanted = middles(here, gap)[index - here.first] ?? 0;
+  const places = middles(there, gap);
+  const nearest = places.reduce((best, middle, place) => {
+    return Math.abs(middle - wanted) < Math.abs((places[best] ?? 0) - wanted) ? place : best;
+  }, 0);
+  return there.first + nearest;
+}
+
+function middles(row: JustifiedRow, gap: number): number[] {
+  let left = 0;
+  return row.widths.map((width) => {
+    const middle = left + width / 2;
+    left += width + gap;
+    return middle;
+  });
+}

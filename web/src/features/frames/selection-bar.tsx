@@ -1,0 +1,48 @@
+import type { FrameItem } from '../../../../api/contract/frames.ts';
+import { Button } from '../../ui/button.tsx';
+import { counted } from '../uploads/upload-words.ts';
+import type { FrameActions } from './actions.ts';
+import { HangMenu, SheetMenu } from './frame-menus.tsx';
+
+interface Props {
+  commissionId: string;
+  /** The chosen frames, in the order in which they are shown. */
+  frames: readonly FrameItem[];
+  views: ReadonlyMap<string, { title: string; number: number }>;
+  actions: FrameActions;
+  onDelete: () => void;
+  onNone: () => void;
+}
+
+/** Over the lower edge while frames are chosen: how many, and what can be done with them. */
+export function SelectionBar({ commissionId, frames, views, actions, onDelete, onNone }: Props) {
+  const ids = frames.map((frame) => frame.id);
+  const ready = frames.filter((frame) => frame.state === 'ready').map((frame) => frame.id);
+  const someHidden = frames.some((frame) => frame.hidden);
+  const someVisible = frames.some((frame) => !frame.hidden);
+  return (
+    <div className="sticky bottom-0 z-20 -mx-1 mt-3 flex flex-wrap items-center gap-2 border border-ink bg-sheet px-4 py-2.5">
+      <p role="status" className="mr-auto font-bold">
+        {counted(frames.length, { one: 'frame', many: 'frames' })} chosen
+      </p>
+      {ready.length > 0 ? <SheetMenu ids={ready} actions={actions} commissionId={commissionId} /> : null}
+      <HangMenu ids={ids} actions={actions} views={views} />
+      {someVisible ? (
+        <Button size="small" onClick={() => void actions.hide(ids, true)}>
+          Hide
+        </Button>
+      ) : null}
+      {someHidden ? (
+        <Button size="small" onClick={() => void actions.hide(ids, false)}>
+          Show again
+        </Button>
+      ) : null}
+      <Button size="small" tone="danger" onClick={onDelete}>
+        Delete
+      </Button>
+      <Button size="small" tone="quiet" onClick={onNone}>
+        Choose none
+      </Button>
+    </div>
+  );
+}
