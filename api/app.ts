@@ -1,6 +1,7 @@
 import path from 'node:path';
 import express, { type Express, Router } from 'express';
 import helmet from 'helmet';
+import { clientRoutes } from './features/clients/routes.ts';
 import { commissionRoutes } from './features/commissions/routes.ts';
 import { guestRoutes } from './features/guests/routes.ts';
 import { guestSheetRoutes } from './features/guest-sheets/routes.ts';
@@ -8,7 +9,9 @@ import { healthRoutes } from './features/health/routes.ts';
 import { mailRoutes } from './features/mail/routes.ts';
 import { markRoutes } from './features/marks/routes.ts';
 import { pickListRoutes } from './features/pick-lists/routes.ts';
+import { recordRoutes } from './features/record/routes.ts';
 import { sheetRoutes } from './features/sheets/routes.ts';
+import { viewRoutes } from './features/views/routes.ts';
 import { watermarkRoutes } from './features/watermark/routes.ts';
 import { notFound, problems } from './middleware/problem.ts';
 import { requestLog } from './middleware/request-log.ts';
@@ -18,7 +21,10 @@ import { sameOrigin } from './middleware/same-origin.ts';
 /** The features' routers below /api, in the order of a commission's life. */
 export function apiRoutes(routes: RouteContext): Router {
   const api = Router();
+  api.use(clientRoutes(routes));
   api.use(commissionRoutes(routes));
+  api.use(viewRoutes(routes));
+  api.use(recordRoutes(routes));
   api.use(guestRoutes(routes));
   api.use(mailRoutes(routes));
   api.use(watermarkRoutes(routes));

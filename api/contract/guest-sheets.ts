@@ -101,9 +101,14 @@ export const InviteReviewer = z.object({
 });
 export type InviteReviewer = z.infer<typeof InviteReviewer>;
 
+/** The sheet as its guests will see it, for the studio. */
+export const SheetPreview = z.object({ sheet: GuestSheet, proofs: GuestProofs });
+export type SheetPreview = z.infer<typeof SheetPreview>;
+
 const sheet = '/api/guest/sheets/{sheetId}';
 
 export const guestSheetOperations: Operation[] = [
+  { method: 'get', path: '/api/sheets/{sheetId}/preview', summary: 'The sheet as its guests see it', who: 'staff', answer: SheetPreview },
   { method: 'get', path: sheet, summary: 'A sheet as its guest sees it', who: 'guest-of-sheet', answer: GuestSheet },
   { method: 'get', path: `${sheet}/proofs`, summary: 'The proofs of the sheet', who: 'guest-of-sheet', answer: GuestProofs },
   { method: 'get', path: `${sheet}/marks`, summary: 'Who marked what', who: 'guest-of-sheet', answer: SheetMarks },

@@ -193,11 +193,4 @@ export const sheetOperations: Operation[] = [
     body: ReopenSheet,
     answer: StudioSheet,
   },
-  {
-    method: 'get',
-    path: `${sheet}/preview`,
-    summary: 'The sheet as its guests see it',
-    who: 'staff',
-    answer: z.object({ sheet: z.unknown(), proofs: z.unknown() }),
-  },
 ];

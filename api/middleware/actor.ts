@@ -1,10 +1,10 @@
-import type { RequestHandler } from 'express';
 import { Delivery } from '../models/Delivery.ts';
 import { DeliveryRecipient } from '../models/DeliveryRecipient.ts';
 import { Membership } from '../models/Membership.ts';
 import { Sheet } from '../models/Sheet.ts';
 import { SheetGuest } from '../models/SheetGuest.ts';
 import { problem } from './problem.ts';
+import type { Station } from './station.ts';
 import type { Sessions } from './sessions.ts';
 
 interface Person {
@@ -32,9 +32,6 @@ declare module 'express-serve-static-core' {
     recipient?: DeliveryRecipient;
   }
 }
-
-/* eslint-disable-next-line @typescript-eslint/no-explicit-any -- a station of a chain says nothing of the body's type */
-type Station = RequestHandler<any, any, any, any>;
 
 /** The stations that tell who may pass. Made once, since they need the sessions. */
 export interface Gates {

@@ -1,7 +1,7 @@
-import type { RequestHandler } from 'express';
 import type { Knex } from 'knex';
 import { type RateLimiterAbstract, RateLimiterMemory, RateLimiterPostgres, RateLimiterRes } from 'rate-limiter-flexible';
 import { problem } from './problem.ts';
+import type { Station } from './station.ts';
 
 /** Attempts in a span of seconds, counted for each key. */
 interface Limit {
@@ -32,7 +32,7 @@ export interface Limits {
   /** Counts one attempt. @throws Problem 429 with Retry-After once there are too many. */
   count(name: LimitName, key: string): Promise<void>;
   /** A station that counts by the address the request came from, or by the account where somebody is signed in. */
-  limit(name: LimitName): RequestHandler;
+  limit(name: LimitName): Station;
 }
 
 function limiter(knex: Knex, name: LimitName): RateLimiterAbstract {

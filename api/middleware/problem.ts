@@ -2,6 +2,7 @@ import type { ErrorRequestHandler, RequestHandler } from 'express';
 import multer from 'multer';
 import type { Logger } from 'pino';
 import { ZodError } from 'zod';
+import { Refusal } from '../imaging/refusal.ts';
 
 export interface FieldError {
   path: string;
@@ -66,6 +67,7 @@ function hasCode(error: unknown): error is { code: string; constraint?: string }
 function asProblem(error: unknown): Problem | undefined {
   if (error instanceof Problem) return error;
   if (error instanceof ZodError) return fromZod(error);
+  if (error instanceof Refusal) return problem(415, error.message, { code: error.code });
   if (error instanceof multer.MulterError) return problem(error.code === 'LIMIT_FILE_SIZE' ? 413 : 422, `${error.message}.`);
   const { type, status } = (error ?? {}) as { type?: string; status?: number };
   if (type === 'entity.too.large') return problem(413, 'That is more than this accepts.');

@@ -1,9 +1,6 @@
-import type { RequestHandler } from 'express';
 import { z, type ZodType } from 'zod';
 import { problem } from './problem.ts';
-
-/* eslint-disable-next-line @typescript-eslint/no-explicit-any -- a station of a chain says nothing of the body's type */
-type Station = RequestHandler<any, any, any, any>;
+import type { Station } from './station.ts';
 
 declare module 'express-serve-static-core' {
   interface Request {

@@ -6,7 +6,7 @@ import { Account } from '../../models/Account.ts';
  * must show the name the studio wrote, never the account's own.
  * @param person address in lower case, as `EmailAddress` of the contract gives it
  */
-export async function inviteAccount(trx: Transaction, person: { email: string; name: string }): Promise<Account> {
-  await Account.query(trx).insert(person).onConflict('email').ignore();
-  return Account.query(trx).findOne({ email: person.email }).throwIfNotFound();
+export async function inviteAccount(trx: Transaction, { email, name }: { email: string; name: string }): Promise<Account> {
+  await Account.query(trx).insert({ email, name }).onConflict('email').ignore();
+  return Account.query(trx).findOne({ email }).throwIfNotFound();
 }

@@ -1,0 +1,59 @@
+import { Router } from 'express';
+import { InviteReviewer } from '../../contract/guest-sheets.ts';
+import { guestOf, invitationOf, staffOf } from '../../middleware/actor.ts';
+import { streamEvents } from '../../middleware/event-stream.ts';
+import type { RouteContext } from '../../middleware/route-context.ts';
+import { body, ids } from '../../middleware/validation.ts';
+import { Account } from '../../models/Account.ts';
+import { findSheet } from '../sheets/find-sheet.ts';
+import { inviteReviewer } from './invite-reviewer.ts';
+import { loadGuestProofs, proofsBody } from './load-proofs.ts';
+import { loadGuestSheet } from './load-sheet.ts';
+
+/** The sheet as its guests see it. */
+export function guestSheetRoutes({ ctx, gates: { guestOfSheet, staff }, limits: { limit } }: RouteContext): Router {
+  const router = Router();
+
+  router.get('/guest/sheets/:sheetId', ids('sheetId'), guestOfSheet(), async (req, res) => {
+    const { accountId, email } = guestOf(req);
+    const { name, role } = invitationOf(req);
+    const account = await Account.query().findById(accountId).select('shortcuts');
+    res.json(await loadGuestSheet(req.params.sheetId, { accountId, email, name, role, shortcuts: account?.shortcuts ?? true }));
+  });
+
+  router.get('/guest/sheets/:sheetId/proofs', ids('sheetId'), guestOfSheet(), async (req, res) => {
+    const { etag, plain, gzipped } = await proofsBody(ctx, req.params.sheetId);
+    res.set({ 'Cache-Control': 'private, no-cache', ETag: etag, Vary: 'Accept-Encoding, Cookie' });
+    if (req.header('if-none-match') === etag) return void res.status(304).end();
+    const packed = req.acceptsEncodings('gzip') === 'gzip';
+    if (packed) res.set('Content-Encoding', 'gzip');
+    res.type('application/json').end(packed ? gzipped : plain);
+  });
+
+  router.get('/guest/sheets/:sheetId/events', ids('sheetId'), guestOfSheet(), (req, res) => {
+    streamEvents(ctx.live, `sheet:${req.params.sheetId}`, req, res);
+  });
+
+  router.post(
+    '/guest/sheets/:sheetId/guests',
+    ids('sheetId'),
+    guestOfSheet('lead'),
+    limit('send'),
+    body(InviteReviewer),
+    async (req, res) => {
+      const input: InviteReviewer = req.body;
+      const { accountId, email } = guestOf(req);
+      const { name, role } = invitationOf(req);
+      await inviteReviewer(ctx, guestOf(req), invitationOf(req), input);
+      res.status(201).json(await loadGuestSheet(req.params.sheetId, { accountId, email, name, role, shortcuts: true }));
+    },
+  );
+
+  router.get('/sheets/:sheetId/preview', staff(), ids('sheetId'), async (req, res) => {
+    const { accountId, name, email } = staffOf(req);
+    const sheet = await findSheet(staffOf(req), req.params.sheetId);
+    const seen = await loadGuestSheet(sheet.id, { accountId, name, email, role: 'reviewer', shortcuts: true });
+    res.json({ sheet: { ...seen, can: { mark: false, send: false, invite: false } }, proofs: await loadGuestProofs(ctx, sheet) });
+  });
+  return router;
+}

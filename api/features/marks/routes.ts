@@ -1,0 +1,35 @@
+import { Router } from 'express';
+import type { SheetMarks } from '../../contract/guest-sheets.ts';
+import { guestOf } from '../../middleware/actor.ts';
+import type { RouteContext } from '../../middleware/route-context.ts';
+import { ids } from '../../middleware/validation.ts';
+import { setMark } from './set-mark.ts';
+
+/** Marks of guests. The rights to mark are asked by the statement that marks, so the chain needs the guest alone. */
+export function markRoutes({ ctx, gates: { guest, guestOfSheet }, limits: { limit } }: RouteContext): Router {
+  const router = Router();
+
+  router.get('/guest/sheets/:sheetId/marks', ids('sheetId'), guestOfSheet(), async (req, res) => {
+    const marks = await ctx
+      .knex('marks')
+      .join('sheetGuests', (on) => on.on('sheetGuests.sheetId', 'marks.sheetId').andOn('sheetGuests.accountId', 'marks.accountId'))
+      .where({ 'marks.sheetId': req.params.sheetId })
+      .whereNull('sheetGuests.withdrawnAt')
+      .orderBy(['marks.markedAt', 'marks.proofId'])
+      .select<SheetMarks['marks']>('marks.proofId', 'marks.accountId');
+    res.json({ marks } satisfies SheetMarks);
+  });
+
+  const mark = '/guest/sheets/:sheetId/proofs/:proofId/mark';
+  router.put(mark, ids('sheetId', 'proofId'), guest(), limit('mark'), async (req, res) => {
+    const { sheetId, proofId } = req.params;
+    await setMark(ctx, guestOf(req), sheetId, proofId, true);
+    res.json({ proofId, marked: true });
+  });
+  router.delete(mark, ids('sheetId', 'proofId'), guest(), limit('mark'), async (req, res) => {
+    const { sheetId, proofId } = req.params;
+    await setMark(ctx, guestOf(req), sheetId, proofId, false);
+    res.json({ proofId, marked: false });
+  });
+  return router;
+}

@@ -1,0 +1,131 @@
+import type { PickListDetail, PickListLine, PickRow } from '../../contract/pick-lists.ts';
+import type { Context } from '../../context.ts';
+import type { StudioScope } from '../../db/scope.ts';
+import { problem } from '../../middleware/problem.ts';
+import { Commission } from '../../models/Commission.ts';
+import { PickList } from '../../models/PickList.ts';
+import { pictureAddress } from '../../services/picture-address.ts';
+import { frameKey } from '../../services/storage-keys.ts';
+
+type ListRow = PickList & { sheetNumber: number; latest: boolean; originalsBytes: number };
+
+function listsOf(ctx: Context, scope: StudioScope) {
+  return PickList.within(scope)
+    .join('sheets', 'sheets.id', 'pickLists.sheetId')
+    .select(
+      'pickLists.*',
+      'sheets.number as sheetNumber',
+      ctx.knex.raw(
+        'not exists (select from pick_lists newer where newer.sheet_id = pick_lists.sheet_id and newer.number > pick_lists.number) as latest',
+      ),
+      ctx.knex.raw(`(select coalesce(sum(f.size_bytes), 0)::bigint from picks p join frames f on f.id = p.frame_id
+        where p.pick_list_id = pick_lists.id) as originals_bytes`),
+    );
+}
+
+function presentLine(list: ListRow): PickListLine {
+  return {
+    id: list.id,
+    sheetId: list.sheetId,
+    sheetNumber: list.sheetNumber,
+    number: list.number,
+    latest: list.latest,
+    sentAt: list.sentAt.toISOString(),
+    sentBy: list.sentByName,
+    words: list.words,
+    pickCount: list.pickCount,
+    allowance: list.allowance,
+    extraCount: list.extraCount,
+    extraPrice: list.extraPrice,
+    currency: list.currency,
+    originalsBytes: list.originalsBytes,
+  };
+}
+
+/** The pick lists of a commission, newest first. */
+export async function listPickLists(ctx: Context, scope: StudioScope, commissionId: string): Promise<PickListLine[]> {
+  const commission = await Commission.within(scope).findById(commissionId).whereNull('deletedAt').select('id');
+  if (!commission) throw problem(404);
+  const lists = await listsOf(ctx, scope).where({ 'pickLists.commissionId': commissionId }).orderBy('sentAt', 'desc').castTo<ListRow[]>();
+  return lists.map(presentLine);
+}
+
+/** One list with its picks, and what changed against the list before. */
+export async function loadPickList(ctx: Context, scope: StudioScope, pickListId: string): Promise<PickListDetail> {
+  const list = await listsOf(ctx, scope).where({ 'pickLists.id': pickListId }).first().castTo<ListRow | undefined>();
+  if (!list) throw problem(404);
+  const before = list.number > 1 ? await picksOf(ctx, scope, { sheetId: list.sheetId, number: list.number - 1 }) : null;
+  const picks = await picksOf(ctx, scope, { sheetId: list.sheetId, number: list.number });
+  const had = before && new Set(before.map((pick) => pick.proofId));
+  const has = new Set(picks.map((pick) => pick.proofId));
+  return {
+    ...presentLine(list),
+    picks: await Promise.all(
+      picks.map(async (pick) => ({ ...(await presentPick(ctx, pick)), change: had && (had.has(pick.proofId) ? 'kept' : 'added') })),
+    ),
+    dropped: (before ?? [])
+      .filter((pick) => !has.has(pick.proofId))
+      .map(({ proofNumber, frameName, viewTitle }) => ({ proofNumber, frameName, viewTitle })),
+  };
+}
+
+interface FullPick {
+  id: string;
+  studioId: string;
+  commissionId: string;
+  number: number;
+  proofId: string;
+  proofNumber: number;
+  frameId: string;
+  frameName: string;
+  viewTitle: string | null;
+  extra: boolean;
+  markedBy: PickRow['markedBy'];
+  width: number;
+  height: number;
+  placeholder: string | null;
+  recipe: number | null;
+  sizeBytes: number;
+  finalId: string | null;
+  versions: number;
+}
+
+async function picksOf(ctx: Context, scope: StudioScope, list: { sheetId: string; number: number }): Promise<FullPick[]> {
+  return ctx
+    .knex('picks')
+    .join('pickLists', 'pickLists.id', 'picks.pickListId')
+    .join('frames', 'frames.id', 'picks.frameId')
+    .joinRaw('left join finals on finals.frame_id = picks.frame_id and finals.deleted_at is null')
+    .where({ 'pickLists.sheetId': list.sheetId, 'pickLists.number': list.number, 'picks.studioId': scope.studioId })
+    .orderBy('picks.number')
+    .select(
+      'picks.*',
+      'frames.commissionId',
+      'frames.width',
+      'frames.height',
+      'frames.placeholder',
+      'frames.recipe',
+      'frames.sizeBytes',
+      'finals.id as finalId',
+      ctx.knex.raw('(select count(*)::int from final_versions v where v.final_id = finals.id and v.deleted_at is null) as versions'),
+    );
+}
+
+async function presentPick(ctx: Context, pick: FullPick): Promise<Omit<PickRow, 'change'>> {
+  return {
+    id: pick.id,
+    number: pick.number,
+    proofNumber: pick.proofNumber,
+    frameId: pick.frameId,
+    frameName: pick.frameName,
+    viewTitle: pick.viewTitle,
+    extra: pick.extra,
+    markedBy: pick.markedBy,
+    width: pick.width,
+    height: pick.height,
+    placeholder: pick.placeholder,
+    picture: await pictureAddress(ctx, frameKey({ ...pick, id: pick.frameId }, 480)),
+    sizeBytes: pick.sizeBytes,
+    final: pick.finalId ? { finalId: pick.finalId, versions: pick.versions } : null,
+  };
+}
