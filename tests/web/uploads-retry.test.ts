@@ -89,6 +89,23 @@ describe('a lost line', () => {
     expect([...(server.uploads.values().next().value?.parts.keys() ?? [])]).toHaveLength(20);
   });
 
+  it('does not send a file again that was complete when the answer got lost', async () => {
+    const { queue, server, clock, states } = startQueue();
+    let broken = false;
+    server.trouble = (call) => {
+      const held = server.uploads.get('up-1');
+      if (call !== 'complete' || broken || !held) return undefined;
+      broken = true;
+      held.state = 'checking';
+      return lost;
+    };
+    queue.add([fileOf('HL_1.tif', 20)]);
+    await clock.pass(30_000);
+    expect(states()).toEqual({ 'HL_1.tif': 'done' });
+    expect(server.calls.filter((call) => call.startsWith('part'))).toHaveLength(2);
+    expect(server.calls.filter((call) => call.startsWith('complete'))).toHaveLength(1);
+  });
+
   it('waits as long as a busy server asks', async () => {
     const { queue, server, clock, states } = startQueue();
     server.trouble = () => new TransportProblem('busy', 'Please wait.', 90_000);

@@ -78,7 +78,8 @@ export class MemoryServer implements UploadTransport {
   async offer(offer: Offer, signal: AbortSignal): Promise<OfferAnswer> {
     await this.#request('offer', offer.name, signal);
     if (this.known.has(offer.sha256)) return { kind: 'known', sentence: 'It is in the commission already.' };
-    const there = [...this.uploads.values()].find((one) => one.offer.sha256 === offer.sha256 && one.state === 'open');
+    const there = [...this.uploads.values()].find((one) => one.offer.sha256 === offer.sha256 && ['open', 'checking'].includes(one.state));
+    if (there?.state === 'checking') return { kind: 'checking', uploadId: there.id };
     const held: Held = there ?? { id: `up-${this.uploads.size + 1}`, offer, parts: new Map(), state: 'open' };
     this.uploads.set(held.id, held);
     return { kind: 'upload', uploadId: held.id, partSize: this.partSize, partsThere: [...held.parts.keys()] };

@@ -40,6 +40,7 @@ function newUpload(purpose: UploadPurpose, { name, size, sha256, lastModified }:
 function offerAnswer(answer: unknown): OfferAnswer {
   const start = answer as UploadStart;
   if (start.state === 'known') return { kind: 'known', sentence: `Already in this commission as ${start.name}.` };
+  if (start.state !== 'receiving') return { kind: 'checking', uploadId: start.id };
   return { kind: 'upload', uploadId: start.id, partSize: start.partSize, partsThere: start.partsThere };
 }
 

@@ -28,6 +28,7 @@ async function offer(item: UploadItem, transport: UploadTransport, signal: Abort
   if (signal.aborted) return { kind: 'going' };
   if (answer.kind === 'known') return answer;
   item.uploadId = answer.uploadId;
+  if (answer.kind === 'checking') return { kind: 'sent' };
   item.partSize = answer.partSize;
   item.partsThere.clear();
   for (const number of answer.partsThere) item.partsThere.add(number);

@@ -75,17 +75,22 @@ function json(xhr: XMLHttpRequest): unknown {
 /** Answers for which waiting helps: the server asks for it, or something in front of it has no server to ask. */
 const BUSY = [429, 502, 503, 504];
 
-function kindOf(status: number): ProblemKind {
+/** The upload has ended or lost its parts on the server: asking anew tells how to go on (codes of the uploads' contract). */
+const OVER = /^(upload|parts)-/;
+
+function kindOf(status: number, code: string | undefined): ProblemKind {
   if (BUSY.includes(status)) return 'busy';
   if (status >= 500) return 'server';
   if (status === 401) return 'signed-out';
-  return status === 404 || status === 410 ? 'gone' : 'refused';
+  if (status === 404 || status === 410) return 'gone';
+  return status === 409 && OVER.test(code ?? '') ? 'gone' : 'refused';
 }
 
 function problemOf(xhr: XMLHttpRequest): TransportProblem {
-  const kind = kindOf(xhr.status);
-  const sentence = detailOf(xhr) ?? SENTENCES[kind];
-  return new TransportProblem(kind, sentence, retryAfterMs(xhr.getResponseHeader('retry-after'), Date.now()));
+  const { code, sentence } = bodyOf(xhr);
+  const kind = kindOf(xhr.status, code);
+  const own = kind === 'refused' || kind === 'busy' ? sentence : undefined;
+  return new TransportProblem(kind, own ?? SENTENCES[kind], retryAfterMs(xhr.getResponseHeader('retry-after'), Date.now()));
 }
 
 const SENTENCES: Record<ProblemKind, string> = {
@@ -97,14 +102,13 @@ const SENTENCES: Record<ProblemKind, string> = {
   refused: 'The server refused this file.',
 };
 
-/** The server's own sentence (RFC 9457: `detail`), where there is one and it is meant for the person. */
-function detailOf(xhr: XMLHttpRequest): string | undefined {
-  if (kindOf(xhr.status) !== 'refused') return undefined;
+/** What the answer says (RFC 9457), where it says anything: the code, and the sentence about the first wrong field or the whole. */
+function bodyOf(xhr: XMLHttpRequest): { code?: string; sentence?: string } {
   try {
-    const body = JSON.parse(xhr.responseText) as { detail?: unknown; errors?: { message?: unknown }[] };
-    const sentence = body.errors?.[0]?.message ?? body.detail;
-    return typeof sentence === 'string' ? sentence : undefined;
+    const { code, detail, errors } = JSON.parse(xhr.responseText) as { code?: string; detail?: string; errors?: { message?: string }[] };
+    const sentence = errors?.[0]?.message ?? detail;
+    return { ...(code !== undefined && { code }), ...(sentence !== undefined && { sentence }) };
   } catch {
-    return undefined;
+    return {};
   }
 }
