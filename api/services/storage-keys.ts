@@ -7,6 +7,11 @@ export type DerivativeSize = 480 | 960 | 2560;
 
 const commission = (studioId: string, commissionId: string) => `studios/${studioId}/commissions/${commissionId}`;
 
+/** Every key of a commission begins so. */
+export function commissionPrefix(studioId: string, commissionId: string): string {
+  return `${commission(studioId, commissionId)}/`;
+}
+
 /** Where the file of an upload is stored, once, byte for byte. Keys hold ids only, never a name that tells something. */
 export function originalKey(studioId: string, commissionId: string): string {
   return `${commission(studioId, commissionId)}/originals/${randomUUID()}`;

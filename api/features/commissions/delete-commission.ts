@@ -1,0 +1,46 @@
+import type { CommissionDetail } from '../../contract/commissions.ts';
+import type { Context } from '../../context.ts';
+import { announce } from '../../db/live.ts';
+import type { StaffActor } from '../../middleware/actor.ts';
+import { problem } from '../../middleware/problem.ts';
+import { Commission } from '../../models/Commission.ts';
+import { addToRecord } from '../record/add-to-record.ts';
+import { countContents } from './count-contents.ts';
+import { readCommission } from './read-commission.ts';
+
+/** Deletes a commission with all it holds: links stop at once, rows and files go after 30 days. @throws Problem 404 */
+export async function deleteCommission(ctx: Context, actor: StaffActor, commissionId: string): Promise<void> {
+  await ctx.knex.transaction(async (trx) => {
+    const commission = await Commission.within(actor, trx).findById(commissionId).whereNull('deletedAt').forUpdate();
+    if (!commission) throw problem(404);
+    const { frames, sheets, deliveries } = await countContents(trx, actor, commissionId);
+    await Commission.within(actor, trx).findById(commissionId).patch({ deletedAt: new Date() });
+    await addToRecord(trx, {
+      studioId: actor.studioId,
+      commissionId,
+      actor,
+      did: 'commission.deleted',
+      says: `Deleted the commission ${commission.title}`,
+      about: { frames, sheets, deliveries },
+    });
+    await announce(trx, `commission:${commissionId}`, { what: 'commission-changed' });
+  });
+}
+
+/** Brings a deleted commission back as it was. Doing it twice changes nothing. @throws Problem 404 */
+export async function restoreCommission(ctx: Context, actor: StaffActor, commissionId: string): Promise<CommissionDetail> {
+  return ctx.knex.transaction(async (trx) => {
+    const restored = await Commission.within(actor, trx).findById(commissionId).whereNotNull('deletedAt').patch({ deletedAt: null });
+    const answer = await readCommission(trx, actor, commissionId);
+    if (!restored) return answer;
+    await addToRecord(trx, {
+      studioId: actor.studioId,
+      commissionId,
+      actor,
+      did: 'commission.restored',
+      says: `Brought the commission ${answer.title} back`,
+    });
+    await announce(trx, `commission:${commissionId}`, { what: 'commission-changed' });
+    return readCommission(trx, actor, commissionId);
+  });
+}
