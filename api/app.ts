@@ -3,16 +3,22 @@ import express, { type Express, Router } from 'express';
 import helmet from 'helmet';
 import { clientRoutes } from './features/clients/routes.ts';
 import { commissionRoutes } from './features/commissions/routes.ts';
+import { frameRoutes } from './features/frames/routes.ts';
 import { guestRoutes } from './features/guests/routes.ts';
 import { guestSheetRoutes } from './features/guest-sheets/routes.ts';
 import { healthRoutes } from './features/health/routes.ts';
 import { mailRoutes } from './features/mail/routes.ts';
 import { markRoutes } from './features/marks/routes.ts';
 import { pickListRoutes } from './features/pick-lists/routes.ts';
+import { pictureRoutes } from './features/pictures/routes.ts';
 import { recordRoutes } from './features/record/routes.ts';
 import { sheetRoutes } from './features/sheets/routes.ts';
+import { uploadRoutes } from './features/uploads/routes.ts';
 import { viewRoutes } from './features/views/routes.ts';
 import { watermarkRoutes } from './features/watermark/routes.ts';
+import { signInRoutes } from './features/sign-in/routes.ts';
+import { studioRoutes } from './features/studios/routes.ts';
+import { teamRoutes } from './features/team/routes.ts';
 import { notFound, problems } from './middleware/problem.ts';
 import { requestLog } from './middleware/request-log.ts';
 import type { RouteContext } from './middleware/route-context.ts';
@@ -24,6 +30,8 @@ export function apiRoutes(routes: RouteContext): Router {
   api.use(clientRoutes(routes));
   api.use(commissionRoutes(routes));
   api.use(viewRoutes(routes));
+  api.use(uploadRoutes(routes));
+  api.use(frameRoutes(routes));
   api.use(recordRoutes(routes));
   api.use(guestRoutes(routes));
   api.use(mailRoutes(routes));
@@ -32,6 +40,9 @@ export function apiRoutes(routes: RouteContext): Router {
   api.use(guestSheetRoutes(routes));
   api.use(markRoutes(routes));
   api.use(pickListRoutes(routes));
+  api.use(signInRoutes(routes));
+  api.use(studioRoutes(routes));
+  api.use(teamRoutes(routes));
   return api;
 }
 
@@ -48,6 +59,7 @@ export function buildApp(routes: RouteContext, observe?: express.RequestHandler)
   app.use(securityHeaders(config.secureCookies, config.picturesFrom === 'store' ? config.store.endpoint : undefined));
   app.use(healthRoutes(ctx));
   app.use('/api', sameOrigin(config), express.json({ limit: '256kb' }), noStore, apiRoutes(routes), notFound);
+  app.use(pictureRoutes(ctx));
   app.use(webPages(path.resolve(config.webRoot)));
   app.use(problems(log));
   return app;

@@ -1,11 +1,8 @@
 import sharp from 'sharp';
+import type { DerivativeSize } from './derivative-sizes.ts';
 import { asRefusal, decodeOptions, pictureSource, type JudgedFile, type PictureLimits } from './judge-file.ts';
 import { makePlaceholder } from './placeholder.ts';
 import { fromRaw, toRaw, turnUpright, type RawPicture } from './upright.ts';
-
-/** Longest sides in pixels: two for sheets, one for the viewer. */
-export const DERIVATIVE_SIZES = [480, 960, 2560] as const;
-export type DerivativeSize = (typeof DERIVATIVE_SIZES)[number];
 
 export interface Derivative {
   size: DerivativeSize;

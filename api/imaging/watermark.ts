@@ -1,6 +1,7 @@
 import sharp from 'sharp';
 import type { WatermarkSettings } from '../domain/watermark-settings.ts';
-import { DERIVATIVE_SIZES, encodeDerivative, shrink, type Derivative, type DerivativeSize } from './make-derivatives.ts';
+import { DERIVATIVE_SIZES, type DerivativeSize } from './derivative-sizes.ts';
+import { encodeDerivative, shrink, type Derivative } from './make-derivatives.ts';
 import { drawMark } from './watermark-mark.ts';
 import { toRaw, type RawPicture } from './upright.ts';
 

@@ -3,7 +3,27 @@ import { purgeCommissions } from '../features/commissions/purge-commissions.job.
 import { findUnsureMails } from '../features/mail/find-unsure-mails.job.ts';
 import { sendMail } from '../features/mail/send-mail.job.ts';
 import { watermarkProofs } from '../features/sheets/watermark-proofs.job.ts';
+import { purgeFrames } from '../features/frames/purge-frames.job.ts';
+import { cleanUploads } from '../features/uploads/clean-uploads.job.ts';
+import { dropTwin } from '../features/uploads/drop-twin.job.ts';
+import { dropUpload } from '../features/uploads/drop-upload.job.ts';
+import { noteFrames } from '../features/uploads/note-frames.job.ts';
+import { takeInUpload } from '../features/uploads/take-in-upload.job.ts';
+import { sweepAccounts } from '../features/sign-in/sweep-accounts.job.ts';
 import type { Job } from './job.ts';
 
 /** Every job the worker knows. */
-export const jobs: Job<never>[] = [watermarkProofs, sendMail, findUnsureMails, purgeClients, purgeCommissions];
+export const jobs: Job<never>[] = [
+  takeInUpload,
+  dropUpload,
+  dropTwin,
+  noteFrames,
+  cleanUploads,
+  purgeFrames,
+  watermarkProofs,
+  sendMail,
+  findUnsureMails,
+  sweepAccounts,
+  purgeClients,
+  purgeCommissions,
+];
