@@ -1,3 +1,4 @@
+import { Commission } from '../models/Commission.ts';
 import { Delivery } from '../models/Delivery.ts';
 import { DeliveryRecipient } from '../models/DeliveryRecipient.ts';
 import { Membership } from '../models/Membership.ts';
@@ -45,6 +46,14 @@ export interface Gates {
   guestOfDelivery(): Station;
 }
 
+/** The commission of a sheet or a delivery; one that was deleted takes its links along. */
+function commissionOf(table: 'sheets' | 'deliveries') {
+  return Commission.query()
+    .select('commissions.id')
+    .whereColumn('commissions.id', `${table}.commissionId`)
+    .whereNull('commissions.deletedAt');
+}
+
 export function createGates(sessions: Sessions): Gates {
   const signIn = async (...[req, res]: Parameters<Station>): Promise<GuestActor> => {
     const session = await sessions.read(req, res, 'guest');
@@ -78,7 +87,13 @@ export function createGates(sessions: Sessions): Gates {
       const { sheetId } = req.params;
       const invitation = await SheetGuest.query().findOne({ sheetId, accountId: actor.accountId }).whereNull('withdrawnAt');
       const sheet =
-        invitation && (await Sheet.query().findById(invitation.sheetId).whereNotNull('issuedAt').whereNull('withdrawnAt').select('id'));
+        invitation &&
+        (await Sheet.query()
+          .findById(invitation.sheetId)
+          .whereNotNull('issuedAt')
+          .whereNull('withdrawnAt')
+          .whereExists(commissionOf('sheets'))
+          .select('id'));
       if (!invitation || !sheet) throw problem(404);
       if (role && invitation.role !== role) throw problem(403, 'Only the lead of this sheet may do this.', { code: 'lead-only' });
       req.invitation = invitation;
@@ -89,7 +104,13 @@ export function createGates(sessions: Sessions): Gates {
       const { deliveryId } = req.params;
       const recipient = await DeliveryRecipient.query().findOne({ deliveryId, accountId: actor.accountId }).whereNull('withdrawnAt');
       const delivery =
-        recipient && (await Delivery.query().findById(recipient.deliveryId).whereNotNull('sentAt').whereNull('withdrawnAt').select('id'));
+        recipient &&
+        (await Delivery.query()
+          .findById(recipient.deliveryId)
+          .whereNotNull('sentAt')
+          .whereNull('withdrawnAt')
+          .whereExists(commissionOf('deliveries'))
+          .select('id'));
       if (!recipient || !delivery) throw problem(404);
       req.recipient = recipient;
       next();

@@ -39,8 +39,12 @@ async function removeFiles(ctx: Context, { studioId, id }: Commission, signal: A
 /** The record of a commission names its people, so it goes too; the studio's own record keeps one line. */
 async function removeRows(ctx: Context, { studioId, id, title }: Commission, before: Date): Promise<void> {
   await ctx.knex.transaction(async (trx) => {
-    const removed = await Commission.within({ studioId }, trx).findById(id).where('deletedAt', '<', before).delete();
-    if (!removed) return;
+    const gone = await Commission.within({ studioId }, trx).findById(id).where('deletedAt', '<', before).forUpdate();
+    if (!gone) return;
+    // Picks hold on to proofs, proofs to frames, deliveries to finals: what holds goes before what is held.
+    for (const table of ['deliveries', 'pickLists', 'finals', 'sheets', 'frames'])
+      await trx(table).where({ studioId, commissionId: id }).delete();
+    await Commission.within({ studioId }, trx).deleteById(id);
     await RecordEntry.query(trx).where({ commissionId: id }).delete();
     await addToRecord(trx, { studioId, did: 'commission.purged', says: `Removed the deleted commission ${title} for good` });
   });
