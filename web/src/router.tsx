@@ -26,7 +26,11 @@ const studioPages: RouteObject[] = [
 
 /** The guests' pages: sheets, deliveries and what they were ever invited to. */
 const guestPages: RouteObject[] = [
+  { path: 'open/:token', lazy: () => import('./pages/guest/open-page.tsx') },
+  { path: 'mine', lazy: () => import('./pages/guest/mine-page.tsx') },
+  { path: 'sheets/:sheetId/review', loader: sheetLoader(queryClient), lazy: () => import('./pages/guest/review-page.tsx') },
   { path: 'sheets/:sheetId', loader: sheetLoader(queryClient), lazy: () => import('./pages/guest/sheet-page.tsx') },
+  { path: 'sheets/:sheetId/proofs/:number', loader: sheetLoader(queryClient), lazy: () => import('./pages/guest/proof-page.tsx') },
 ];
 
 /** Every part of the pages at once, while building. */

@@ -39,6 +39,11 @@ export function formatClock(value: Time, timeZone?: string): string {
   return format({ hour: '2-digit', minute: '2-digit', hourCycle: 'h23', timeZone }).format(read(value));
 }
 
+/** "28 Oct 2026, 17:06" from a camera's wall clock ("2026-10-28T17:06:12"), which names no zone and is shown as it was set. */
+export function formatWallClock(value: string): string {
+  return formatTime(`${value.replace(/(Z|[+-]\d{2}:?\d{2})$/, '')}Z`, 'UTC');
+}
+
 /** "17 Nov 2026, 23:59 GMT": for a last moment, where the zone matters. */
 export function formatTimeWithZone(value: Time, timeZone?: string): string {
   const parts = format({ hour: '2-digit', timeZone, timeZoneName: 'short' }).formatToParts(read(value));

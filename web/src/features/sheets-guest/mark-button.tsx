@@ -9,22 +9,26 @@ interface Props {
   role: GuestSheet['me']['role'];
   onMark: (wanted: boolean) => void;
   className?: string;
+  /** The number of the pick, shown after the word. */
+  place?: number | undefined;
 }
 
 /** Sets or takes back one's own mark. A lead picks, a reviewer marks. */
-export function MarkButton({ number, marks, role, onMark, className }: Props) {
+export function MarkButton({ number, marks, role, onMark, className, place }: Props) {
   const { t } = useTranslation();
+  const numbered = marks.mine && place !== undefined ? ` · ${place}` : '';
   const verb = role === 'lead' ? (marks.mine ? 'picked' : 'pick') : marks.mine ? 'marked' : 'mark';
   return (
     <Button
       size="small"
       tone={marks.mine ? 'picked' : 'plain'}
       aria-pressed={marks.mine}
-      aria-label={t(`marks.${verb}Proof`, { number })}
+      aria-label={`${t(`marks.${verb}`)}${numbered}, ${t('proof.name', { number })}`}
       className={className}
       onClick={() => onMark(!marks.mine)}
     >
       {t(`marks.${verb}`)}
+      {numbered}
     </Button>
   );
 }

@@ -48,7 +48,7 @@ export function ProofCard(props: Props) {
         style={{ width }}
       >
         {to ? (
-          <Link to={to} aria-label={name} data-position={position} className="block">
+          <Link to={to} state={{ fromSheet: true }} aria-label={name} data-position={position} className="block">
             {picture}
           </Link>
         ) : (

@@ -1,0 +1,90 @@
+import { useMutation, useQueryClient } from '@tanstack/react-query';
+import { useEffect, useRef } from 'react';
+import { useTranslation } from 'react-i18next';
+import { useNavigate, useParams } from 'react-router-dom';
+import type { Asked, OpenedLink } from '../../../../api/contract/guests.ts';
+import { api, ApiProblem } from '../../lib/api.ts';
+import { Button } from '../../ui/button.tsx';
+import { GuestShell } from '../../ui/guest-shell.tsx';
+import { LinkButton } from '../../ui/link-button.tsx';
+import { PageTitle } from '../../ui/page-title.tsx';
+import { Pending } from '../../ui/pending.tsx';
+import { Failure } from '../../ui/query-view.tsx';
+
+/**
+ * Where the link of an e-mail leads. The token is handed over by POST: mail scanners that follow links only fetch this page
+ * and begin no session. What was cached for another guest at this browser is forgotten.
+ */
+export function Component() {
+  const { token = '' } = useParams();
+  const { t } = useTranslation();
+  const navigate = useNavigate();
+  const queryClient = useQueryClient();
+  const open = useMutation({
+    mutationFn: () => api.post<OpenedLink>('/api/open', { token }),
+    onSuccess: ({ goTo }) => {
+      queryClient.clear();
+      void navigate(goTo, { replace: true });
+    },
+  });
+  const { mutate } = open;
+  const asked = useRef('');
+  useEffect(() => {
+    if (asked.current === token) return;
+    asked.current = token;
+    mutate();
+  }, [mutate, token]);
+
+  if (!open.isError) return <Pending what={t('open.opening')} />;
+  const error = open.error;
+  const isRefusal = error instanceof ApiProblem && [400, 404, 410, 422].includes(error.status);
+  return (
+    <GuestShell>
+      <div className="max-w-xl py-8">
+        {isRefusal ? (
+          <DeadLink token={token} error={error} />
+        ) : (
+          <>
+            <PageTitle title={t('open.failedTitle')} className="mb-4 text-30" />
+            <Failure error={error} onRetry={() => mutate()} />
+          </>
+        )}
+      </div>
+    </GuestShell>
+  );
+}
+
+/** A link that has ended, was taken back, or is not known: which of them, and the way to a new one. */
+function DeadLink({ token, error }: { token: string; error: ApiProblem }) {
+  const { t } = useTranslation();
+  const renew = useMutation({ mutationFn: () => api.post<Asked>('/api/new-link', { token }) });
+  const canRenew = error.status === 410 || error.status === 404;
+  return (
+    <>
+      <PageTitle title={t('open.deadTitle')} />
+      <p className="mt-3">{error.detail}</p>
+      {renew.isSuccess ? (
+        <p role="status" className="mt-5 border-l-4 border-verdigris bg-sheet px-4 py-2.5">
+          {renew.data.says}
+        </p>
+      ) : canRenew ? (
+        <>
+          <p className="mt-1 text-mute">{t('open.askWords')}</p>
+          <div className="mt-6 flex flex-wrap gap-3">
+            <Button tone="first" busy={renew.isPending} onClick={() => renew.mutate()}>
+              {t('open.ask')}
+            </Button>
+            <LinkButton to="/mine">{t('refused.mine')}</LinkButton>
+          </div>
+        </>
+      ) : (
+        <p className="mt-1 text-mute">{t('open.cutShort')}</p>
+      )}
+      {renew.isError ? (
+        <p role="alert" className="mt-4 font-bold text-copper">
+          {renew.error.message}
+        </p>
+      ) : null}
+    </>
+  );
+}
