@@ -4,6 +4,7 @@ import helmet from 'helmet';
 import { clientRoutes } from './features/clients/routes.ts';
 import { commissionRoutes } from './features/commissions/routes.ts';
 import { frameRoutes } from './features/frames/routes.ts';
+import { deskRoutes } from './features/desk/routes.ts';
 import { guestRoutes } from './features/guests/routes.ts';
 import { guestSheetRoutes } from './features/guest-sheets/routes.ts';
 import { healthRoutes } from './features/health/routes.ts';
@@ -19,6 +20,10 @@ import { watermarkRoutes } from './features/watermark/routes.ts';
 import { signInRoutes } from './features/sign-in/routes.ts';
 import { studioRoutes } from './features/studios/routes.ts';
 import { teamRoutes } from './features/team/routes.ts';
+import { archiveRoutes } from './features/archives/routes.ts';
+import { deliveryDownloadRoutes } from './features/deliveries/download-routes.ts';
+import { deliveryRoutes } from './features/deliveries/routes.ts';
+import { finalRoutes } from './features/finals/routes.ts';
 import { notFound, problems } from './middleware/problem.ts';
 import { requestLog } from './middleware/request-log.ts';
 import type { RouteContext } from './middleware/route-context.ts';
@@ -27,6 +32,7 @@ import { sameOrigin } from './middleware/same-origin.ts';
 /** The features' routers below /api, in the order of a commission's life. */
 export function apiRoutes(routes: RouteContext): Router {
   const api = Router();
+  api.use(deskRoutes(routes));
   api.use(clientRoutes(routes));
   api.use(commissionRoutes(routes));
   api.use(viewRoutes(routes));
@@ -43,6 +49,10 @@ export function apiRoutes(routes: RouteContext): Router {
   api.use(signInRoutes(routes));
   api.use(studioRoutes(routes));
   api.use(teamRoutes(routes));
+  api.use(finalRoutes(routes));
+  api.use(archiveRoutes(routes));
+  api.use(deliveryRoutes(routes));
+  api.use(deliveryDownloadRoutes(routes));
   return api;
 }
 

@@ -87,7 +87,7 @@ export const StudioDelivery = z.object({
   bytes: z.number().int(),
   recipients: z.array(RecipientItem),
   archives: z.array(ArchiveState),
-  can: z.object({ withdraw: z.boolean(), extend: z.boolean(), invite: z.boolean(), retry: z.boolean() }),
+  can: z.object({ withdraw: z.boolean(), restore: z.boolean(), extend: z.boolean(), invite: z.boolean(), retry: z.boolean() }),
 });
 export type StudioDelivery = z.infer<typeof StudioDelivery>;
 

@@ -10,6 +10,11 @@ import { dropUpload } from '../features/uploads/drop-upload.job.ts';
 import { noteFrames } from '../features/uploads/note-frames.job.ts';
 import { takeInUpload } from '../features/uploads/take-in-upload.job.ts';
 import { sweepAccounts } from '../features/sign-in/sweep-accounts.job.ts';
+import { buildArchive } from '../features/archives/build-archive.job.ts';
+import { findStrandedArchives } from '../features/archives/find-stranded-archives.job.ts';
+import { sendDelivery } from '../features/deliveries/send-delivery.job.ts';
+import { makeFinalPictures } from '../features/finals/make-final-pictures.job.ts';
+import { sweepFinals } from '../features/finals/sweep-finals.job.ts';
 import type { Job } from './job.ts';
 
 /** Every job the worker knows. */
@@ -26,4 +31,9 @@ export const jobs: Job<never>[] = [
   sweepAccounts,
   purgeClients,
   purgeCommissions,
+  makeFinalPictures,
+  buildArchive,
+  sendDelivery,
+  findStrandedArchives,
+  sweepFinals,
 ];

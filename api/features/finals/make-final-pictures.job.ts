@@ -3,8 +3,9 @@ import { announce } from '../../db/live.ts';
 import type { Job } from '../../jobs/job.ts';
 import { Final } from '../../models/Final.ts';
 import { FinalVersion } from '../../models/FinalVersion.ts';
-import { finalKey, RECIPE, webSizeKey } from '../../services/storage-keys.ts';
-import { withLocalCopy } from './local-copy.ts';
+import { finalKey, RECIPE } from '../../services/storage-keys.ts';
+import { withUploadedFile } from '../uploads/fetch-upload.ts';
+import { storeWebSize } from './web-size.ts';
 
 /** Makes the pictures of a final's version, and its web size for deliveries. Stops quietly where they are made. */
 export const makeFinalPictures: Job<{ versionId: string }> = {
@@ -13,7 +14,7 @@ export const makeFinalPictures: Job<{ versionId: string }> = {
     const version = await FinalVersion.query(ctx.knex).findById(versionId);
     const final = version && (await Final.query(ctx.knex).findById(version.finalId));
     if (!version || !final || version.recipe === RECIPE) return;
-    const placeholder = await withLocalCopy(ctx.store, version, signal, (file) => storePictures(ctx, version, final.commissionId, file));
+    const placeholder = await withUploadedFile(ctx, version, signal, (file) => storePictures(ctx, version, final.commissionId, file));
     await ctx.knex.transaction(async (trx) => {
       await FinalVersion.query(trx).findById(versionId).patch({ placeholder, recipe: RECIPE });
       await announce(trx, `commission:${final.commissionId}`, { what: 'final-ready', finalId: final.id, versionId });
@@ -27,11 +28,4 @@ async function storePictures(ctx: Context, version: FinalVersion, commissionId: 
   for (const { size, data } of pictures) await ctx.store.put(finalKey(now, commissionId, size), data, 'image/jpeg');
   await storeWebSize(ctx, version, commissionId, file);
   return placeholder;
-}
-
-/** Makes and stores the web size of a version from a copy on this machine. */
-export async function storeWebSize(ctx: Context, version: FinalVersion, commissionId: string, file: string): Promise<Buffer> {
-  const { data } = await ctx.pixels.webSize(file);
-  await ctx.store.put(webSizeKey(version, commissionId), data, 'image/jpeg');
-  return data;
 }

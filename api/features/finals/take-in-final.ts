@@ -92,5 +92,7 @@ async function tell(trx: Transaction, upload: Upload, final: Final, version: Fin
     says: `Took in “${version.name}” as ${what}${final.match === 'ask' ? '; its pick has to be asked' : ''}`,
     about: { finalId: final.id, versionId: version.id },
   });
-  await announce(trx, `commission:${upload.commissionId}`, { what: 'final-added', finalId: final.id, versionId: version.id });
+  const topic = `commission:${upload.commissionId}`;
+  await announce(trx, topic, { what: 'final-added', finalId: final.id, versionId: version.id });
+  await announce(trx, topic, { what: 'upload-done', uploadId: upload.id, frameId: null });
 }

@@ -33,7 +33,7 @@ function measure(): { tap: Transform; result(): { sha256: string; bytes: number 
  */
 export async function withUploadedFile<T>(
   ctx: Context,
-  upload: Upload,
+  upload: Pick<Upload, 'storageKey' | 'sha256' | 'sizeBytes'>,
   signal: AbortSignal,
   use: (path: string) => Promise<T>,
 ): Promise<T> {

@@ -1,16 +1,5 @@
-const UNITS = ['B', 'kB', 'MB', 'GB', 'TB'];
-
 /** "31.2 MB": decimal units as discs and mail programs count them; one decimal below 100, none for plain bytes. */
-export function formatBytes(bytes: number): string {
-  let value = bytes;
-  let unit = 0;
-  while (value >= 999.5 && unit < UNITS.length - 1) {
-    value /= 1000;
-    unit += 1;
-  }
-  const digits = unit > 0 && value < 99.95 ? 1 : 0;
-  return `${value.toFixed(digits)} ${UNITS[unit]}`;
-}
+export { formatByteSize as formatBytes } from '../../../api/domain/byte-size.ts';
 
 /** "about 6 min left", "about 40 s left", "about 2 h 10 min left"; nothing while it cannot be told. */
 export function formatTimeLeft(seconds: number | null): string {
