@@ -20,6 +20,9 @@ const studioPages: RouteObject[] = [
         lazy: () => import('./pages/studio/commission/frames-page.tsx'),
         children: [{ path: ':frameId', lazy: () => import('./pages/studio/commission/frames-viewer-page.tsx') }],
       },
+      { path: 'proofs', lazy: () => import('./pages/studio/commission/proofs-page.tsx') },
+      { path: 'proofs/:sheetId', lazy: () => import('./pages/studio/commission/proofs-page.tsx') },
+      { path: 'picks', lazy: () => import('./pages/studio/commission/picks-page.tsx') },
     ],
   },
 ];
@@ -31,6 +34,11 @@ const guestPages: RouteObject[] = [
   { path: 'sheets/:sheetId/review', loader: sheetLoader(queryClient), lazy: () => import('./pages/guest/review-page.tsx') },
   { path: 'sheets/:sheetId', loader: sheetLoader(queryClient), lazy: () => import('./pages/guest/sheet-page.tsx') },
   { path: 'sheets/:sheetId/proofs/:number', loader: sheetLoader(queryClient), lazy: () => import('./pages/guest/proof-page.tsx') },
+];
+
+/** A studio's pages without its navigation: they look as the guest's do. */
+const previewPages: RouteObject[] = [
+  { path: 'commissions/:commissionId/proofs/:sheetId/preview', lazy: () => import('./pages/studio/sheet-preview-page.tsx') },
 ];
 
 /** Every part of the pages at once, while building. */
@@ -48,6 +56,7 @@ export const router = createBrowserRouter([
     children: [
       ...doorPages,
       ...guestPages,
+      ...previewPages,
       ...developmentPages,
       { lazy: () => import('./pages/studio/studio-layout.tsx'), children: studioPages },
       { path: '*', element: <NotFoundPage /> },
