@@ -32,7 +32,7 @@ function underWay(commission: Commission, input: NewUpload) {
 
 /** Two browsers may begin the same file at once: the index lets one row in, the other request finds nothing inserted. */
 async function insertUpload(ctx: Context, actor: StaffActor, commission: Commission, input: NewUpload): Promise<Upload | undefined> {
-  const [inserted] = await Upload.query()
+  const upload = await Upload.query()
     .insert({
       studioId: commission.studioId,
       commissionId: commission.id,
@@ -49,9 +49,9 @@ async function insertUpload(ctx: Context, actor: StaffActor, commission: Commiss
     })
     .onConflict(ctx.knex.raw(`(commission_id, purpose, sha256) where state in ('receiving', 'checking')`))
     .ignore()
-    .returning('*')
-    .castTo<Upload[]>();
-  return inserted;
+    .returning('*');
+  // Where the index refused the row, nothing came back, and the model is what went in.
+  return (upload.id as string | undefined) === undefined ? undefined : upload;
 }
 
 /**

@@ -3,7 +3,7 @@ import { announce } from '../../db/live.ts';
 import { enqueue } from '../../jobs/queue.ts';
 import { type Problem, problem } from '../../middleware/problem.ts';
 import { Upload } from '../../models/Upload.ts';
-import { isUnknownUpload, missingParts, readParts } from './upload-parts.ts';
+import { isUnknownUpload, isWhole, missingParts, readParts } from './upload-parts.ts';
 
 /** "3", "3 and 7", "1, 2 and 9", and no more than so many. */
 function inWords(numbers: number[], most = 12): string {
@@ -20,20 +20,15 @@ function partsMissing(missing: number[]): Problem {
   });
 }
 
-/** Whether the whole file lies in the store: an earlier call got so far and was cut off before it could say so. */
-async function isWhole(ctx: Context, upload: Upload): Promise<boolean> {
-  return (await ctx.store.head(upload.storageKey))?.size === upload.sizeBytes;
-}
-
 async function joinParts(ctx: Context, upload: Upload): Promise<void> {
-  if (await isWhole(ctx, upload)) return;
-  const { upload: current, parts } = await readParts(ctx, upload);
+  const { upload: current, parts, joined } = await readParts(ctx, upload);
+  if (joined) return;
   const missing = missingParts(current, parts);
   if (missing.length > 0 || current.multipartId === null) throw partsMissing(missing);
   try {
     await ctx.store.completeMultipart(current.storageKey, current.multipartId, parts);
   } catch (error) {
-    // Another call completed it between the two looks.
+    // Another call joined them between the two looks.
     if (!isUnknownUpload(error) || !(await isWhole(ctx, current))) throw error;
   }
 }

@@ -52,13 +52,10 @@ async function yieldToTwin(trx: Transaction, upload: Upload): Promise<string> {
 
 /** Makes the frame of an upload and ends the upload; run again it changes nothing. */
 export async function takeInFrame(trx: Transaction, upload: Upload, prepared: Prepared): Promise<void> {
-  const [made] = await Frame.query(trx)
-    .insert(columnsOf(upload, prepared))
-    .onConflict()
-    .ignore()
-    .returning('id')
-    .castTo<{ id: string }[]>();
-  const frameId = made?.id ?? (await yieldToTwin(trx, upload));
+  const frame = await Frame.query(trx).insert(columnsOf(upload, prepared)).onConflict().ignore().returning('createdAt');
+  // The time comes from the database: without it no row was made.
+  const isNew = (frame.createdAt as Date | undefined) !== undefined;
+  const frameId = isNew ? upload.id : await yieldToTwin(trx, upload);
   const done = await Upload.within(upload, trx)
     .patch({ state: 'done', frameId, multipartId: null, updatedAt: new Date() })
     .where({ id: upload.id, state: 'checking' });

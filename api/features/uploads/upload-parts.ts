@@ -57,14 +57,33 @@ export async function openMultipart(ctx: Context, upload: Upload): Promise<Uploa
   return Upload.within(upload).findById(upload.id).throwIfNotFound();
 }
 
-/** The upload with the parts that the store holds, in order. Where the store has lost all of them, it begins anew. */
-export async function readParts(ctx: Context, upload: Upload): Promise<{ upload: Upload; parts: StoredPart[] }> {
-  if (upload.state !== 'receiving') return { upload, parts: [] };
-  if (upload.multipartId === null) return { upload: await openMultipart(ctx, upload), parts: [] };
+/** Whether the whole file lies in the store: a call joined the parts and was cut off, or another one is doing so just now. */
+export async function isWhole(ctx: Context, upload: Upload): Promise<boolean> {
+  return (await ctx.store.head(upload.storageKey))?.size === upload.sizeBytes;
+}
+
+/** The upload with the parts that the store holds, in order. */
+export interface PartsThere {
+  upload: Upload;
+  parts: StoredPart[];
+  /** The parts are joined already; nothing is left to send. */
+  joined: boolean;
+}
+
+function everyPart(upload: Upload): StoredPart[] {
+  return missingParts(upload, []).map((number) => ({ number, size: partLength(upload, number), etag: '' }));
+}
+
+/** Asks the store which parts are there. Where it has lost all of them, the sending begins anew. */
+export async function readParts(ctx: Context, upload: Upload): Promise<PartsThere> {
+  if (upload.state !== 'receiving') return { upload, parts: [], joined: true };
+  if (upload.multipartId === null) return { upload: await openMultipart(ctx, upload), parts: [], joined: false };
   try {
-    return { upload, parts: wholeParts(upload, await ctx.store.listParts(upload.storageKey, upload.multipartId)) };
+    const parts = wholeParts(upload, await ctx.store.listParts(upload.storageKey, upload.multipartId));
+    return { upload, parts, joined: false };
   } catch (error) {
     if (!isUnknownUpload(error)) throw error;
-    return { upload: await openMultipart(ctx, upload), parts: [] };
+    if (await isWhole(ctx, upload)) return { upload, parts: everyPart(upload), joined: true };
+    return { upload: await openMultipart(ctx, upload), parts: [], joined: false };
   }
 }
