@@ -64,11 +64,11 @@ function chosenParts(upload: Upload, request: string): Part[] {
     etag: (text(part, 'ETag') ?? '').replaceAll('"', ''),
   }));
   if (named.length === 0) throw new StoreError(400, 'MalformedXML', 'At least one part must be named.');
+  const ascending = named.every(({ number }, index) => index === 0 || number > (named[index - 1]?.number ?? 0));
+  if (!ascending) throw new StoreError(400, 'InvalidPartOrder', 'Parts must be named in ascending order.');
   return named.map(({ number, etag }, index) => {
     const part = upload.parts.get(number);
     if (!part || part.etag !== etag) throw new StoreError(400, 'InvalidPart', `Part ${number} was not uploaded, or has another ETag.`);
-    const before = named[index - 1];
-    if (before && before.number >= number) throw new StoreError(400, 'InvalidPartOrder', 'Parts must be named in ascending order.');
     if (index < named.length - 1 && part.piece.size < SMALLEST_PART) {
       throw new StoreError(400, 'EntityTooSmall', `Part ${number} is smaller than 5 MiB and not the last.`);
     }

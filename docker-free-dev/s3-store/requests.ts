@@ -99,6 +99,7 @@ function answerError(house: House, req: IncomingMessage, res: ServerResponse, er
     [
       ['Code', known.code],
       ['Message', known.message],
+      ['Region', known.headers['x-amz-bucket-region']],
       ['Resource', req.url?.split('?')[0]],
       ['RequestId', String(res.getHeader('x-amz-request-id'))],
     ],

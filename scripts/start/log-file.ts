@@ -25,8 +25,13 @@ export class LogFile {
     this.bytes = 0;
   }
 
-  /** The last lines, for the sentence that says why something ended. */
-  tail(lines: number): string {
-    return fs.readFileSync(this.file, 'utf8').trim().split('\n').slice(-lines).join('\n');
+  /** The lines since a size, for the sentence that says why something ended. */
+  linesSince(bytes: number): string[] {
+    const text = fs.readFileSync(this.file).subarray(bytes).toString('utf8');
+    return text.split('\n').filter((line) => line.trim() !== '');
+  }
+
+  get size(): number {
+    return this.bytes;
   }
 }

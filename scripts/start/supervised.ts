@@ -40,6 +40,7 @@ export class Supervised {
   start(): void {
     const { args, env } = this.options;
     const begun = Date.now();
+    const logged = this.log.size;
     const child = spawn(process.execPath, args, {
       env: env as NodeJS.ProcessEnv,
       stdio: ['ignore', 'pipe', 'pipe', 'ipc'],
@@ -52,7 +53,7 @@ export class Supervised {
     child.once('error', (error) => this.write(error.message));
     child.once('exit', (code, signal) => {
       dismissGuard();
-      this.ended(signal ?? `code ${code}`, Date.now() - begun);
+      this.ended(signal ?? `code ${code}`, Date.now() - begun, this.log.linesSince(logged));
     });
     for (const stream of [child.stdout, child.stderr]) {
       if (stream) readline.createInterface({ input: stream }).on('line', (line) => this.write(line));
@@ -70,13 +71,13 @@ export class Supervised {
     else if (isSerious(line)) warn(`${this.options.name} reports an error: ${messageOf(line)} (${this.log.file})`);
   }
 
-  private ended(how: string, livedMs: number): void {
+  private ended(how: string, livedMs: number, lines: string[]): void {
     this.child = null;
     if (this.stopping) return;
     this.crashes = livedMs > STEADY_MS ? 1 : this.crashes + 1;
     const pause = Math.min(LONGEST_PAUSE_MS, 500 * 2 ** (this.crashes - 1));
-    warn(`${this.options.name} ended by itself (${how}) and is started again in ${pause / 1000} s. Last lines of ${this.log.file}:`);
-    warn(this.log.tail(5).replace(/^/gm, '  '));
+    warn(`${this.options.name} ended by itself (${how}) and is started again in ${pause / 1000} s.`);
+    warn(`  ${reasonIn(lines)} (${this.log.file})`);
     this.again = setTimeout(() => this.start(), pause);
   }
 
@@ -105,6 +106,12 @@ export class Supervised {
       // Gone already.
     }
   }
+}
+
+/** The line that says most about why a process ended: the first error it wrote, else the last line. */
+function reasonIn(lines: string[]): string {
+  const line = lines.find((one) => /^\S*Error\b/.test(one) || isSerious(one)) ?? lines.at(-1) ?? 'It wrote nothing.';
+  return messageOf(line);
 }
 
 const levelOf = (line: string): number => Number(/^\{"level":(\d+)/.exec(line)?.[1] ?? 0);
