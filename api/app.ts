@@ -1,4 +1,5 @@
 import path from 'node:path';
+import compression from 'compression';
 import express, { type Express, Router } from 'express';
 import helmet from 'helmet';
 import { clientRoutes } from './features/clients/routes.ts';
@@ -104,6 +105,7 @@ function securityHeaders(https: boolean, pictures: string | undefined): express.
 /** The built pages: files with a hash in their name are kept for a year, everything else is the one page that routes by itself. */
 function webPages(root: string): Router {
   const router = Router();
+  router.use(compression());
   router.use('/assets', express.static(path.join(root, 'assets'), { immutable: true, maxAge: '1y', index: false, fallthrough: false }));
   router.use(express.static(root, { index: false, maxAge: '1h' }));
   router.get('/{*page}', (_req, res) => {
