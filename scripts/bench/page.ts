@@ -1,0 +1,94 @@
+import { chromium } from 'playwright-core';
+import { makeBenchGuest, makeBigSheet } from './big-sheet.ts';
+import { startBenchHouse } from './bench-house.ts';
+import { type Figure, figure, median } from './figures.ts';
+
+const PROOFS = 1000;
+const FLAGS = [
+  '--no-sandbox',
+  '--disable-gpu',
+  '--disable-quic',
+  '--no-first-run',
+  '--disable-background-networking',
+  '--disable-component-update',
+  '--disable-sync',
+];
+
+interface Seen {
+  firstRow: number;
+  longest: number;
+  shift: number;
+  script: number;
+}
+
+/** Runs in the page before its own code: notes long tasks, shifts, and when the first row of pictures is drawn. */
+function watch(): void {
+  const notes = { shift: 0, longest: 0, json: 0, firstRow: 0 };
+  Object.assign(window, { benchNotes: notes });
+  new PerformanceObserver((list) => {
+    for (const entry of list.getEntries()) notes.shift += (entry as PerformanceEntry & { value: number; hadRecentInput: boolean }).value;
+  }).observe({ type: 'layout-shift', buffered: true });
+  new PerformanceObserver((list) => {
+    for (const entry of list.getEntries()) notes.longest = Math.max(notes.longest, entry.duration);
+  }).observe({ type: 'longtask' });
+  const look = () => {
+    const answered = performance.getEntriesByType('resource').find((entry) => entry.name.endsWith('/proofs'));
+    if (answered) notes.json = (answered as PerformanceResourceTiming).responseEnd;
+    const pictures = [...document.querySelectorAll<HTMLImageElement>('figure img')].slice(0, 2);
+    if (notes.json > 0 && pictures.length === 2 && pictures.every((picture) => picture.complete && picture.naturalWidth > 0))
+      notes.firstRow = performance.now();
+    else requestAnimationFrame(look);
+  };
+  requestAnimationFrame(look);
+}
+
+/** A guest's sheet of 1,000 proofs in Chromium: first row after the JSON, longest task while scrolling through all of it, layout shift, bytes of script. */
+export async function page(rounds: number): Promise<Figure[]> {
+  const house = await startBenchHouse();
+  const browser = await chromium.launch({ executablePath: '/usr/bin/chromium', args: FLAGS });
+  try {
+    const { sheet } = await makeBigSheet(house, PROOFS, true);
+    const guest = await makeBenchGuest(house, sheet, 0);
+    const [name = '', value = ''] = guest.cookie.split('=');
+    const seen: Seen[] = [];
+    for (let at = 0; at < rounds; at += 1) {
+      const context = await browser.newContext({ viewport: { width: 1440, height: 900 } });
+      await context.addCookies([{ name, value, url: house.address }]);
+      const tab = await context.newPage();
+      let script = 0;
+      tab.on('response', (answer) => {
+        if (!answer.url().endsWith('.js')) return;
+        void answer
+          .request()
+          .sizes()
+          .then((sizes) => (script += sizes.responseBodySize))
+          .catch(() => undefined);
+      });
+      await tab.addInitScript(watch);
+      await tab.goto(`${house.address}/sheets/${sheet.id}`);
+      await tab.waitForFunction(() => (window as unknown as { benchNotes: { firstRow: number } }).benchNotes.firstRow > 0);
+      await tab.evaluate(() => ((window as unknown as { benchNotes: { longest: number } }).benchNotes.longest = 0));
+      await tab.mouse.move(700, 450);
+      for (let step = 0; step < 120; step += 1) {
+        await tab.mouse.wheel(0, 700);
+        await tab.waitForTimeout(16);
+      }
+      const notes = await tab.evaluate(
+        () => (window as unknown as { benchNotes: { firstRow: number; json: number; longest: number; shift: number } }).benchNotes,
+      );
+      seen.push({ firstRow: notes.firstRow - notes.json, longest: notes.longest, shift: notes.shift, script });
+      process.stderr.write(`round ${at + 1} of ${rounds}: ${JSON.stringify(seen.at(-1))}\n`);
+      await context.close();
+    }
+    const of = (key: keyof Seen) => median(seen.map((each) => each[key]));
+    return [
+      figure(`first row of ${PROOFS} proofs after the JSON (limit 1000)`, 'ms', of('firstRow'), 1000),
+      figure('longest task while scrolling (limit 50; 0: none noted)', 'ms', of('longest'), 50),
+      figure('layout shift (limit 0.01)', '', of('shift'), 0.01),
+      figure('script, compressed (limit 150)', 'kB', of('script') / 1000, 150),
+    ];
+  } finally {
+    await browser.close();
+    await house.stop();
+  }
+}
