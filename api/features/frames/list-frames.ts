@@ -3,6 +3,7 @@ import type { Context } from '../../context.ts';
 import type { FrameList, FrameQuery, FrameSort } from '../../contract/frames.ts';
 import { keyOf, pageOf } from '../../db/page.ts';
 import type { StudioScope } from '../../db/scope.ts';
+import { behindCursor } from '../../middleware/forged-cursor.ts';
 import { Frame } from '../../models/Frame.ts';
 import { findCommission } from '../commissions/find-commission.ts';
 import { RESTORABLE_DAYS } from './restore-frames.ts';
@@ -61,6 +62,6 @@ export async function listFrames(ctx: Context, scope: StudioScope, commissionId:
   filter(rows, input);
   const after = keyOf(input.after, 3);
   if (after) goOn(rows, order, input.order, after);
-  const page = pageOf((await rows) as Row[], input.limit, (row) => [row.sortKey, row.name, row.id]);
+  const page = pageOf((await behindCursor(rows)) as Row[], input.limit, (row) => [row.sortKey, row.name, row.id]);
   return { items: await Promise.all(page.items.map((frame) => presentFrameItem(ctx, frame))), next: page.next };
 }

@@ -1,6 +1,7 @@
 import type { Context } from '../../context.ts';
 import type { UploadList, UploadQuery } from '../../contract/uploads.ts';
-import { keyOf, pageOf } from '../../db/page.ts';
+import { momentKeyOf, momentText } from '../../db/moment-key.ts';
+import { pageOf } from '../../db/page.ts';
 import type { StudioScope } from '../../db/scope.ts';
 import { Upload } from '../../models/Upload.ts';
 import { findCommission } from '../commissions/find-commission.ts';
@@ -12,7 +13,7 @@ export async function listUploads(ctx: Context, scope: StudioScope, commissionId
   const commission = await findCommission(scope, commissionId);
   const query = Upload.within(scope)
     .where({ commissionId: commission.id })
-    .select('uploads.*', ctx.knex.raw('created_at::text as "createdKey"'))
+    .select('uploads.*', ctx.knex.raw(`${momentText('created_at')} as "createdKey"`))
     .orderBy([
       { column: 'createdAt', order: 'desc' },
       { column: 'id', order: 'desc' },
@@ -20,9 +21,8 @@ export async function listUploads(ctx: Context, scope: StudioScope, commissionId
     .limit(input.limit + 1);
   if (input.state) query.where({ state: input.state });
   if (input.purpose) query.where({ purpose: input.purpose });
-  const after = keyOf(input.after, 2);
-  // The key goes as text: a JavaScript date would cut the microseconds off and repeat rows.
-  if (after) query.whereRaw('(created_at, id) < (?::timestamptz, ?::uuid)', after as string[]);
+  const after = momentKeyOf(input.after);
+  if (after) query.whereRaw('(created_at, id) < (?::timestamptz, ?::uuid)', [after.moment, after.id]);
   const rows = (await query) as (Upload & { createdKey: string })[];
   const page = pageOf(rows, input.limit, (row) => [row.createdKey, row.id]);
   const { fileBytes, pixels } = ctx.config.limits;
