@@ -8,18 +8,18 @@ import { formatLocalTime } from './local-time.ts';
 const MODES = ['Automatic', 'By hand', 'Automatic bracket'];
 const UNKNOWN = 'not recorded';
 
-/** The settings with which a frame was taken, and its file. What the camera did not write says so. */
+/** The settings with which a frame was taken, and its file. Of the settings everybody looks for, a missing one says so. */
 export function AsShot({ frame }: { frame: Frame }) {
   return (
-    <>
+    <div className="grid gap-x-8 md:grid-cols-2 lg:grid-cols-1">
       <Facts title="As shot">
-        <Fact label="Aperture" value={formatAperture(frame.fNumber)} />
-        <Fact label="Shutter" value={formatShutter(frame.exposureTime)} />
-        <Fact label="ISO" value={formatIso(frame.iso)?.replace('ISO ', '')} />
-        <Fact label="Focal length" value={formatFocalLength(frame.focalLength, frame.focalLength35)} />
+        <Fact always label="Aperture" value={formatAperture(frame.fNumber)} />
+        <Fact always label="Shutter" value={formatShutter(frame.exposureTime)} />
+        <Fact always label="ISO" value={formatIso(frame.iso)?.replace('ISO ', '')} />
+        <Fact always label="Focal length" value={formatFocalLength(frame.focalLength, frame.focalLength35)} />
+        <Fact always label="Taken" value={taken(frame)} />
         <Fact label="Exposure bias" value={formatBias(frame.exposureBias)} />
         <Fact label="Exposure" value={frame.exposureMode === null ? null : MODES[frame.exposureMode]} />
-        <Fact label="Taken" value={taken(frame)} />
         <Fact label="Camera" value={[frame.make, frame.model].filter(Boolean).join(' ') || null} />
         <Fact label="Lens" value={frame.lens} />
         <Fact label="Serial number" value={frame.serial} />
@@ -33,7 +33,7 @@ export function AsShot({ frame }: { frame: Frame }) {
         <Fact label="Uploaded" value={formatTime(frame.createdAt)} />
         <Fact label="SHA-256" value={frame.sha256} />
       </Facts>
-    </>
+    </div>
   );
 }
 
@@ -46,7 +46,8 @@ function Facts({ title, children }: { title: string; children: ReactNode }) {
   );
 }
 
-function Fact({ label, value }: { label: string; value: string | null | undefined }) {
+function Fact({ label, value, always }: { label: string; value: string | null | undefined; always?: boolean }) {
+  if (!value && !always) return null;
   return (
     <div className="flex justify-between gap-4 border-b border-hair py-1.5">
       <dt className="shrink-0">{label}</dt>

@@ -146,8 +146,9 @@ function useFocusOn(
       const look = (tries: number) => {
         if (wanted.current !== id) return;
         const tile = grid.current?.querySelector<HTMLElement>(`[data-frame="${id}"]`);
-        if (tile) tile.focus({ preventScroll: true });
-        else if (tries > 0) requestAnimationFrame(() => look(tries - 1));
+        tile?.focus({ preventScroll: true });
+        // Not drawn yet, or still behind the large view.
+        if (tries > 0 && (!tile || document.activeElement !== tile)) requestAnimationFrame(() => look(tries - 1));
       };
       requestAnimationFrame(() => look(30));
     },

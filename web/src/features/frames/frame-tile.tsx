@@ -33,7 +33,8 @@ export const FrameTile = memo(function FrameTile(props: Props) {
       aria-label={frameLabel(frame, view?.title)}
       tabIndex={reachable ? 0 : -1}
       data-frame={frame.id}
-      className="group relative block h-full select-none"
+      className="group relative block h-full shrink-0 select-none"
+      style={{ width }}
       onClick={(event) => props.onPress(frame.id, event)}
       onDoubleClick={() => props.onOpen(frame.id)}
     >

@@ -33,7 +33,7 @@ export function FrameToolbar({ summary, wish, onWish, views, shown, chosen, onAl
         <Select
           aria-label="View"
           scale="small"
-          className="max-w-52"
+          className="w-40 lg:w-52"
           value={wish.view}
           choices={viewChoices(views)}
           onChange={(event) => onWish({ view: event.target.value })}
@@ -41,8 +41,8 @@ export function FrameToolbar({ summary, wish, onWish, views, shown, chosen, onAl
         <TextInput
           type="search"
           aria-label="Filter by name, settings or time"
-          placeholder="Name, f/8, ISO 100, 17:06"
-          className="h-8! w-52! text-13"
+          placeholder="Name, f/8, 17:06"
+          className="h-8! w-44! text-13 lg:w-52!"
           value={wish.text}
           onChange={(event) => onWish({ text: event.target.value })}
         />

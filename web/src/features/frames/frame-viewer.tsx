@@ -56,7 +56,7 @@ export function FrameViewer({ frame, place, before, after, onGo, onClose, childr
         <Step words="Next" to={after} onGo={onGo} />
       </header>
       <div className="grid min-h-0 flex-1 grid-rows-[minmax(0,3fr)_minmax(0,2fr)] lg:grid-cols-[minmax(0,1fr)_330px] lg:grid-rows-1">
-        <div className="min-h-0 p-4 pt-0 lg:px-10 lg:pb-10">
+        <div className="min-h-0 p-4 pt-1 lg:px-10 lg:pb-8">
           <LargePicture frame={frame} large={details.data?.pictures?.['2560']} />
         </div>
         <aside
@@ -99,12 +99,15 @@ function FullWindow({ label, className, onClose, onKeyDown, children }: FullWind
   useEffect(() => {
     const element = dialog.current;
     element?.showModal();
+    // The first button would be lit up otherwise, as if it were to be pressed.
+    element?.focus();
     return () => element?.close();
   }, []);
   return (
     <dialog
       ref={dialog}
       aria-label={label}
+      tabIndex={-1}
       className={`m-0 h-dvh max-h-none w-dvw max-w-none border-0 p-0 open:flex open:flex-col ${className}`}
       onCancel={(event) => {
         // A file chooser or menu within tells of its own end in the same way.

@@ -21,10 +21,13 @@ export function SelectionBar({ commissionId, frames, views, actions, onDelete, o
   const someHidden = frames.some((frame) => frame.hidden);
   const someVisible = frames.some((frame) => !frame.hidden);
   return (
-    <div className="sticky bottom-0 z-20 -mx-1 mt-3 flex flex-wrap items-center gap-2 border border-ink bg-sheet px-4 py-2.5">
-      <p role="status" className="mr-auto font-bold">
-        {counted(frames.length, { one: 'frame', many: 'frames' })} chosen
+    <div className="sticky bottom-0 z-20 -mx-1 mt-3 flex flex-wrap items-center gap-x-2 gap-y-1.5 border border-ink bg-sheet px-3 py-2">
+      <p role="status" className="font-bold">
+        {counted(frames.length, { one: 'chosen', many: 'chosen' })}
       </p>
+      <Button size="small" tone="quiet" className="mr-auto" onClick={onNone}>
+        None
+      </Button>
       {ready.length > 0 ? <SheetMenu ids={ready} actions={actions} commissionId={commissionId} /> : null}
       <HangMenu ids={ids} actions={actions} views={views} />
       {someVisible ? (
@@ -39,9 +42,6 @@ export function SelectionBar({ commissionId, frames, views, actions, onDelete, o
       ) : null}
       <Button size="small" tone="danger" onClick={onDelete}>
         Delete
-      </Button>
-      <Button size="small" tone="quiet" onClick={onNone}>
-        Choose none
       </Button>
     </div>
   );

@@ -52,27 +52,39 @@ export function UploadPanel({ queue, noun }: Props) {
 
 function Progress({ queue, totals, noun, onFound }: Props & { totals: UploadTotals; onFound: (files: FoundFile[]) => void }) {
   const counts = countWords(totals);
+  const label = headline(totals, noun);
+  const choosers = <FileChoosers words={`Add ${noun.many}`} onFound={onFound} />;
+  if (!totals.running && !totals.paused) {
+    return (
+      <div className="flex flex-wrap items-center justify-between gap-x-4 gap-y-2">
+        <p>
+          <b>{label}</b>
+          {counts === '' ? null : <span className="text-mute"> · {counts}</span>}
+        </p>
+        <div className="flex gap-2">{choosers}</div>
+      </div>
+    );
+  }
   return (
     <ProgressBar
-      label={headline(totals, noun)}
+      label={label}
       part={totals.bytes > 0 ? totals.sent / totals.bytes : 1}
       counts={counts === '' ? null : counts}
       bytes={totals.bytes > 0 ? { done: totals.sent, total: totals.bytes } : undefined}
       speed={totals.perSecond}
-      secondsLeft={totals.running ? totals.secondsLeft : undefined}
+      secondsLeft={totals.running && totals.secondsLeft ? totals.secondsLeft : undefined}
       actions={
         <>
-          {totals.running ? (
-            <Button size="small" onClick={() => queue.pause()}>
-              Pause
-            </Button>
-          ) : null}
           {totals.paused ? (
             <Button size="small" tone="first" onClick={() => queue.resume()}>
               Continue
             </Button>
-          ) : null}
-          <FileChoosers words={`Add ${noun.many}`} onFound={onFound} />
+          ) : (
+            <Button size="small" onClick={() => queue.pause()}>
+              Pause
+            </Button>
+          )}
+          {choosers}
         </>
       }
     />
@@ -151,7 +163,7 @@ function GiveUp({ queue, totals, noun }: Props & { totals: UploadTotals }) {
   return (
     <>
       <Button size="small" tone="quiet" onClick={() => setAsking(true)}>
-        Give up the rest
+        {open === counts.failed ? 'Clear the failed' : 'Give up the rest'}
       </Button>
       <ConfirmDialog
         open={asking}

@@ -15,6 +15,8 @@ export function counted(count: number, noun: Noun): string {
 /** What the panel says first. */
 export function headline(totals: UploadTotals, noun: Noun): string {
   const { counts } = totals;
+  const going = counts.waiting + counts.reading + counts.sending + counts.retrying;
+  if (totals.running && going === 0) return `Checking ${counted(counts.checking, noun)}`;
   if (totals.running) return `Uploading ${counted(totals.files - counts.held - counts.failed, noun)}`;
   if (totals.paused) return 'Upload paused';
   if (counts.held > 0) return `${counted(counts.held, noun)} from an earlier visit unfinished`;

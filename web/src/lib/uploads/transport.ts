@@ -9,9 +9,11 @@ export interface Offer {
   lastModified: number;
 }
 
-/** The server's answer to an offer: it has the file already, or an upload that may have some parts. */
+/** The server's answer to an offer: it has the file already, has all of it and checks it, or awaits the missing parts. */
 export type OfferAnswer =
-  { kind: 'known'; sentence: string } | { kind: 'upload'; uploadId: string; partSize: number; partsThere: number[] };
+  | { kind: 'known'; sentence: string }
+  | { kind: 'checking'; uploadId: string }
+  | { kind: 'upload'; uploadId: string; partSize: number; partsThere: number[] };
 
 /** How the server's check of a whole file stands. */
 export interface CheckState {
