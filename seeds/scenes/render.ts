@@ -8,7 +8,7 @@ import { Raster } from './raster.ts';
 import { Shader } from './shade.ts';
 import { ScreenSky } from './screen-sky.ts';
 import { Skylight } from './skylight.ts';
-import { type Lighting, lightUp } from './view.ts';
+import { type Lighting, lightingFor } from './view.ts';
 import type { Vec3 } from './vector.ts';
 
 /** What a picture is drawn from. */
@@ -35,7 +35,7 @@ const BAND = 128;
 export function render(subject: Subject, width: number, height: number): LinearPicture {
   const { mesh, light } = subject;
   const camera = aim(subject.camera, width, height);
-  const lighting = lightUp(mesh, camera, light, subject.seed);
+  const lighting = lightingFor(mesh, camera, light, subject.seed);
   const mirror = subject.mirror ? renderMirror(subject, camera, lighting, subject.mirror.level) : null;
   const skylight = new Skylight(mesh, resized(camera, Math.round(width / 4)), lighting.patches, lighting.bounce);
   const shader = new Shader(mesh, camera, light, lighting, skylight, mirror, subject.mirror?.wet ?? false);

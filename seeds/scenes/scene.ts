@@ -32,13 +32,30 @@ export interface Variation {
 
 const WATER_LEVEL = -2.2;
 
-/** Builds a scene ready to be rendered. */
-export function subjectOf(scene: Scene, variation: Variation = {}): Subject {
+/** What was built last: takes of one place follow each other, and a city costs time. */
+let built: { build: Scene['build']; seed: number; mesh: Mesh } | null = null;
+const weathers = new Map<string, Light>();
+
+function cityOf({ build, seed }: Scene): Mesh {
+  if (built && built.build === build && built.seed === seed) return built.mesh;
   const mesh = new Mesh();
-  scene.build(mesh, seeded(scene.seed));
+  build(mesh, seeded(seed));
+  built = { build, seed, mesh };
+  return mesh;
+}
+
+function lightOver(scene: Scene): Light {
+  const light = weathers.get(scene.name) ?? { ...lights[scene.light], ...scene.weather };
+  weathers.set(scene.name, light);
+  return light;
+}
+
+/** Builds a scene ready to be rendered. Takes of one scene share their mesh and light. */
+export function subjectOf(scene: Scene, variation: Variation = {}): Subject {
+  const mesh = cityOf(scene);
   const [x, y, z] = scene.camera.position;
   const step = variation.step ?? [0, 0, 0];
-  const light: Light = { ...lights[scene.light], ...scene.weather };
+  const light = lightOver(scene);
   return {
     mesh,
     light,

@@ -67,7 +67,7 @@ function docks(mesh: Mesh, random: Random): void {
 
 export const skylineScenes: Scene[] = [
   { name: 'skyline-dusk', words: 'Vessmouth across the harbour, after sunset', format: 'landscape', camera: level([0, 4, -30], 34, { rise: 3.4, yaw: 2 }), light: 'dusk', mirror: 'water', seed: 31, build: harbour },
-  { name: 'skyline-blue', words: 'City lights on the harbour', format: 'landscape', camera: level([50, 3.5, 10], 48, { rise: 2.6, yaw: -3 }), light: 'blue', weather: { sunAzimuth: 15, sunElevation: -5.6 }, mirror: 'water', seed: 31, build: harbour },
+  { name: 'skyline-blue', words: 'City lights on the harbour', format: 'landscape', camera: level([50, 3.5, 10], 48, { rise: 2.6, yaw: -3 }), light: 'blue', weather: { sunAzimuth: 15, sunElevation: -5.6, key: 0.068 }, mirror: 'water', seed: 31, build: harbour },
   { name: 'skyline-long', words: 'Towers through a long lens, evening haze', format: 'landscape', camera: level([-60, 24, -460], 150, { pitch: 1.6, yaw: 5.5 }), light: 'gold', weather: { sunAzimuth: 244, sunElevation: 8, visibility: 2600 }, mirror: 'water', seed: 31, build: harbour },
   { name: 'skyline-against', words: 'Skyline against the light', format: 'landscape', camera: level([-30, 4, 0], 35, { rise: 3, yaw: 4 }), light: 'day', weather: { sunAzimuth: 8, sunElevation: 24, clouds: 0.3, haze: 3, visibility: 2600 }, mirror: 'water', seed: 31, build: harbour },
   { name: 'roofs-dusk', words: 'Over the roofs of the old town', format: 'landscape', camera: level([0, 43, -1.5], 28, { pitch: -5 }), light: 'dusk', weather: { sunAzimuth: 340, sunElevation: -2.4, rooms: 0.8 }, mirror: 'water', seed: 34, build: roofs },

@@ -22,8 +22,19 @@ export interface Lighting {
   bounce: Colour;
 }
 
+let last: { mesh: Mesh; light: Light; lighting: Lighting } | null = null;
+
+/** The light over a scene; a second take from a step beside uses what the first one worked out. */
+export function lightingFor(mesh: Mesh, camera: Camera, light: Light, seed: number): Lighting {
+  if (last && last.mesh === mesh && last.light === light) return last.lighting;
+  last = null;
+  const lighting = lightUp(mesh, camera, light, seed);
+  last = { mesh, light, lighting };
+  return lighting;
+}
+
 /** Sets up the light over the part of the city that the camera sees. */
-export function lightUp(mesh: Mesh, camera: Camera, light: Light, seed: number): Lighting {
+function lightUp(mesh: Mesh, camera: Camera, light: Light, seed: number): Lighting {
   const sky = new Sky(light, seed);
   const { centre, radius } = seen(mesh, camera);
   const patches = new SkyPatches(mesh, sky, centre, radius * 1.25 + 40);
