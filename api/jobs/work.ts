@@ -60,7 +60,9 @@ export async function startWork(ctx: Context, jobs: Job<never>[]): Promise<Work>
     max: ctx.config.worker.jobs + 3,
     application_name: 'oriel-worker',
   });
-  pool.on('error', (error) => ctx.log.warn({ error: String(error) }, 'lost a connection to the database'));
+  const lost = (error: Error) => ctx.log.warn({ error: String(error) }, 'lost a connection to the database');
+  pool.on('error', lost);
+  pool.on('connect', (client) => client.on('error', lost));
   const events: WorkerEvents = new EventEmitter();
   const heart = startHeart(ctx, events);
   const runner: Runner = await run({

@@ -11,8 +11,10 @@ export function windowAt(now: number): { from: number; until: number } {
   return { from, until: from + 2 * WINDOW_SECONDS };
 }
 
+/** One seal opens a picture in all its sizes: a list of a thousand then compresses to a third. */
 function seal(secret: string, key: string, until: number): string {
-  return createHmac('sha256', secret).update(`picture\n${until}\n${key}`).digest('base64url');
+  const picture = key.replace(/-\d+\.jpg$/, '');
+  return createHmac('sha256', secret).update(`picture\n${until}\n${picture}`).digest('base64url');
 }
 
 /** The signed address of a picture (never of an original): served by the application, or by the store itself. */

@@ -8,6 +8,8 @@ import { marks } from './marks.ts';
 import { page } from './page.ts';
 import { sheet } from './sheet.ts';
 
+process.env.AWS_SDK_JS_NODE_VERSION_SUPPORT_WARNING_DISABLED = 'true';
+
 const benches: Record<string, Bench> = { ingest, archive, sheet, marks, page };
 
 const { values, positionals } = parseArgs({
