@@ -6,6 +6,7 @@ import { clientRoutes } from './features/clients/routes.ts';
 import { commissionRoutes } from './features/commissions/routes.ts';
 import { frameRoutes } from './features/frames/routes.ts';
 import { deskRoutes } from './features/desk/routes.ts';
+import { docsRoutes } from './features/docs/routes.ts';
 import { guestRoutes } from './features/guests/routes.ts';
 import { guestSheetRoutes } from './features/guest-sheets/routes.ts';
 import { healthRoutes } from './features/health/routes.ts';
@@ -54,6 +55,7 @@ export function apiRoutes(routes: RouteContext): Router {
   api.use(archiveRoutes(routes));
   api.use(deliveryRoutes(routes));
   api.use(deliveryDownloadRoutes(routes));
+  api.use(docsRoutes(routes));
   return api;
 }
 
