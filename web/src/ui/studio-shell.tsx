@@ -27,7 +27,7 @@ interface StudioShellProps {
 export function StudioShell({ account, entries = ENTRIES, children }: StudioShellProps) {
   return (
     <div className="md:grid md:min-h-dvh md:grid-cols-[160px_minmax(0,1fr)] lg:grid-cols-[192px_minmax(0,1fr)]">
-      <div className="flex flex-wrap items-center border-b border-ink bg-sheet md:sticky md:top-0 md:h-dvh md:flex-col md:flex-nowrap md:items-stretch md:border-r md:border-b-0">
+      <header className="flex flex-wrap items-center border-b border-ink bg-sheet md:sticky md:top-0 md:h-dvh md:flex-col md:flex-nowrap md:items-stretch md:border-r md:border-b-0">
         <p className="flex items-center gap-2.5 px-5 py-3 text-22 font-black md:pt-5 md:pb-4">
           <Logo />
           Oriel
@@ -46,7 +46,7 @@ export function StudioShell({ account, entries = ENTRIES, children }: StudioShel
           ))}
         </nav>
         {account ? <div className="ml-auto p-5 text-13 text-mute md:mt-auto md:ml-0">{account}</div> : null}
-      </div>
+      </header>
       <main id="content" tabIndex={-1} className="min-w-0 px-4 pt-5 pb-16 lg:px-8">
         {children}
       </main>
