@@ -35,6 +35,9 @@ async function frameNames(commissionId: string): Promise<string[]> {
   return (body as { items: { name: string }[] }).items.map((item) => item.name);
 }
 
+/** What comes sooner or later: this machine may be busy. */
+const soon = <T>(read: () => T) => expect.poll(read, { timeout: 20_000 });
+
 const tile = (visitor: Visitor, name: string) => visitor.page.getByRole('gridcell', { name });
 
 describe('bringing frames', () => {
@@ -109,7 +112,7 @@ describe('a long upload', () => {
     const { page } = visitor;
     const gate = await holdParts(visitor, (number) => number > 1);
     await chooseFiles(page, [await card.largeTiff('HL_0801.tif')]);
-    await expect.poll(() => gate.held.length).toBe(3);
+    await soon(() => gate.held.length).toBe(3);
     await page.getByRole('button', { name: 'Pause' }).click();
     await page.getByText('Upload paused').waitFor();
     await visitor.audit();
@@ -128,8 +131,8 @@ describe('a long upload', () => {
     const file = await card.largeTiff('HL_0802.tif');
     const gate = await holdParts(visitor, (number) => number > 2);
     await chooseFiles(page, [file]);
-    await expect.poll(() => gate.held.length).toBe(2);
-    await expect.poll(() => partsThere(commissionId)).toEqual([1, 2]);
+    await soon(() => gate.held.length).toBe(2);
+    await soon(() => partsThere(commissionId)).toEqual([1, 2]);
 
     const warned: string[] = [];
     page.on('dialog', (dialog) => {
@@ -158,8 +161,8 @@ describe('a long upload', () => {
     visitor.expectErrors(/ERR_CONNECTION_REFUSED|ERR_CONNECTION_RESET|ERR_EMPTY_RESPONSE|ERR_FAILED/);
     const gate = await holdParts(visitor, (number) => number > 2);
     await chooseFiles(page, [await card.largeTiff('HL_0803.tif')]);
-    await expect.poll(() => gate.held.length).toBe(2);
-    await expect.poll(() => partsThere(commissionId)).toEqual([1, 2]);
+    await soon(() => gate.held.length).toBe(2);
+    await soon(() => partsThere(commissionId)).toEqual([1, 2]);
 
     const port = Number(new URL(site.house.address).port);
     const { server } = site.house;
@@ -182,7 +185,7 @@ describe('a long upload', () => {
     for (let number = 0; number < 14; number += 1) files.push(await card.jpeg(`HL_09${String(number).padStart(2, '0')}.jpg`));
     const gate = await holdParts(visitor, () => true);
     await chooseFiles(visitor.page, files);
-    await expect.poll(() => gate.held.length).toBe(4);
+    await soon(() => gate.held.length).toBe(4);
     await new Promise((resolve) => setTimeout(resolve, 500));
     expect(gate.held.length).toBe(4);
     await gate.open();

@@ -64,6 +64,11 @@ export function FrameGrid({ frames, selection, onSelection, views, addressOf, on
           aria-label="Frames"
           aria-multiselectable="true"
           aria-rowcount={rows.length}
+          onFocus={(event) => {
+            const id = event.target.closest<HTMLElement>('[data-frame]')?.dataset.frame;
+            // However the focus came here, the keys start from where it is.
+            if (id !== undefined && id !== selection.focus) onSelection({ ...selection, focus: id });
+          }}
           onKeyDown={(event) =>
             pressInGrid(event, {
               order,

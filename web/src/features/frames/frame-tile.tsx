@@ -2,7 +2,7 @@ import { memo, type MouseEvent } from 'react';
 import { Link } from 'react-router-dom';
 import type { FrameItem } from '../../../../api/contract/frames.ts';
 import { Picture } from '../../ui/picture.tsx';
-import { captionSettings, frameLabel, stem } from './frame-words.ts';
+import { captionSettings, stem } from './frame-words.ts';
 
 /** Height below the picture in CSS pixels: a line of words that is also a target of 24 px. */
 export const CAPTION = 28;
@@ -30,7 +30,6 @@ export const FrameTile = memo(function FrameTile(props: Props) {
     <div
       role="gridcell"
       aria-selected={chosen}
-      aria-label={frameLabel(frame, view?.title)}
       tabIndex={reachable ? 0 : -1}
       data-frame={frame.id}
       className="group relative block h-full shrink-0 select-none"
@@ -102,5 +101,10 @@ function Box({ chosen, onMark }: { chosen: boolean; onMark: () => void }) {
 function Remark({ frame, view }: { frame: FrameItem; view: { title: string; number: number } | undefined }) {
   if (frame.hidden) return <span className="font-bold">hidden</span>;
   if (!view) return null;
-  return <span title={view.title}>View {view.number}</span>;
+  return (
+    <span title={view.title}>
+      View {view.number}
+      <span className="sr-only">, {view.title}</span>
+    </span>
+  );
 }

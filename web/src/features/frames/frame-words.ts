@@ -16,16 +16,3 @@ export function captionSettings(frame: FrameItem): string {
 export function stem(name: string): string {
   return name.replace(/(?<=.)\.[^.]+$/, '');
 }
-
-/** What a frame is called for those who do not see it. */
-export function frameLabel(frame: FrameItem, viewTitle: string | undefined): string {
-  const parts = [
-    frame.name,
-    captionSettings(frame),
-    viewTitle && `under ${viewTitle}`,
-    frame.hidden && 'hidden',
-    frame.state === 'reading' && 'being read',
-    frame.state === 'failed' && `failed: ${frame.problem ?? 'it could not be read'}`,
-  ];
-  return parts.filter(Boolean).join(', ');
-}
