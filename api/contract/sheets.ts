@@ -80,6 +80,7 @@ export const StudioSheet = SheetSummary.extend({
     withdraw: z.boolean(),
     reopen: z.boolean(),
     remove: z.boolean(),
+    price: z.boolean(),
   }),
 });
 export type StudioSheet = z.infer<typeof StudioSheet>;

@@ -89,6 +89,15 @@ describe('a draft', () => {
     expect(none.status).toBe(428);
   });
 
+  it('lets only the owner change its price', async () => {
+    const { sheet } = await draftOf(1);
+    const change = (agent: MadeStudio['owner']['agent']) =>
+      agent.patch(`/api/sheets/${sheet.id}`).set('If-Match', `"${sheet.version}"`).send({ extraPrice: 9900 });
+    expect((await change(ours.assistant.agent)).status).toBe(403);
+    expect((await ours.assistant.agent.get(`/api/sheets/${sheet.id}`)).body.can.price).toBe(false);
+    expect((await change(ours.owner.agent)).body).toMatchObject({ extraPrice: 9900, can: { price: true } });
+  });
+
   it('is nothing to another studio', async () => {
     const { sheet } = await draftOf(1);
     expect((await theirs.owner.agent.get(`/api/sheets/${sheet.id}`)).status).toBe(404);

@@ -5,10 +5,19 @@ import { streamEvents } from '../../middleware/event-stream.ts';
 import type { RouteContext } from '../../middleware/route-context.ts';
 import { body, ids } from '../../middleware/validation.ts';
 import { Account } from '../../models/Account.ts';
+import { SheetGuest } from '../../models/SheetGuest.ts';
 import { findSheet } from '../sheets/find-sheet.ts';
 import { inviteReviewer } from './invite-reviewer.ts';
 import { loadGuestProofs, proofsBody } from './load-proofs.ts';
 import { loadGuestSheet } from './load-sheet.ts';
+
+/** The studio reads "seen 10 minutes ago"; more exact is nobody's business. */
+const SEEN_EVERY_MS = 5 * 60 * 1000;
+
+async function noteSeen(invitation: SheetGuest): Promise<void> {
+  if (invitation.lastSeenAt && Date.now() - invitation.lastSeenAt.getTime() < SEEN_EVERY_MS) return;
+  await SheetGuest.query().findById(invitation.id).patch({ lastSeenAt: new Date() });
+}
 
 /** The sheet as its guests see it. */
 export function guestSheetRoutes({ ctx, gates: { guestOfSheet, staff }, limits: { limit } }: RouteContext): Router {
@@ -17,6 +26,7 @@ export function guestSheetRoutes({ ctx, gates: { guestOfSheet, staff }, limits: 
   router.get('/guest/sheets/:sheetId', ids('sheetId'), guestOfSheet(), async (req, res) => {
     const { accountId, email } = guestOf(req);
     const { name, role } = invitationOf(req);
+    await noteSeen(invitationOf(req));
     const account = await Account.query().findById(accountId).select('shortcuts');
     res.json(await loadGuestSheet(req.params.sheetId, { accountId, email, name, role, shortcuts: account?.shortcuts ?? true }));
   });

@@ -22,6 +22,9 @@ export async function changeSheet(ctx: Context, actor: StaffActor, sheetId: stri
     const before = await findSheet(actor, sheetId, trx);
     if (before.withdrawnAt || before.sentAt)
       throw problem(409, 'This sheet was sent or taken back. Reopen it to change it.', { code: 'sheet-closed' });
+    if (input.extraPrice !== undefined && input.extraPrice !== before.extraPrice && actor.role !== 'owner') {
+      throw problem(403, 'Only the owner of the studio may change prices.', { code: 'owner-only' });
+    }
     const terms = {
       ...(input.allowance !== undefined ? { allowance: input.allowance } : {}),
       ...(input.extraPrice !== undefined ? { extraPrice: input.extraPrice } : {}),

@@ -7,10 +7,12 @@ export interface SheetCan {
   withdraw: boolean;
   reopen: boolean;
   remove: boolean;
+  /** Money is the owner's. */
+  price: boolean;
 }
 
-/** What the studio may do to a sheet in its present state. Owner and assistant may the same. */
-export function sheetCan(sheet: SheetMoments, proofCount: number, now: Date): SheetCan {
+/** What a person of the studio may do to a sheet in its present state. */
+export function sheetCan(sheet: SheetMoments, proofCount: number, now: Date, role: 'owner' | 'assistant' = 'assistant'): SheetCan {
   const state = sheetState(sheet, now);
   return {
     edit: state === 'Draft' || state === 'Open',
@@ -19,5 +21,6 @@ export function sheetCan(sheet: SheetMoments, proofCount: number, now: Date): Sh
     withdraw: state !== 'Draft' && !sheet.withdrawnAt,
     reopen: state === 'Sent' || (state === 'Ended' && !sheet.withdrawnAt),
     remove: state === 'Draft',
+    price: role === 'owner' && (state === 'Draft' || state === 'Open'),
   };
 }

@@ -1,6 +1,7 @@
 import type { SheetGuestRow, StudioProof, StudioSheet } from '../../contract/sheets.ts';
 import type { Context } from '../../context.ts';
 import { initials } from '../../domain/initials.ts';
+import type { StaffActor } from '../../middleware/actor.ts';
 import type { Frame } from '../../models/Frame.ts';
 import { Proof } from '../../models/Proof.ts';
 import { Sheet } from '../../models/Sheet.ts';
@@ -15,7 +16,7 @@ type Marks = Map<string, { name: string; role: 'lead' | 'reviewer' }[]>;
 const iso = (moment: Date | null) => moment?.toISOString() ?? null;
 
 /** A sheet with everything the studio's Proofs page shows. */
-export async function presentSheet(ctx: Context, sheet: Sheet): Promise<StudioSheet> {
+export async function presentSheet(ctx: Context, actor: StaffActor, sheet: Sheet): Promise<StudioSheet> {
   const now = new Date();
   const [counted, proofs, guests, marks] = await Promise.all([
     Sheet.query()
@@ -33,7 +34,7 @@ export async function presentSheet(ctx: Context, sheet: Sheet): Promise<StudioSh
     reopenReason: sheet.reopenReason,
     proofs: await Promise.all(proofs.map((proof) => presentProof(ctx, sheet, proof, marks))),
     guests,
-    can: sheetCan(sheet, counted.proofCount, now),
+    can: sheetCan(sheet, counted.proofCount, now, actor.role),
   };
 }
 

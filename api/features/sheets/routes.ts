@@ -37,15 +37,15 @@ export function sheetRoutes({ ctx, gates: { staff }, limits: { limit } }: RouteC
   router.post('/commissions/:commissionId/sheets', staff(), ids('commissionId'), body(MakeSheet), async (req, res) => {
     const input: MakeSheet = req.body;
     const sheet = await makeSheet(ctx, staffOf(req), req.params.commissionId, input.frameIds);
-    res.status(201).json(await presentSheet(ctx, sheet));
+    res.status(201).json(await presentSheet(ctx, staffOf(req), sheet));
   });
 
   router.get('/sheets/:sheetId', staff(), ids('sheetId'), async (req, res) => {
-    res.json(await presentSheet(ctx, await findSheet(staffOf(req), req.params.sheetId)));
+    res.json(await presentSheet(ctx, staffOf(req), await findSheet(staffOf(req), req.params.sheetId)));
   });
   router.patch('/sheets/:sheetId', staff(), ids('sheetId'), ifMatch(), body(ChangeSheet), async (req, res) => {
     const input: ChangeSheet = req.body;
-    res.json(await presentSheet(ctx, await changeSheet(ctx, staffOf(req), req.params.sheetId, req.version ?? 0, input)));
+    res.json(await presentSheet(ctx, staffOf(req), await changeSheet(ctx, staffOf(req), req.params.sheetId, req.version ?? 0, input)));
   });
   router.delete('/sheets/:sheetId', staff(), ids('sheetId'), async (req, res) => {
     await removeSheet(ctx, staffOf(req), req.params.sheetId);
@@ -54,28 +54,28 @@ export function sheetRoutes({ ctx, gates: { staff }, limits: { limit } }: RouteC
 
   router.post('/sheets/:sheetId/proofs', staff(), ids('sheetId'), body(AddProofs), async (req, res) => {
     const input: AddProofs = req.body;
-    res.json(await presentSheet(ctx, await putFrames(ctx, staffOf(req), req.params.sheetId, input.frameIds)));
+    res.json(await presentSheet(ctx, staffOf(req), await putFrames(ctx, staffOf(req), req.params.sheetId, input.frameIds)));
   });
   router.post('/sheets/:sheetId/take-off', staff(), ids('sheetId'), body(TakeProofs), async (req, res) => {
     const input: TakeProofs = req.body;
-    res.json(await presentSheet(ctx, await takeProofs(ctx, staffOf(req), req.params.sheetId, input.proofIds)));
+    res.json(await presentSheet(ctx, staffOf(req), await takeProofs(ctx, staffOf(req), req.params.sheetId, input.proofIds)));
   });
   router.put('/sheets/:sheetId/order', staff(), ids('sheetId'), body(OrderProofs), async (req, res) => {
     const input: OrderProofs = req.body;
-    res.json(await presentSheet(ctx, await orderProofs(ctx, staffOf(req), req.params.sheetId, input.proofIds)));
+    res.json(await presentSheet(ctx, staffOf(req), await orderProofs(ctx, staffOf(req), req.params.sheetId, input.proofIds)));
   });
   router.post('/sheets/:sheetId/hang', staff(), ids('sheetId'), body(HangProofs), async (req, res) => {
     const input: HangProofs = req.body;
-    res.json(await presentSheet(ctx, await hangProofs(ctx, staffOf(req), req.params.sheetId, input.proofIds, input.viewId)));
+    res.json(await presentSheet(ctx, staffOf(req), await hangProofs(ctx, staffOf(req), req.params.sheetId, input.proofIds, input.viewId)));
   });
 
   router.post('/sheets/:sheetId/issue', staff(), ids('sheetId'), limit('send'), body(InviteGuests), async (req, res) => {
     const input: InviteGuests = req.body;
-    res.json(await presentSheet(ctx, await issueSheet(ctx, staffOf(req), req.params.sheetId, input.guests, input.words)));
+    res.json(await presentSheet(ctx, staffOf(req), await issueSheet(ctx, staffOf(req), req.params.sheetId, input.guests, input.words)));
   });
   router.post('/sheets/:sheetId/guests', staff(), ids('sheetId'), limit('send'), body(InviteGuests), async (req, res) => {
     const input: InviteGuests = req.body;
-    res.json(await presentSheet(ctx, await inviteGuests(ctx, staffOf(req), req.params.sheetId, input.guests, input.words)));
+    res.json(await presentSheet(ctx, staffOf(req), await inviteGuests(ctx, staffOf(req), req.params.sheetId, input.guests, input.words)));
   });
   router.post(
     '/sheets/:sheetId/guests/:guestId/send-again',
@@ -85,29 +85,31 @@ export function sheetRoutes({ ctx, gates: { staff }, limits: { limit } }: RouteC
     body(WriteToGuests),
     async (req, res) => {
       const { words }: WriteToGuests = req.body;
-      res.json(await presentSheet(ctx, await sendLinkAgain(ctx, staffOf(req), req.params.sheetId, req.params.guestId, words)));
+      res.json(
+        await presentSheet(ctx, staffOf(req), await sendLinkAgain(ctx, staffOf(req), req.params.sheetId, req.params.guestId, words)),
+      );
     },
   );
   router.post('/sheets/:sheetId/guests/:guestId/withdraw', staff(), ids('sheetId', 'guestId'), async (req, res) => {
-    res.json(await presentSheet(ctx, await withdrawGuest(ctx, staffOf(req), req.params.sheetId, req.params.guestId, true)));
+    res.json(await presentSheet(ctx, staffOf(req), await withdrawGuest(ctx, staffOf(req), req.params.sheetId, req.params.guestId, true)));
   });
   router.post('/sheets/:sheetId/guests/:guestId/restore', staff(), ids('sheetId', 'guestId'), async (req, res) => {
-    res.json(await presentSheet(ctx, await withdrawGuest(ctx, staffOf(req), req.params.sheetId, req.params.guestId, false)));
+    res.json(await presentSheet(ctx, staffOf(req), await withdrawGuest(ctx, staffOf(req), req.params.sheetId, req.params.guestId, false)));
   });
   router.post('/sheets/:sheetId/remind', staff(), ids('sheetId'), limit('send'), body(WriteToGuests), async (req, res) => {
     const { words }: WriteToGuests = req.body;
-    res.json(await presentSheet(ctx, await remindGuests(ctx, staffOf(req), req.params.sheetId, words)));
+    res.json(await presentSheet(ctx, staffOf(req), await remindGuests(ctx, staffOf(req), req.params.sheetId, words)));
   });
 
   router.post('/sheets/:sheetId/withdraw', staff(), ids('sheetId'), async (req, res) => {
-    res.json(await presentSheet(ctx, await withdrawSheet(ctx, staffOf(req), req.params.sheetId, true)));
+    res.json(await presentSheet(ctx, staffOf(req), await withdrawSheet(ctx, staffOf(req), req.params.sheetId, true)));
   });
   router.post('/sheets/:sheetId/restore', staff(), ids('sheetId'), async (req, res) => {
-    res.json(await presentSheet(ctx, await withdrawSheet(ctx, staffOf(req), req.params.sheetId, false)));
+    res.json(await presentSheet(ctx, staffOf(req), await withdrawSheet(ctx, staffOf(req), req.params.sheetId, false)));
   });
   router.post('/sheets/:sheetId/reopen', staff(), ids('sheetId'), limit('send'), body(ReopenSheet), async (req, res) => {
     const input: ReopenSheet = req.body;
-    res.json(await presentSheet(ctx, await reopenSheet(ctx, staffOf(req), req.params.sheetId, input)));
+    res.json(await presentSheet(ctx, staffOf(req), await reopenSheet(ctx, staffOf(req), req.params.sheetId, input)));
   });
   return router;
 }

@@ -71,7 +71,9 @@ export function SheetTerms({ sheet }: { sheet: StudioSheet }) {
           {(control) => <TextInput {...control} inputMode="numeric" disabled={locked} {...form.register('allowance')} />}
         </Field>
         <Field label={`Each further, ${sheet.currency}`} error={errors.price?.message}>
-          {(control) => <TextInput {...control} inputMode="decimal" disabled={locked} {...form.register('price')} />}
+          {(control) => (
+            <TextInput {...control} inputMode="decimal" readOnly={!sheet.can.price} disabled={locked} {...form.register('price')} />
+          )}
         </Field>
       </div>
       {errors.root ? (
