@@ -52,7 +52,9 @@ async function openHouse(options: StoreOptions): Promise<House> {
 function track(house: House): { serve: http.RequestListener; idle: () => Promise<unknown> } {
   const running = new Set<Promise<void>>();
   const serve: http.RequestListener = (req, res) => {
-    const done = handle(house, req, res).finally(() => running.delete(done));
+    const done = handle(house, req, res)
+      .catch(house.onUnexpected)
+      .finally(() => running.delete(done));
     running.add(done);
   };
   return { serve, idle: () => Promise.allSettled(running) };

@@ -16,8 +16,6 @@ import { loadDotEnv, readSettings, type StartSettings } from './start/settings.t
 import { Supervised } from './start/supervised.ts';
 import { sayWelcome } from './start/welcome.ts';
 
-const WEB_ROOT = 'dist/web';
-
 async function startDatabase(settings: StartSettings, running: Running): Promise<string> {
   if (settings.outside.database) return settings.outside.database;
   const dir = clusterPlace(settings.dataDir);
@@ -124,7 +122,7 @@ async function start(settings: StartSettings, running: Running): Promise<void> {
   const secrets = keepSecrets(dataDir);
   const interrupted = demoWasInterrupted(dataDir);
   if (interrupted) clearHalfStore(settings);
-  if (!settings.dev && webIsStale(WEB_ROOT)) await step('Building the pages', () => buildWeb(WEB_ROOT));
+  if (!settings.dev && webIsStale(settings.webRoot)) await step('Building the pages', () => buildWeb(settings.webRoot));
   const [databaseUrl] = await Promise.all([startDatabase(settings, running), startServices(settings, secrets, running, logDir)]);
   running.goOn();
   await prepareDatabase(settings, databaseUrl, interrupted);

@@ -52,7 +52,9 @@ function startNamedChecksum(call: Call): Sums['checksum'] {
 function decoded(call: Call, trailers: Map<string, string>): AsyncIterable<Buffer> {
   const { contentSha256, signing } = call.proof;
   const limit = call.fault?.dropConnectionAfterBytes;
-  const wire: AsyncIterable<Buffer> = limit === undefined ? call.req : cutAfter(call.req, limit, call.req.socket);
+  // Giving up in the middle of a body must not cut the line: the client is to hear why.
+  const body = call.req.iterator({ destroyOnReturn: false }) as AsyncIterable<Buffer>;
+  const wire = limit === undefined ? body : cutAfter(body, limit, call.req);
   if (!contentSha256.startsWith('STREAMING-')) return wire;
   const [known, kind] = STREAMING.exec(contentSha256) ?? [];
   if (!known) throw new StoreError(501, 'NotImplemented', `${contentSha256} is not supported here.`);

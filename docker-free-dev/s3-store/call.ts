@@ -2,7 +2,7 @@ import type { IncomingMessage, ServerResponse } from 'node:http';
 import type { Proof } from './authentication.ts';
 import type { Blobs } from './blobs.ts';
 import type { Bucket, Catalogue } from './catalogue.ts';
-import type { Fault } from './faults.ts';
+import { cutLine, type Fault } from './faults.ts';
 import { StoreError } from './store-error.ts';
 import { document, type XmlChild } from './xml.ts';
 
@@ -42,7 +42,7 @@ export function bucketOf(call: Call): Bucket {
 /** Sends the head of an answer; false where a fault swallowed the answer. */
 export function sendHead(call: Call, status: number, headers: Record<string, string | number> = {}): boolean {
   if (call.fault?.loseAnswer) {
-    call.req.socket.destroy();
+    cutLine(call.req);
     return false;
   }
   call.res.writeHead(status, headers);

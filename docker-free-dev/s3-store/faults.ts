@@ -1,3 +1,4 @@
+import type { IncomingMessage } from 'node:http';
 import type { Socket } from 'node:net';
 
 /** What goes wrong with the requests that match. */
@@ -49,8 +50,16 @@ function matches(pattern: Fault['keyPattern'], target: string): boolean {
   return typeof pattern === 'string' ? target.includes(pattern) : pattern.test(target);
 }
 
+/** The type says otherwise, but a request whose line is gone has no socket any more. */
+export const lineOf = (req: IncomingMessage): Socket | null => req.socket as Socket | null;
+
+/** Ends the connection without a word. */
+export function cutLine(req: IncomingMessage): void {
+  lineOf(req)?.destroy();
+}
+
 /** Passes bytes on until the limit, then cuts the connection. */
-export async function* cutAfter(source: AsyncIterable<Buffer>, bytes: number, socket: Socket): AsyncGenerator<Buffer> {
+export async function* cutAfter(source: AsyncIterable<Buffer>, bytes: number, req: IncomingMessage): AsyncGenerator<Buffer> {
   let left = bytes;
   for await (const chunk of source) {
     yield chunk.subarray(0, left);
@@ -58,7 +67,7 @@ export async function* cutAfter(source: AsyncIterable<Buffer>, bytes: number, so
     if (left > 0) continue;
     // What was passed on must leave before the line goes down.
     await new Promise((resolve) => setTimeout(resolve, 20));
-    socket.destroy();
+    cutLine(req);
     throw new Error('The connection was cut on purpose.');
   }
 }

@@ -86,7 +86,7 @@ async function sendBytes(call: Call, object: StoredObject, range: Range): Promis
   const limit = call.fault?.dropConnectionAfterBytes;
   const bytes = bytesOf(call, object, range);
   try {
-    await pipeline(limit === undefined ? bytes : cutAfter(bytes, limit, call.req.socket), call.res);
+    await pipeline(limit === undefined ? bytes : cutAfter(bytes, limit, call.req), call.res);
   } finally {
     release();
   }

@@ -5,7 +5,7 @@ import type { Blobs } from './blobs.ts';
 import type { Call } from './call.ts';
 import type { Catalogue } from './catalogue.ts';
 import { allowOrigin, answerPreflight } from './cors.ts';
-import type { Fault, Faults } from './faults.ts';
+import { cutLine, type Fault, type Faults, lineOf } from './faults.ts';
 import { operationFor } from './operations.ts';
 import { StoreError } from './store-error.ts';
 import { document } from './xml.ts';
@@ -62,7 +62,9 @@ async function meet(fault: Fault | undefined, req: IncomingMessage): Promise<voi
   if (fault?.delayMs) await new Promise((resolve) => setTimeout(resolve, fault.delayMs));
   if (fault?.status) throw new StoreError(fault.status, fault.status === 503 ? 'SlowDown' : 'InternalError', 'Asked to fail.');
   const bodiless = req.method === 'HEAD' || req.method === 'DELETE';
-  if (fault?.dropConnectionAfterBytes !== undefined && bodiless) req.socket.destroy();
+  if (fault?.dropConnectionAfterBytes === undefined || !bodiless) return;
+  cutLine(req);
+  throw new Error('The connection was cut on purpose.');
 }
 
 async function serve(house: House, req: IncomingMessage, res: ServerResponse): Promise<void> {
@@ -83,13 +85,13 @@ function drain(req: IncomingMessage, res: ServerResponse): void {
   req.on('error', () => undefined);
   req.on('data', (chunk: Buffer) => {
     bytes += chunk.length;
-    if (bytes > DRAIN_BYTES) req.socket.destroy();
+    if (bytes > DRAIN_BYTES) cutLine(req);
   });
 }
 
 function answerError(house: House, req: IncomingMessage, res: ServerResponse, error: unknown): void {
   const known = error instanceof StoreError ? error : new StoreError(500, 'InternalError', 'The store met an error of its own.');
-  const lineCut = req.socket.destroyed || res.destroyed;
+  const lineCut = (lineOf(req)?.destroyed ?? true) || res.destroyed;
   if (!(error instanceof StoreError) && !lineCut) house.onUnexpected(error);
   if (res.headersSent || lineCut) return void res.destroy();
   drain(req, res);

@@ -11,15 +11,21 @@ export interface Addresses {
 
 /** The address people use. */
 export function publicAddress(settings: StartSettings): string {
-  return process.env.ORIEL_ADDRESS ?? `http://${settings.host}:${settings.ports.web}`;
+  return process.env.ORIEL_ADDRESS || `http://${settings.host}:${settings.ports.web}`;
+}
+
+/** A line such as ORIEL_SECRET= in a .env file means: as without it. */
+function withoutEmpty(environment: Record<string, string | undefined>): Record<string, string | undefined> {
+  return Object.fromEntries(Object.entries(environment).filter(([, value]) => value !== ''));
 }
 
 /** The environment of the API and the worker: what was given, completed by what this start made itself. */
 export function childEnvironment(settings: StartSettings, secrets: KeptSecrets, addresses: Addresses): Record<string, string | undefined> {
   const { ports, dev, outside } = settings;
   return {
-    ...process.env,
-    NODE_ENV: process.env.NODE_ENV ?? (dev ? 'development' : 'production'),
+    ...withoutEmpty(process.env),
+    ORIEL_WEB_ROOT: settings.webRoot,
+    NODE_ENV: process.env.NODE_ENV || (dev ? 'development' : 'production'),
     AWS_SDK_JS_NODE_VERSION_SUPPORT_WARNING_DISABLED: 'true',
     ORIEL_PORT: String(dev ? ports.devApi : ports.web),
     ORIEL_METRICS_PORT: String(ports.metrics),
@@ -32,7 +38,7 @@ export function childEnvironment(settings: StartSettings, secrets: KeptSecrets, 
     ORIEL_STORE_ACCESS_KEY: outside.store ? process.env.ORIEL_STORE_ACCESS_KEY : secrets.storeAccessKey,
     ORIEL_STORE_SECRET_KEY: outside.store ? process.env.ORIEL_STORE_SECRET_KEY : secrets.storeSecretKey,
     ORIEL_SMTP_URL: addresses.smtpUrl,
-    ORIEL_SECRET: process.env.ORIEL_SECRET ?? secrets.secret,
+    ORIEL_SECRET: process.env.ORIEL_SECRET || secrets.secret,
     ...(addresses.mailsPage && !process.env.ORIEL_MAILS_PAGE ? { ORIEL_MAILS_PAGE: addresses.mailsPage } : {}),
   };
 }

@@ -11,6 +11,8 @@ export interface StartSettings {
   outside: { database: string | undefined; store: string | undefined; smtp: string | undefined };
   bucket: string;
   region: string;
+  /** The built pages. */
+  webRoot: string;
 }
 
 export interface Ports {
@@ -76,5 +78,6 @@ export function readSettings(environment: Environment, argv: string[]): StartSet
     outside,
     bucket: environment.ORIEL_STORE_BUCKET || 'oriel',
     region: environment.ORIEL_STORE_REGION || 'us-east-1',
+    webRoot: environment.ORIEL_WEB_ROOT || 'dist/web',
   };
 }
