@@ -1,84 +1,57 @@
-import { defaultRangeExtractor, useWindowVirtualizer, type Range } from '@tanstack/react-virtual';
-import { useCallback, useImperativeHandle, useLayoutEffect, useRef, useState, type ReactNode, type Ref } from 'react';
+import { useImperativeHandle, useLayoutEffect, useState, useSyncExternalStore, type ReactNode, type Ref } from 'react';
+import { RowWindow, type RowLayout } from './row-window.ts';
 
 export interface VirtualRowsHandle {
   /** Brings a row onto the screen with as little scrolling as possible, and into the document. */
   scrollToRow(index: number): void;
 }
 
-interface Props {
-  count: number;
-  /** The height of a row in CSS pixels before it is drawn; exact where it can be, it is measured afterwards. */
-  heightOf: (index: number) => number;
-  keyOf: (index: number) => string;
+interface Props extends RowLayout {
+  /** Draws a row; may be asked for one that has just gone, and draws nothing then. */
   children: (index: number) => ReactNode;
-  /** Rows drawn beyond the edges of the screen. */
-  overscan?: number;
   /** Kept free at the lower edge of the window when scrolling to a row: a sticky foot. */
   footHeight?: number;
-  /** Any value that makes the estimated heights new: the width of the column. */
-  layoutKey: string | number;
   ref?: Ref<VirtualRowsHandle>;
   className?: string;
 }
 
 /**
- * Rows of a list that scrolls with the window, of which only those near the screen are in the document. The row that
- * holds the focus stays in it, so that the focus is not lost by scrolling.
+ * Rows of a list that scrolls with the window, of which only those near the screen are in the document. Our rows know
+ * their heights beforehand, so a general library's estimates, 11 kB of the guest's sheet, would have nothing to do here.
+ * The row that holds the focus stays in the document, so that the focus is not lost by scrolling.
  */
-export function VirtualRows({ count, heightOf, keyOf, children, overscan = 3, footHeight = 0, layoutKey, ref, className }: Props) {
-  const list = useRef<HTMLDivElement>(null);
-  const focused = useRef<number | null>(null);
-  const [offset, setOffset] = useState(0);
+export function VirtualRows({ count, heightOf, keyOf, layoutKey, children, footHeight = 0, ref, className }: Props) {
+  const [rows] = useState(() => new RowWindow());
+  const { attach, watch } = rows;
+  const { offsets, range } = useSyncExternalStore(rows.listen, rows.state);
+  const [focused, setFocused] = useState<number | null>(null);
+  useLayoutEffect(() => rows.arrange({ count, heightOf, keyOf, layoutKey }));
+  useImperativeHandle(ref, () => ({ scrollToRow: (index) => rows.scrollTo(index, footHeight) }), [rows, footHeight]);
 
-  useLayoutEffect(() => {
-    const top = list.current ? list.current.getBoundingClientRect().top + window.scrollY : 0;
-    setOffset(Math.round(top));
-  }, [layoutKey]);
-
-  const rangeExtractor = useCallback((range: Range) => {
-    const rows = defaultRangeExtractor(range);
-    const kept = focused.current;
-    if (kept === null || kept >= range.count || rows.includes(kept)) return rows;
-    return [...rows, kept].sort((one, other) => one - other);
-  }, []);
-
-  const virtualizer = useWindowVirtualizer({
-    count,
-    estimateSize: heightOf,
-    getItemKey: keyOf,
-    overscan,
-    scrollMargin: offset,
-    scrollPaddingStart: 16,
-    scrollPaddingEnd: footHeight + 16,
-    rangeExtractor,
-  });
-
-  useLayoutEffect(() => virtualizer.measure(), [virtualizer, layoutKey]);
-  useImperativeHandle(ref, () => ({ scrollToRow: (index) => virtualizer.scrollToIndex(index, { align: 'auto' }) }), [virtualizer]);
-
-  const noteFocus = (target: EventTarget) => {
-    const row = target instanceof Element ? target.closest<HTMLElement>('[data-index]') : null;
-    focused.current = row ? Number(row.dataset.index) : null;
-  };
-
+  const last = Math.min(range.last, count - 1);
+  const shown = Array.from({ length: Math.max(0, last - range.first + 1) }, (_, at) => range.first + at);
+  if (focused !== null && focused < count && !shown.includes(focused)) shown.push(focused);
   return (
     <div
-      ref={list}
+      ref={attach}
       className={className}
-      style={{ position: 'relative', height: virtualizer.getTotalSize() }}
-      onFocus={(event) => noteFocus(event.target)}
-      onBlur={() => (focused.current = null)}
+      style={{ position: 'relative', height: offsets[offsets.length - 1] }}
+      onFocus={(event) => {
+        const row = event.target.closest<HTMLElement>('[data-index]');
+        setFocused(row ? Number(row.dataset.index) : null);
+      }}
+      onBlur={() => setFocused(null)}
     >
-      {virtualizer.getVirtualItems().map((row) => (
+      {shown.map((index) => (
         <div
-          key={row.key}
-          data-index={row.index}
-          ref={virtualizer.measureElement}
+          key={keyOf(index)}
+          data-index={index}
+          data-key={keyOf(index)}
+          ref={watch}
           className="absolute inset-x-0 top-0"
-          style={{ transform: `translateY(${row.start - offset}px)` }}
+          style={{ transform: `translateY(${offsets[index] ?? 0}px)` }}
         >
-          {children(row.index)}
+          {children(index)}
         </div>
       ))}
     </div>
