@@ -3,13 +3,8 @@ import fs from 'node:fs';
 import path from 'node:path';
 import readline from 'node:readline';
 import type { Running } from './running.ts';
+import type { Demo } from '../../seeds/demo.ts';
 import { say } from './say.ts';
-
-/** What a person needs to look around in the demo. */
-export interface Demo {
-  signIns: { who: string; email: string; password: string }[];
-  proofingLink: string | null;
-}
 
 const DONE = 'demo.json';
 const BEGUN = 'demo-begun';
@@ -37,9 +32,9 @@ export function forgetInterruptedDemo(dataDir: string): void {
 export async function makeDemo(dataDir: string, env: Record<string, string | undefined>, running: Running): Promise<void> {
   fs.writeFileSync(path.join(dataDir, BEGUN), new Date().toISOString());
   const result = path.join(dataDir, DONE);
-  const args = ['--import', 'tsx', 'scripts/start/seed.ts', `${result}.new`];
+  const args = ['--import', 'tsx', 'scripts/start/seed.ts', `${result}.new`, path.join(dataDir, 'demo-pictures')];
   const child = spawn(process.execPath, args, {
-    env: { ...env, ORIEL_DATA_DIR: dataDir } as NodeJS.ProcessEnv,
+    env: env as NodeJS.ProcessEnv,
     stdio: ['ignore', 'pipe', 'pipe'],
   });
   running.errand = child;

@@ -1,4 +1,4 @@
-import type { Demo } from './demo.ts';
+import type { Demo } from '../../seeds/demo.ts';
 import { announce, say } from './say.ts';
 
 export interface Welcome {
