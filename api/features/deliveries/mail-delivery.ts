@@ -1,4 +1,4 @@
-import type { Transaction } from 'objection';
+import { raw, type Transaction } from 'objection';
 import type { Context } from '../../context.ts';
 import { Account } from '../../models/Account.ts';
 import { Commission } from '../../models/Commission.ts';
@@ -19,7 +19,10 @@ export async function mailDelivery(ctx: Context, trx: Transaction, delivery: Del
     await sizesOf(trx, delivery),
   ];
   const { token, hash } = newToken();
-  await DeliveryRecipient.query(trx).findById(recipient.id).patch({ tokenHash: hash, invitedAt: new Date() });
+  // The database's clock, as in the mail's row: the two are compared to find the mail of the present link.
+  await DeliveryRecipient.query(trx)
+    .findById(recipient.id)
+    .patch({ tokenHash: hash, invitedAt: raw('now()') });
   const link = linkAddress(ctx.config, token);
   await queueMail(trx, {
     studioId: delivery.studioId,
