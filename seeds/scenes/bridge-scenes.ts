@@ -40,7 +40,8 @@ function quays(mesh: Mesh, random: Random): void {
     if (random() < 0.6) boat(mesh, -HALF + 2.5, z + 4, 0, 7 + random() * 6, random);
     if (random() < 0.5) boat(mesh, HALF - 2.5, z + 8, Math.PI, 7 + random() * 6, random);
   }
-  for (let i = 0; i < 16; i++) walker(mesh, (random() < 0.5 ? -1 : 1) * (HALF + 2 + random() * 9), -30 + random() * 160, random() * 6.3, i + 90);
+  for (let i = 0; i < 16; i++)
+    walker(mesh, (random() < 0.5 ? -1 : 1) * (HALF + 2 + random() * 9), -30 + random() * 160, random() * 6.3, i + 90);
   dockCrane(mesh, -HALF - 7, 118, Math.PI / 2);
 }
 

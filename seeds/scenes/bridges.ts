@@ -27,14 +27,25 @@ export function archBridge(mesh: Mesh, long: number, arches: number, wide: numbe
   for (let a = 0; a < arches; a++) {
     const left = -half + a * span + pier / 2;
     const clear = span - pier;
-    const soffit = (t: number): number => WATER + 0.6 + Math.sqrt(Math.max(0, 1 - (2 * t - 1) ** 2)) * (roadAt(left + clear / 2, half) - WATER - 1.7);
+    const soffit = (t: number): number =>
+      WATER + 0.6 + Math.sqrt(Math.max(0, 1 - (2 * t - 1) ** 2)) * (roadAt(left + clear / 2, half) - WATER - 1.7);
     for (let i = 0; i < STRIPS; i++) arched(mesh, left, clear, i / STRIPS, (i + 1) / STRIPS, soffit, half, wide, stone);
   }
   for (let a = 0; a <= arches; a++) piers(mesh, -half + a * span, pier, half, wide, stone);
   deck(mesh, half, wide);
 }
 
-function arched(mesh: Mesh, left: number, clear: number, t0: number, t1: number, soffit: (t: number) => number, half: number, wide: number, stone: Surface): void {
+function arched(
+  mesh: Mesh,
+  left: number,
+  clear: number,
+  t0: number,
+  t1: number,
+  soffit: (t: number) => number,
+  half: number,
+  wide: number,
+  stone: Surface,
+): void {
   const [x0, x1] = [left + clear * t0, left + clear * t1];
   const [y0, y1] = [soffit(t0), soffit(t1)];
   const [h0, h1] = [roadAt(x0, half), roadAt(x1, half)];

@@ -17,7 +17,8 @@ export function building(mesh: Mesh, plan: Plan, random: Random): void {
   mesh.reseed(Math.floor(random() * 60000) + 1);
   const wall = walls[plan.family](random);
   if (plan.family === 'warehouse') return gabled(mesh, plan, wall, random() < 0.7 ? stuff.slate : stuff.tile, random);
-  if (plan.family === 'house') return random() < 0.6 ? gabled(mesh, plan, wall, stuff.tile, random) : hipped(mesh, plan, wall, stuff.slate, random);
+  if (plan.family === 'house')
+    return random() < 0.6 ? gabled(mesh, plan, wall, stuff.tile, random) : hipped(mesh, plan, wall, stuff.slate, random);
   if ((plan.family === 'stone' || plan.family === 'brick') && plan.height < 30) return corniced(mesh, plan, wall, random);
   if (plan.height > 55) return tower(mesh, plan, wall, random);
   block(mesh, plan, wall, random);
@@ -51,7 +52,8 @@ function tower(mesh: Mesh, { width, depth, height }: Plan, wall: Surface, random
     z1 -= inset * (0.4 + random());
   }
   mesh.at({ x: x0, z: z0 }, () => plant(mesh, x1 - x0, z1 - z0, y, random));
-  if (random() < 0.35) mesh.bar([(x0 + x1) / 2, y, (z0 + z1) / 2], [(x0 + x1) / 2, y + 12 + random() * 14, (z0 + z1) / 2], 0.5, stuff.rail, 0.15);
+  if (random() < 0.35)
+    mesh.bar([(x0 + x1) / 2, y, (z0 + z1) / 2], [(x0 + x1) / 2, y + 12 + random() * 14, (z0 + z1) / 2], 0.5, stuff.rail, 0.15);
 }
 
 /** An older street front: cornice, string course, attic or mansard, chimneys. */

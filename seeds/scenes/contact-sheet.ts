@@ -18,9 +18,16 @@ export async function contactSheet(frames: readonly DrawnFrame[], out: string): 
     frames.map(async (frame, i) => {
       const left = GAP + (i % COLUMNS) * (CELL + GAP);
       const top = GAP + Math.floor(i / COLUMNS) * (height + GAP);
-      const picture = await sharp(frame.file).rotate().resize(CELL, height - LABEL, { fit: 'inside' }).toColourspace('srgb').png().toBuffer();
+      const picture = await sharp(frame.file)
+        .rotate()
+        .resize(CELL, height - LABEL, { fit: 'inside' })
+        .toColourspace('srgb')
+        .png()
+        .toBuffer();
       const words = `${frame.name}  ${frame.scene}${frame.step === 0 ? '' : ` ${frame.step > 0 ? '+' : ''}${frame.step}`}`;
-      const label = Buffer.from(`<svg width="${CELL}" height="${LABEL}"><text x="0" y="13" font-family="sans-serif" font-size="12">${words}</text></svg>`);
+      const label = Buffer.from(
+        `<svg width="${CELL}" height="${LABEL}"><text x="0" y="13" font-family="sans-serif" font-size="12">${words}</text></svg>`,
+      );
       return [
         { input: picture, left, top },
         { input: label, left, top: top + height - LABEL },

@@ -35,7 +35,12 @@ export async function exists(file: string): Promise<boolean> {
   );
 }
 
-async function developFrame(picture: LinearPicture, frame: PlannedFrame, factor: number, balance: readonly [number, number, number]): Promise<Buffer> {
+async function developFrame(
+  picture: LinearPicture,
+  frame: PlannedFrame,
+  factor: number,
+  balance: readonly [number, number, number],
+): Promise<Buffer> {
   const { finish, shot } = frame;
   const source = finish ? evenOut(picture, finish.evened) : picture;
   const warm = finish?.warmth ?? 1;
@@ -54,11 +59,17 @@ async function developFrame(picture: LinearPicture, frame: PlannedFrame, factor:
   );
   const raw = { width: frame.width, height: frame.height, channels: 3 as const };
   if (frame.encoding === 'tiff') {
-    const tiff = sharp(codes, { raw }).toColourspace('rgb16').withIccProfile('srgb').tiff({ compression: 'deflate', predictor: 'horizontal' });
+    const tiff = sharp(codes, { raw })
+      .toColourspace('rgb16')
+      .withIccProfile('srgb')
+      .tiff({ compression: 'deflate', predictor: 'horizontal' });
     return intoTiff(await tiff.toBuffer(), shot);
   }
   const upright = sharp(codes, { raw });
   const stored = shot.orientation === 6 ? upright.rotate(270) : upright;
-  const jpeg = stored.toColourspace('srgb').withIccProfile(frame.encoding === 'p3' ? 'p3' : 'srgb').jpeg({ quality: 90 });
+  const jpeg = stored
+    .toColourspace('srgb')
+    .withIccProfile(frame.encoding === 'p3' ? 'p3' : 'srgb')
+    .jpeg({ quality: 90 });
   return intoJpeg(await jpeg.toBuffer(), shot);
 }

@@ -82,7 +82,19 @@ async function missingFiles(planned: PlannedTake, dir: string): Promise<number> 
 
 function drawnFrame(frame: PlannedFrame, dir: string): DrawnFrame {
   const { name, width, height, assignment, scene, words, bracket, step } = frame;
-  return { file: path.join(dir, name), name, width, height, assignment, scene, words, takenAt: frame.shot.takenAt, bracket, step, final: frame.finish !== null };
+  return {
+    file: path.join(dir, name),
+    name,
+    width,
+    height,
+    assignment,
+    scene,
+    words,
+    takenAt: frame.shot.takenAt,
+    bracket,
+    step,
+    final: frame.finish !== null,
+  };
 }
 
 /** Hands the orders to as many children as there are cores, one after the other each. */

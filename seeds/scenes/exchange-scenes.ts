@@ -33,7 +33,9 @@ function lane(mesh: Mesh, random: Random): void {
       lampPost(mesh, s * 7, z, 6.4, -s * 1.1);
       if (z > -66 && random() < 0.75) car(mesh, s * 5, z + 7, s < 0 ? 0 : Math.PI, Math.floor(random() * 50));
       mesh.lamp([s * 10.5, 3.2, z + 5], warm, 0.0022);
-      for (let i = 0; i < 2; i++) if (z > -80 && random() < 0.6) walker(mesh, s * (8 + random() * 3.5), z + random() * 12, random() < 0.5 ? 0 : Math.PI, Math.floor(random() * 900));
+      for (let i = 0; i < 2; i++)
+        if (z > -80 && random() < 0.6)
+          walker(mesh, s * (8 + random() * 3.5), z + random() * 12, random() < 0.5 ? 0 : Math.PI, Math.floor(random() * 900));
     }
   }
   for (let z = -176; z < -10; z += 6) mesh.face([[-0.08, 0.012, z], [0.08, 0.012, z], [0.08, 0.012, z + 3], [-0.08, 0.012, z + 3]], stuff.paint); // prettier-ignore

@@ -20,8 +20,7 @@ export interface Shot extends Settings {
 const EXIF_POINTER = 0x8769;
 const GPS_POINTER = 0x8825;
 
-const fraction = (seconds: number): [number, number] =>
-  seconds >= 0.3 ? [Math.round(seconds * 10), 10] : [1, Math.round(1 / seconds)];
+const fraction = (seconds: number): [number, number] => (seconds >= 0.3 ? [Math.round(seconds * 10), 10] : [1, Math.round(1 / seconds)]);
 
 function main(shot: Shot): Tag[] {
   const [date, clock] = stamp(shot.takenAt);

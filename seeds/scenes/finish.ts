@@ -6,7 +6,10 @@ export function smear(picture: LinearPicture, share: number): void {
   const { width, height, light } = picture;
   const before = light.slice();
   const long = Math.max(3, Math.round(width * share));
-  const path = Array.from({ length: long }, (_, i) => [Math.round(i * 0.85 - long / 2), Math.round(Math.sin((i / long) * 2.6) * long * 0.4)] as const);
+  const path = Array.from(
+    { length: long },
+    (_, i) => [Math.round(i * 0.85 - long / 2), Math.round(Math.sin((i / long) * 2.6) * long * 0.4)] as const,
+  );
   light.fill(0);
   for (const [dx, dy] of path) {
     for (let y = 0; y < height; y++) {

@@ -91,7 +91,15 @@ function planTake(assignment: Assignment, take: Take, scene: Scene, start: numbe
   const finals = (take.finishes ?? []).map((finish): PlannedFrame => {
     const stem = middle.name.slice(0, 7);
     const shot = { ...middle.shot, orientation: 1 as const, width, height };
-    return { ...common, name: `${stem}${finish.suffix}.${finish.format === 'tiff' ? 'tif' : 'jpg'}`, step: 0, bracket: null, encoding: finish.format, shot, finish };
+    return {
+      ...common,
+      name: `${stem}${finish.suffix}.${finish.format === 'tiff' ? 'tif' : 'jpg'}`,
+      step: 0,
+      bracket: null,
+      encoding: finish.format,
+      shot,
+      finish,
+    };
   });
   return { take, scene, width, height, frames: [...frames, ...finals] };
 }

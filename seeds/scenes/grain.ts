@@ -21,10 +21,7 @@ function bond(spot: Spot, width: number, height: number, joint: number, jointTon
   const toneOfBlock = 1 + (hash(block, course, spot.seed) - 0.5) * spread * detail;
   const x = wrap(along, width);
   const y = wrap(spot.v, height);
-  const gap = Math.max(
-    line(Math.min(x, width - x), joint, spot.footU),
-    line(Math.min(y, height - y), joint, spot.footV),
-  );
+  const gap = Math.max(line(Math.min(x, width - x), joint, spot.footU), line(Math.min(y, height - y), joint, spot.footV));
   spot.tone(toneOfBlock * (1 + (jointTone - 1) * gap * detail));
 }
 

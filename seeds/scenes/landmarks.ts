@@ -5,7 +5,16 @@ import type { Surface } from './surface.ts';
 
 const brick: Surface = facade([0.3, 0.165, 0.115], 'brick', openings.hall);
 const plainBrick: Surface = { kind: 'wall', colour: [0.3, 0.165, 0.115], grain: 'brick' };
-const curtain: Surface = facade([0.09, 0.1, 0.1], 'smooth', { ...openings.curtain, bay: 1.9, storey: 4.1, sill: 0.35, lit: 1, variety: 0.3, mirror: 0.2, frame: [0.2, 0.13, 0.07] });
+const curtain: Surface = facade([0.09, 0.1, 0.1], 'smooth', {
+  ...openings.curtain,
+  bay: 1.9,
+  storey: 4.1,
+  sill: 0.35,
+  lit: 1,
+  variety: 0.3,
+  mirror: 0.2,
+  frame: [0.2, 0.13, 0.07],
+});
 
 export const LIBRARY = { width: 66, depth: 34 };
 
@@ -63,7 +72,17 @@ function oriel(mesh: Mesh, x: number, wide: number): void {
     mesh.bar([px, low - 0.4, -out + 0.5], [px, low - 2.4, -0.1], 0.22, stuff.iron);
     if (i < 4) mesh.lamp([px + 1.2, low - 0.9, -out * 0.55], [1, 0.75, 0.48], 0.0035);
   }
-  const doors: Surface = facade([0.17, 0.11, 0.06], 'smooth', { ...openings.curtain, ground: 0, storey: 3.6, bay: 1.5, sill: 0.05, head: 3.5, lit: 1, parapet: 0.05, frame: [0.17, 0.11, 0.06] });
+  const doors: Surface = facade([0.17, 0.11, 0.06], 'smooth', {
+    ...openings.curtain,
+    ground: 0,
+    storey: 3.6,
+    bay: 1.5,
+    sill: 0.05,
+    head: 3.5,
+    lit: 1,
+    parapet: 0.05,
+    frame: [0.17, 0.11, 0.06],
+  });
   mesh.face([[x + 0.4, 0, -0.1], [x + wide - 0.4, 0, -0.1], [x + wide - 0.4, 3.7, -0.1], [x + 0.4, 3.7, -0.1]], doors); // prettier-ignore
 }
 
@@ -74,7 +93,15 @@ export const EXCHANGE = { width: 46, depth: 34 };
  * its foot. Front left corner at the origin, front to -z.
  */
 export function cornExchange(mesh: Mesh): void {
-  const wall: Surface = facade([0.52, 0.46, 0.36], 'ashlar', { ...openings.hall, bay: 5.2, storey: 6.4, head: 5.4, arched: true, width: 0.4, dressing: [0.56, 0.5, 0.41] });
+  const wall: Surface = facade([0.52, 0.46, 0.36], 'ashlar', {
+    ...openings.hall,
+    bay: 5.2,
+    storey: 6.4,
+    head: 5.4,
+    arched: true,
+    width: 0.4,
+    dressing: [0.56, 0.5, 0.41],
+  });
   const stone: Surface = { kind: 'wall', colour: [0.55, 0.49, 0.39], grain: 'ashlar' };
   const { width, depth } = EXCHANGE;
   mesh.reseed(811);
@@ -113,7 +140,18 @@ function portico(mesh: Mesh, centre: number, stone: Surface): void {
 }
 
 function lantern(mesh: Mesh, x: number, z: number, stone: Surface): void {
-  const drum: Surface = facade([0.52, 0.46, 0.36], 'ashlar', { ...openings.sash, bay: 2.6, storey: 6, ground: 0, sill: 1, head: 5, arched: true, pier: 0.5, parapet: 0.5, lit: 1 });
+  const drum: Surface = facade([0.52, 0.46, 0.36], 'ashlar', {
+    ...openings.sash,
+    bay: 2.6,
+    storey: 6,
+    ground: 0,
+    sill: 1,
+    head: 5,
+    arched: true,
+    pier: 0.5,
+    parapet: 0.5,
+    lit: 1,
+  });
   mesh.box([x - 5, 15, z], [x + 5, 23, z + 10], stone);
   mesh.at({ x: x - 5.4, y: 0, z: z - 0.4 }, () => ledge(mesh, 10.8, 10.8, 22.6, 0.3, 0.6));
   clock(mesh, x, 19.4, z - 0.05);
@@ -131,7 +169,12 @@ function clock(mesh: Mesh, x: number, y: number, z: number): void {
     const [a, b] = [(i / n) * 6.2832, ((i + 1) / n) * 6.2832];
     mesh.face([[x, y, z - 0.02], [x + Math.cos(a) * 2.1, y + Math.sin(a) * 2.1, z - 0.02], [x + Math.cos(b) * 2.1, y + Math.sin(b) * 2.1, z - 0.02]], face); // prettier-ignore
     if (i % 2 === 0) mesh.bar([x + Math.cos(a) * 1.7, y + Math.sin(a) * 1.7, z - 0.06], [x + Math.cos(a) * 1.95, y + Math.sin(a) * 1.95, z - 0.06], 0.13, stuff.iron); // prettier-ignore
-    mesh.bar([x + Math.cos(a) * 2.2, y + Math.sin(a) * 2.2, z - 0.06], [x + Math.cos(b) * 2.2, y + Math.sin(b) * 2.2, z - 0.06], 0.28, stuff.stone);
+    mesh.bar(
+      [x + Math.cos(a) * 2.2, y + Math.sin(a) * 2.2, z - 0.06],
+      [x + Math.cos(b) * 2.2, y + Math.sin(b) * 2.2, z - 0.06],
+      0.28,
+      stuff.stone,
+    );
   }
   mesh.bar([x, y, z - 0.1], [x - 0.95, y + 0.6, z - 0.1], 0.2, stuff.iron, 0.08);
   mesh.bar([x, y, z - 0.1], [x + 0.5, y - 1.55, z - 0.1], 0.14, stuff.iron, 0.06);

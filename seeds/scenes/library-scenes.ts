@@ -22,7 +22,14 @@ function ropewalk(mesh: Mesh, random: Random, leaves: boolean): void {
   district(mesh, -260, 260, FRONT + 44, 330, mixes.old, random);
   district(mesh, -300, 300, 340, 480, mixes.centre, random);
   promenade(mesh, random, leaves);
-  for (const [x, long] of [[-44, 11], [-27, 8], [31, 13], [52, 9], [74, 10]] as const) boat(mesh, x, QUAY - 2.6, Math.PI / 2, long, random);
+  for (const [x, long] of [
+    [-44, 11],
+    [-27, 8],
+    [31, 13],
+    [52, 9],
+    [74, 10],
+  ] as const)
+    boat(mesh, x, QUAY - 2.6, Math.PI / 2, long, random);
 }
 
 function promenade(mesh: Mesh, random: Random, leaves: boolean): void {

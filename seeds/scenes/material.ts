@@ -48,10 +48,7 @@ function quay(spot: Spot): void {
   const block = Math.floor(along / 1.4);
   const x = wrap(along, 1.4);
   const y = wrap(spot.v, 0.55);
-  const joint = Math.max(
-    line(Math.min(x, 1.4 - x), 0.03, spot.footU),
-    line(Math.min(y, 0.55 - y), 0.03, spot.footV),
-  );
+  const joint = Math.max(line(Math.min(x, 1.4 - x), 0.03, spot.footU), line(Math.min(y, 0.55 - y), 0.03, spot.footV));
   spot.tone((0.82 + 0.36 * hash(block, course, 3)) * (1 - 0.45 * joint));
   spot.tone(0.75 + 0.5 * fractal(spot.u * 1.3, spot.v * 1.9, 3));
   const tide = clamp((spot.vLength - spot.v - 1.0 + (noise(spot.u * 0.8, 3) - 0.5) * 0.4) * 2.2, 0, 1);
@@ -83,10 +80,7 @@ function paved(spot: Spot, width: number, height: number, joint: number): void {
   const detail = clamp(1.5 - Math.max(spot.footV / height, spot.footU / width), 0, 1);
   const x = wrap(along, width);
   const y = wrap(spot.v, height);
-  const gap = Math.max(
-    line(Math.min(x, width - x), joint, spot.footU),
-    line(Math.min(y, height - y), joint, spot.footV),
-  );
+  const gap = Math.max(line(Math.min(x, width - x), joint, spot.footU), line(Math.min(y, height - y), joint, spot.footV));
   spot.tone(1 + detail * ((hash(stone, row, 21) - 0.5) * 0.3 - 0.45 * gap));
   spot.tone(0.72 + 0.56 * fractal(spot.u * 0.17, spot.v * 0.17, 4));
   spot.tone(0.94 + 0.12 * noise(spot.u * 9, spot.v * 9));

@@ -156,7 +156,11 @@ function renderMirror(subject: Subject, real: Camera, lighting: Lighting, level:
   // Wet streets lie at two heights, a kerb apart: what is lower than that mirrors nothing.
   raster.draw(inPerspective(mesh, camera, level + (subject.mirror?.wet ? 0.18 : 0.02)));
   const sky = new ScreenSky(camera, lighting.sky, 4);
-  const picture = { camera, light: new Float32Array(camera.width * camera.height * 3), far: new Float32Array(camera.width * camera.height) };
+  const picture = {
+    camera,
+    light: new Float32Array(camera.width * camera.height * 3),
+    far: new Float32Array(camera.width * camera.height),
+  };
   const one = new Float64Array(3);
   const ray: [number, number, number] = [0.5, 0.5, 0.5];
   for (let at = 0; at < raster.face.length; at++) {

@@ -47,7 +47,15 @@ export function kit(format: Format, focal: number): Omit<Settings, 'aperture' | 
   const make = 'Harbour Optical';
   if (format === 'four-thirds') {
     const real = Math.round(focal * SMALL_SENSOR * 10) / 10;
-    return { make, model: 'HO-4c', serial: 'HO4C-01938', lens: 'Harbour Optical 8-40 mm f/2.8', lensSerial: '08400051', focal: real, focalAs35: focal };
+    return {
+      make,
+      model: 'HO-4c',
+      serial: 'HO4C-01938',
+      lens: 'Harbour Optical 8-40 mm f/2.8',
+      lensSerial: '08400051',
+      focal: real,
+      focalAs35: focal,
+    };
   }
   const lens = lenses.find((each) => focal >= each.from && focal <= each.to);
   if (!lens) throw new Error(`The studio has no lens of ${focal} mm.`);

@@ -30,7 +30,8 @@ function waterfront(mesh: Mesh, random: Random): void {
     lampPost(mesh, x, 219, 6);
     if (random() < 0.6) bareTree(mesh, x + 9, 225, 8 + random() * 4, random);
   }
-  for (let i = 0; i < 16; i++) boat(mesh, -80 + i * 15 + random() * 8, 205 + random() * 7, Math.PI / 2 + (random() - 0.5) * 0.2, 8 + random() * 9, random);
+  for (let i = 0; i < 16; i++)
+    boat(mesh, -80 + i * 15 + random() * 8, 205 + random() * 7, Math.PI / 2 + (random() - 0.5) * 0.2, 8 + random() * 9, random);
   boat(mesh, 24, 96, 1.2, 12, random);
   boat(mesh, -46, 138, -1.3, 17, random);
   for (let i = 0; i < 24; i++) walker(mesh, -150 + random() * 300, 217 + random() * 8, random() * 6.3, i + 300);
@@ -55,7 +56,13 @@ function roofs(mesh: Mesh, random: Random): void {
 function docks(mesh: Mesh, random: Random): void {
   sea(mesh);
   ground(mesh, -400, 60, 400, 900, stuff.setts);
-  for (const [x, z] of [[-44, 68], [-8, 70], [34, 69], [80, 74]]) dockCrane(mesh, x!, z!, Math.PI + (random() - 0.5) * 0.8, random() < 0.5 ? stuff.green : stuff.rail);
+  for (const [x, z] of [
+    [-44, 68],
+    [-8, 70],
+    [34, 69],
+    [80, 74],
+  ])
+    dockCrane(mesh, x!, z!, Math.PI + (random() - 0.5) * 0.8, random() < 0.5 ? stuff.green : stuff.rail);
   row(mesh, -160, 180, 92, mixes.docks, random);
   row(mesh, -160, 180, 150, mixes.quayside, random);
   for (let x = -70; x < 120; x += 22) boat(mesh, x + random() * 6, 55, Math.PI / 2, 11 + random() * 9, random);

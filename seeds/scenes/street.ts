@@ -18,7 +18,14 @@ export function lampPost(mesh: Mesh, x: number, z: number, high = 6, arm = 0): v
     if (arm !== 0) mesh.slab([arm - 0.32, y, -0.13], [arm + 0.32, y + 0.1, 0.13], stuff.lampGlass, stuff.iron);
     else {
       mesh.lathe([[high, 0.06], [high + 0.1, 0.16], [high + 0.5, 0.22], [high + 0.52, 0.05]], 6, stuff.lampGlass); // prettier-ignore
-      mesh.lathe([[high + 0.5, 0.26], [high + 0.72, 0.02]], 6, stuff.iron);
+      mesh.lathe(
+        [
+          [high + 0.5, 0.26],
+          [high + 0.72, 0.02],
+        ],
+        6,
+        stuff.iron,
+      );
     }
     mesh.lamp([arm, y - 0.15, 0], warm, STREET_LAMP);
   });
@@ -79,7 +86,16 @@ export function leafyTree(mesh: Mesh, x: number, z: number, high: number, random
       const a = i * 1.3;
       mesh.bar([0.1, high * 0.36, 0], [Math.cos(a) * high * 0.2, high * 0.7, Math.sin(a) * high * 0.2], 0.14, stuff.bark, 0.04);
     }
-    const lumps = Array.from({ length: 9 }, () => [(random() - 0.5) * high * 0.4, high * (0.5 + random() * 0.36), (random() - 0.5) * high * 0.4, high * (0.13 + random() * 0.1)] as const);
+    const lumps = Array.from(
+      { length: 9 },
+      () =>
+        [
+          (random() - 0.5) * high * 0.4,
+          high * (0.5 + random() * 0.36),
+          (random() - 0.5) * high * 0.4,
+          high * (0.13 + random() * 0.1),
+        ] as const,
+    );
     for (let i = 0; i < leaves; i++) {
       const [cx, cy, cz, r] = lumps[i % lumps.length]!;
       const [a, b] = [random() * 6.283, Math.acos(2 * random() - 1)];
@@ -119,7 +135,12 @@ export function walker(mesh: Mesh, x: number, z: number, yaw: number, seed: numb
       mesh.bar([s * 0.29, 1.12 * size, -s * 0.12], [s * 0.27, 0.88 * size, -s * 0.22 + 0.06], 0.1, coat, 0.07);
     }
     const profile = [[0.52 + random() * 0.25, 0.235], [0.95, 0.2], [1.1, 0.18], [1.35, 0.22], [1.45, 0.19], [1.52, 0.08]]; // prettier-ignore
-    mesh.lathe(profile.map(([h, r]) => [h! * size, r!] as const), 10, coat, 0.72);
+    mesh.lathe(
+      profile.map(([h, r]) => [h! * size, r!] as const),
+      10,
+      coat,
+      0.72,
+    );
     mesh.lathe([[1.48, 0.055], [1.56, 0.06], [1.6, 0.09], [1.68, 0.105]].map(([h, r]) => [h! * size, r!] as const), 9, skin); // prettier-ignore
     mesh.lathe([[1.66, 0.112], [1.73, 0.105], [1.79, 0.06], [1.81, 0]].map(([h, r]) => [h! * size, r!] as const), 9, hair); // prettier-ignore
   });
@@ -131,12 +152,22 @@ export function car(mesh: Mesh, x: number, z: number, yaw: number, seed: number)
   const body: Surface = { kind: 'plain', colour: [paint[0]!, paint[1]!, paint[2]!], gloss: 0.6 };
   const glass: Surface = { kind: 'plain', colour: [0.02, 0.022, 0.025], gloss: 1 };
   const side = [[-2.1, 0.35], [-2.15, 0.75], [-1.3, 0.92], [1.75, 0.95], [2.05, 0.8], [2.1, 0.35]] as const; // prettier-ignore
-  const cabin = [[-1.25, 0.92], [-0.55, 1.42], [0.9, 1.44], [1.7, 0.95]] as const;
+  const cabin = [
+    [-1.25, 0.92],
+    [-0.55, 1.42],
+    [0.9, 1.44],
+    [1.7, 0.95],
+  ] as const;
   mesh.at({ x, z, yaw }, () => {
     extrude(mesh, side, 0.86, body);
     extrude(mesh, cabin, 0.74, glass);
     mesh.face([[-0.74, 1.445, -0.55], [0.74, 1.445, -0.55], [0.74, 1.455, 0.9], [-0.74, 1.455, 0.9]], body); // prettier-ignore
-    for (const [wx, wz] of [[-0.8, -1.35], [0.8, -1.35], [-0.8, 1.35], [0.8, 1.35]]) {
+    for (const [wx, wz] of [
+      [-0.8, -1.35],
+      [0.8, -1.35],
+      [-0.8, 1.35],
+      [0.8, 1.35],
+    ]) {
       mesh.box([wx! - 0.11, 0, wz! - 0.31], [wx! + 0.11, 0.62, wz! + 0.31], stuff.iron);
     }
   });

@@ -31,9 +31,19 @@ const shade = (c: Colour, k: number): Colour => [c[0] * k, c[1] * k, c[2] * k];
 const choose = <T>(random: Random, list: readonly T[]): T => list[Math.floor(random() * list.length)]!;
 
 const bricks: Colour[] = [[0.3, 0.135, 0.09], [0.34, 0.19, 0.12], [0.24, 0.12, 0.09], [0.42, 0.31, 0.2], [0.22, 0.16, 0.13]]; // prettier-ignore
-const stones: Colour[] = [[0.5, 0.45, 0.36], [0.44, 0.41, 0.36], [0.52, 0.49, 0.44], [0.38, 0.35, 0.31]];
+const stones: Colour[] = [
+  [0.5, 0.45, 0.36],
+  [0.44, 0.41, 0.36],
+  [0.52, 0.49, 0.44],
+  [0.38, 0.35, 0.31],
+];
 const renders: Colour[] = [[0.66, 0.62, 0.55], [0.6, 0.49, 0.35], [0.57, 0.58, 0.56], [0.5, 0.36, 0.28], [0.45, 0.5, 0.5]]; // prettier-ignore
-const concretes: Colour[] = [[0.36, 0.34, 0.32], [0.42, 0.41, 0.39], [0.3, 0.29, 0.28], [0.5, 0.48, 0.45]];
+const concretes: Colour[] = [
+  [0.36, 0.34, 0.32],
+  [0.42, 0.41, 0.39],
+  [0.3, 0.29, 0.28],
+  [0.5, 0.48, 0.45],
+];
 
 /** A wall of one of the city's families, each a little different from the next. */
 export const walls = {

@@ -32,7 +32,12 @@ export interface Take {
 const single = [0] as const;
 const three = [0, -2, 2] as const;
 const five = [-2, -1, 0, 1, 2] as const;
-const finish = (suffix = '_final', format: 'jpeg' | 'tiff' = 'jpeg', evened = 0.3, warmth = 1.01): Finish => ({ suffix, format, evened, warmth });
+const finish = (suffix = '_final', format: 'jpeg' | 'tiff' = 'jpeg', evened = 0.3, warmth = 1.01): Finish => ({
+  suffix,
+  format,
+  evened,
+  warmth,
+});
 
 /** Day's work of each assignment: how many days ago it was, the first number on the card, and its takes in order. */
 export const assignments: Record<Assignment, { daysAgo: number; firstNumber: number; takes: readonly Take[] }> = {
@@ -58,8 +63,8 @@ export const assignments: Record<Assignment, { daysAgo: number; firstNumber: num
       { scene: 'exchange-day', steps: single, pause: 0 },
       { scene: 'exchange-up', steps: single, format: 'tiff', pause: 80 },
       { scene: 'harrow-lane', steps: single, pause: 20 },
-      { scene: 'exchange-blue', steps: three, pause: 90, finishes: [finish()] },
-      { scene: 'exchange-night', steps: three, pause: 60, sensitivity: 200, aperture: 5.6, finishes: [finish()] },
+      { scene: 'exchange-blue', steps: three, pause: 90 },
+      { scene: 'exchange-night', steps: three, pause: 60, sensitivity: 200, aperture: 5.6 },
       { scene: 'lane-night', steps: single, pause: 15, sensitivity: 400, aperture: 5.6 },
     ],
   },

@@ -70,8 +70,7 @@ function seen(mesh: Mesh, camera: Camera): { centre: Vec3; radius: number } {
 function pointAt(camera: Camera, at: number, far: number): Vec3 {
   const rx = ((at % camera.width) + 0.5 - camera.centreX) / camera.focal;
   const ry = (camera.centreY - Math.floor(at / camera.width) - 0.5) / camera.focal;
-  const along = (c: 0 | 1 | 2): number =>
-    camera.position[c] + (camera.right[c] * rx + camera.up[c] * ry + camera.forward[c]) * far;
+  const along = (c: 0 | 1 | 2): number => camera.position[c] + (camera.right[c] * rx + camera.up[c] * ry + camera.forward[c]) * far;
   return [along(0), along(1), along(2)];
 }
 
