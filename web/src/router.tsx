@@ -1,4 +1,4 @@
-import { createBrowserRouter, type RouteObject } from 'react-router-dom';
+import { createBrowserRouter, Navigate, type RouteObject } from 'react-router-dom';
 import { sheetLoader } from './features/sheets-guest/queries.ts';
 import { queryClient } from './lib/query-client.ts';
 import { BrokenPage } from './pages/broken-page.tsx';
@@ -7,10 +7,31 @@ import { Root } from './pages/root.tsx';
 import { Pending } from './ui/pending.tsx';
 
 /** Without a session: signing in and up, resetting, joining a studio. */
-const doorPages: RouteObject[] = [];
+const doorPages: RouteObject[] = [
+  { index: true, element: <Navigate to="/desk" replace /> },
+  { path: 'sign-in', lazy: () => import('./pages/sign-in-page.tsx') },
+  { path: 'sign-up', lazy: () => import('./pages/sign-up-page.tsx') },
+  { path: 'reset-password', lazy: () => import('./pages/reset-password-page.tsx') },
+  { path: 'reset-password/:token', lazy: () => import('./pages/reset-password-link-page.tsx') },
+  { path: 'confirm-email/:token', lazy: () => import('./pages/confirm-email-page.tsx') },
+  { path: 'join/:token', lazy: () => import('./pages/join-page.tsx') },
+];
 
 /** The studio's pages, inside the shell with the navigation at the left. */
 const studioPages: RouteObject[] = [
+  {
+    path: 'settings',
+    lazy: () => import('./pages/studio/settings/settings-layout.tsx'),
+    children: [
+      { index: true, element: <Navigate to="/settings/studio" replace /> },
+      { path: 'studio', lazy: () => import('./pages/studio/settings/studio-page.tsx') },
+      { path: 'account', lazy: () => import('./pages/studio/settings/account-page.tsx') },
+      { path: 'team', lazy: () => import('./pages/studio/settings/team-page.tsx') },
+      { path: 'watermark', lazy: () => import('./pages/studio/settings/watermark-page.tsx') },
+      { path: 'mail', lazy: () => import('./pages/studio/settings/mail-page.tsx') },
+      { path: 'storage', lazy: () => import('./pages/studio/settings/storage-page.tsx') },
+    ],
+  },
   {
     path: 'commissions/:commissionId',
     lazy: () => import('./pages/studio/commission/layout.tsx'),
@@ -23,6 +44,8 @@ const studioPages: RouteObject[] = [
       { path: 'proofs', lazy: () => import('./pages/studio/commission/proofs-page.tsx') },
       { path: 'proofs/:sheetId', lazy: () => import('./pages/studio/commission/proofs-page.tsx') },
       { path: 'picks', lazy: () => import('./pages/studio/commission/picks-page.tsx') },
+      { path: 'finals', lazy: () => import('./pages/studio/commission/finals-page.tsx') },
+      { path: 'delivery', lazy: () => import('./pages/studio/commission/delivery-page.tsx') },
     ],
   },
 ];
@@ -30,6 +53,7 @@ const studioPages: RouteObject[] = [
 /** The guests' pages: sheets, deliveries and what they were ever invited to. */
 const guestPages: RouteObject[] = [
   { path: 'open/:token', lazy: () => import('./pages/guest/open-page.tsx') },
+  { path: 'deliveries/:deliveryId', lazy: () => import('./pages/guest/delivery-page.tsx') },
   { path: 'mine', lazy: () => import('./pages/guest/mine-page.tsx') },
   { path: 'sheets/:sheetId/review', loader: sheetLoader(queryClient), lazy: () => import('./pages/guest/review-page.tsx') },
   { path: 'sheets/:sheetId', loader: sheetLoader(queryClient), lazy: () => import('./pages/guest/sheet-page.tsx') },
