@@ -59,10 +59,7 @@ async function developFrame(
   );
   const raw = { width: frame.width, height: frame.height, channels: 3 as const };
   if (frame.encoding === 'tiff') {
-    const tiff = sharp(codes, { raw })
-      .toColourspace('rgb16')
-      .withIccProfile('srgb')
-      .tiff({ compression: 'deflate', predictor: 'horizontal' });
+    const tiff = sharp(codes, { raw }).toColourspace('rgb16').withIccProfile('srgb').tiff({ compression: 'lzw', predictor: 'horizontal' });
     return intoTiff(await tiff.toBuffer(), shot);
   }
   const upright = sharp(codes, { raw });

@@ -54,7 +54,7 @@ describe('The demo', () => {
     const { body: opened } = await guest.post('/api/open').set('Origin', house.address).send({ token }).expect(200);
     const { goTo } = opened as { goTo: string };
     expect(goTo).toMatch(/^\/sheets\//);
-    await guest.get(`/api${goTo}`).expect(200);
+    await guest.get(`/api/guest${goTo}`).expect(200);
     const marks = await house.ctx
       .knex('marks')
       .where({ sheetId: goTo.split('/').at(-1) })

@@ -90,7 +90,10 @@ describe('A bracket', () => {
   it('is one light at true steps: twice the exposure is twice the linear light', async () => {
     const steps = ['HL_0426.jpg', 'HL_0427.jpg', 'HL_0428.jpg', 'HL_0429.jpg', 'HL_0430.jpg'].map(named);
     expect(steps.map(({ step }) => step)).toEqual([-2, -1, 0, 1, 2]);
-    for (let i = 1; i < steps.length; i++) expect(await medianRatio(steps[i - 1]!.file, steps[i]!.file)).toBeCloseTo(2, 0.9);
+    for (let i = 1; i < steps.length; i++) {
+      const ratio = await medianRatio(steps[i - 1]!.file, steps[i]!.file);
+      expect(Math.abs(Math.log2(ratio) - 1)).toBeLessThan(0.06);
+    }
   });
 
   it('of three spans two steps each way', async () => {
@@ -127,7 +130,8 @@ describe('What a file says of itself, read by ExifTool', () => {
       expect(tags.FocalLength).toBeCloseTo(shot.focal, 1);
       expect(tags.FocalLengthIn35mmFormat).toBe(shot.focalAs35);
       const taken = tags.DateTimeOriginal as { toISOString(): string };
-      expect(Date.parse(taken.toISOString()), planned.name).toBe(Math.floor(Date.parse(shot.takenAt) / 1000) * 1000);
+      // ExifTool puts date, sub-seconds and offset together.
+      expect(Date.parse(taken.toISOString()), planned.name).toBe(Date.parse(shot.takenAt));
       expect(String(tags.SubSecTimeOriginal).padStart(2, '0')).toBe(shot.takenAt.slice(20, 22));
       expect(tags.OffsetTimeOriginal).toBe('+01:00');
     }
