@@ -29,6 +29,8 @@ export interface House {
   /** A new agent with a cookie jar of its own: one person at one browser. */
   agent(): ReturnType<typeof supertest.agent>;
   address: string;
+  /** The settings of this house, for processes that a test starts itself. */
+  env: Record<string, string>;
   server: Server;
   store: Awaited<ReturnType<typeof startStore>>;
   mails: Awaited<ReturnType<typeof startMailCatcher>>;
@@ -57,7 +59,7 @@ export async function startHouse(options: HouseOptions = {}): Promise<House> {
   const server = createServer();
   await new Promise<void>((resolve) => server.listen(0, '127.0.0.1', resolve));
   const port = (server.address() as AddressInfo).port;
-  const config = loadConfig({
+  const env = {
     NODE_ENV: 'test',
     ORIEL_PORT: String(port),
     ORIEL_DATABASE_URL: database.url,
@@ -67,7 +69,8 @@ export async function startHouse(options: HouseOptions = {}): Promise<House> {
     ORIEL_SMTP_URL: `smtp://127.0.0.1:${mails.smtpPort}`,
     ORIEL_SECRET: 'a-secret-of-the-tests-that-is-long-enough',
     ...options.env,
-  });
+  };
+  const config = loadConfig(env);
   const logged: string[] = [];
   const log = pino({ level: 'error' }, { write: (line: string) => void logged.push(line) });
   const { ctx, close } = await openHouse(config, log);
@@ -83,6 +86,7 @@ export async function startHouse(options: HouseOptions = {}): Promise<House> {
     store,
     mails,
     address,
+    env,
     logged,
     request: supertest(address),
     agent: () => supertest.agent(address),
