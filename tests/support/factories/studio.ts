@@ -47,7 +47,12 @@ export async function makeStudio(
   } = {},
 ): Promise<MadeStudio> {
   const { ownerName = 'Ines Okafor', assistantName = 'Petra Thorn', ...columns } = values;
-  const studio = await Studio.query().insertAndFetch({ name: 'Harrow Lane Studio', replyTo: 'studio@harrow-lane.test', ...columns });
+  const studio = await Studio.query().insertAndFetch({
+    name: 'Harrow Lane Studio',
+    replyTo: 'studio@harrow-lane.test',
+    watermark: { kind: 'text', text: 'Harrow Lane Studio', opacity: 0.35, size: 0.5, tiled: false },
+    ...columns,
+  });
   const [owner, assistant] = [await join(house, studio, 'owner', ownerName), await join(house, studio, 'assistant', assistantName)];
   return { studio, owner, assistant };
 }
