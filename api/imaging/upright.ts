@@ -20,14 +20,14 @@ export async function toRaw(picture: Sharp): Promise<RawPicture> {
   return { data, width: info.width, height: info.height, channels: info.channels === 4 ? 4 : 3 };
 }
 
-/** Quarter turns clockwise, then mirrors, for each EXIF Orientation (CIPA DC-008, tag 0x0112). */
+/** Mirrors, then quarter turns clockwise, for each EXIF Orientation (CIPA DC-008, tag 0x0112): sharp mirrors first, whatever is called first. */
 const TURNS: Record<number, (picture: Sharp) => Sharp> = {
   2: (picture) => picture.flop(),
   3: (picture) => picture.rotate(180),
   4: (picture) => picture.flip(),
-  5: (picture) => picture.rotate(90).flop(),
+  5: (picture) => picture.flop().rotate(270),
   6: (picture) => picture.rotate(90),
-  7: (picture) => picture.rotate(90).flip(),
+  7: (picture) => picture.flop().rotate(90),
   8: (picture) => picture.rotate(270),
 };
 
