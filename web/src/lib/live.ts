@@ -19,13 +19,14 @@ function readChange(data: string): LiveChange {
 /**
  * Listens to an event stream until the returned function is called. A browser gives up for good when the server answers
  * with an error (while it restarts, say), so the stream is opened again with a growing pause; after each gap a `lost`
- * is told, because changes during the gap were not heard.
+ * is told, because changes during the gap were not heard. With `fromStart` it is told once at the beginning too: for data
+ * that was read before the stream was open.
  */
-export function listen(path: string, tell: (change: LiveChange) => void): () => void {
+export function listen(path: string, tell: (change: LiveChange) => void, fromStart = false): () => void {
   let source: EventSource | undefined;
   let timer: ReturnType<typeof setTimeout> | undefined;
   let wait = FIRST_WAIT;
-  let hadGap = false;
+  let hadGap = fromStart;
 
   const open = () => {
     source = new EventSource(path);
@@ -58,6 +59,6 @@ export function useLive(path: string | undefined, tell: (change: LiveChange) => 
   });
   useEffect(() => {
     if (!path) return;
-    return listen(path, (change) => latest.current(change));
+    return listen(path, (change) => latest.current(change), true);
   }, [path]);
 }

@@ -83,7 +83,11 @@ export function Menu({ label, entries, size = 'small', className, align = 'right
               entry.onChoose();
             }}
           >
-            {entries.some((other) => other.chosen !== undefined) ? <span className="w-3">{entry.chosen ? '✓' : ''}</span> : null}
+            {entries.some((other) => other.chosen !== undefined) ? (
+              <span aria-hidden="true" className="w-3">
+                {entry.chosen ? '✓' : ''}
+              </span>
+            ) : null}
             {entry.words}
           </button>
         ))}

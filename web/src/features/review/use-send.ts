@@ -18,6 +18,9 @@ export function useSend(sheetId: string) {
   return useMutation({
     mutationFn: ({ proofs, words }: Sending) =>
       api.post<SentPickList>(pickListsAddress(sheetId), { proofIds: proofs.map((proof) => proof.id), words }),
-    onSettled: () => queryClient.invalidateQueries({ queryKey: sheetKeys.all(sheetId) }),
+    onSettled: () =>
+      Promise.all(
+        [sheetKeys.sheet, sheetKeys.marks, sheetKeys.pickLists].map((key) => queryClient.invalidateQueries({ queryKey: key(sheetId) })),
+      ),
   });
 }

@@ -1,9 +1,8 @@
 import { useQuery, useQueryClient, type QueryClient } from '@tanstack/react-query';
 import { useCallback, useEffect, useMemo, type ReactNode } from 'react';
 import type { GuestProofs, GuestSheet, SheetMarks } from '../../../../api/contract/guest-sheets.ts';
-import { useLive, type LiveChange } from '../../lib/live.ts';
+import { useLive } from '../../lib/live.ts';
 import { QueryView } from '../../ui/query-view.tsx';
-import { withMark } from '../marks/mark-keeper.ts';
 import { numberPicks, readMarks } from '../marks/read-marks.ts';
 import { useMarks } from '../marks/use-marks.ts';
 import { GuestRefused } from './guest-refused.tsx';
@@ -83,20 +82,16 @@ function useRenewPictures(queryClient: QueryClient, sheetId: string) {
   }, [queryClient, sheetId]);
 }
 
-/** Applies what another guest marked at once where the change says it; reads anew what else has changed. */
+/** Reads anew what another guest, or the studio, has changed. The proofs themselves follow by the sheet's revision. */
 function useSheetLive(sheetId: string, ready: boolean): void {
   const queryClient = useQueryClient();
   const gather = useMemo(() => gatherer((key) => void queryClient.invalidateQueries({ queryKey: key })), [queryClient]);
   useEffect(() => gather.stop, [gather]);
-  useLive(ready ? eventsAddress(sheetId) : undefined, (change: LiveChange) => {
-    const { proofId, accountId, marked, what } = change as Record<string, unknown>;
-    if (typeof proofId === 'string' && typeof accountId === 'string' && typeof marked === 'boolean') {
-      queryClient.setQueryData<SheetMarks>(
-        sheetKeys.marks(sheetId),
-        (now) => now && { marks: withMark(now.marks, proofId, accountId, marked) },
-      );
-    }
-    gather.add(what === 'mark' || what === 'marks' ? sheetKeys.marks(sheetId) : sheetKeys.all(sheetId));
+  useLive(ready ? eventsAddress(sheetId) : undefined, (change) => {
+    gather.add(sheetKeys.marks(sheetId));
+    if ('what' in change && change.what === 'marks') return;
+    gather.add(sheetKeys.sheet(sheetId));
+    gather.add(sheetKeys.pickLists(sheetId));
   });
 }
 
