@@ -133,6 +133,55 @@ describe('what is done with chosen frames', () => {
     await visitor.close();
   });
 
+  it('brings deleted frames back days later, from their own list', async () => {
+    const commission = await makeSet(3);
+    const [first] = await Frame.query().where({ commissionId: commission.id }).orderBy('name');
+    await studio.owner.agent
+      .post(`/api/commissions/${commission.id}/frames/delete`)
+      .send({ frameIds: [first?.id] })
+      .expect(200);
+    const visitor = await open(commission);
+    const { page } = visitor;
+    await page.getByRole('button', { name: 'Deleted 1' }).click();
+    await soon(() => names(visitor)).toBe('HL_0001');
+    await cells(visitor).nth(0).click();
+    await visitor.audit();
+    await page.getByRole('button', { name: 'Bring back' }).click();
+    await page.getByText('1 frame brought back.').waitFor();
+    await page.getByRole('button', { name: 'Frames 3' }).click();
+    await soon(() => names(visitor)).toBe('HL_0001 HL_0002 HL_0003');
+    await visitor.close();
+  });
+
+  it('keeps a frame that is on a sheet, and says why', async () => {
+    const commission = await makeSet(2);
+    const frames = await Frame.query().where({ commissionId: commission.id }).orderBy('name');
+    await studio.owner.agent
+      .post(`/api/commissions/${commission.id}/sheets`)
+      .send({ frameIds: [frames[0]?.id] })
+      .expect(201);
+    const visitor = await open(commission);
+    const { page } = visitor;
+    await cells(visitor).nth(0).click();
+    await page.keyboard.press('ControlOrMeta+a');
+    await page.keyboard.press('Delete');
+    await page.getByRole('button', { name: 'Delete 2 frames' }).click();
+    await page.getByText('HL_0001.jpg was kept: It is on proof sheet 1. Take it off the sheet first.').waitFor();
+    await soon(() => names(visitor)).toBe('HL_0001');
+    await visitor.close();
+  });
+
+  it('changes nothing in a closed commission', async () => {
+    const commission = await makeSet(2);
+    await studio.owner.agent.post(`/api/commissions/${commission.id}/close`).expect(200);
+    const visitor = await open(commission);
+    await cells(visitor).nth(0).click();
+    expect(await chosen(visitor)).toBe('0001');
+    expect(await visitor.page.getByRole('button', { name: 'Add frames' }).count()).toBe(0);
+    expect(await visitor.page.getByRole('button', { name: 'Hide', exact: true }).count()).toBe(0);
+    await visitor.close();
+  });
+
   it('hides and shows again', async () => {
     const commission = await makeSet(4);
     const visitor = await open(commission);

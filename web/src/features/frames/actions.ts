@@ -4,9 +4,10 @@ import type { FrameItem, FramesChanged, FramesChangedExcept } from '../../../../
 import type { SheetSummary, StudioSheet } from '../../../../api/contract/sheets.ts';
 import { api, ApiProblem } from '../../lib/api.ts';
 import { showNotice } from '../../ui/notices.tsx';
+import { sheetKeys } from '../sheets/queries.ts';
 import { counted } from '../uploads/upload-words.ts';
 import { changeFrames, loadedFrames, removeFrames, writeFrames } from './frame-cache.ts';
-import { frameSummaryQuery, frameKeys, sheetChoicesQuery } from './queries.ts';
+import { frameKeys, frameSummaryQuery } from './queries.ts';
 
 /** The API takes at most so many at once. */
 const AT_ONCE = 1000;
@@ -16,7 +17,13 @@ const NOUN = { one: 'frame', many: 'frames' };
 export interface FrameActions {
   hide(ids: readonly string[], hidden: boolean): Promise<void>;
   hang(ids: readonly string[], view: { id: string; title: string } | null): Promise<void>;
-  remove(ids: readonly string[]): Promise<void>;
+  /** @returns whether all of them are gone */
+  remove(ids: readonly string[]): Promise<boolean>;
+  /**
+   * Brings deleted frames back.
+   * @returns whether all of them are back
+   */
+  restore(frames: readonly FrameItem[]): Promise<boolean>;
   putOnSheet(ids: readonly string[], sheet: SheetSummary | null): Promise<void>;
 }
 
@@ -32,6 +39,7 @@ function frameActions(queries: QueryClient, commissionId: string): FrameActions 
     inPortions(ids, (frameIds) => api.post<T>(`${path}/${verb}`, { frameIds, ...more }));
   const changed = (ids: readonly string[]) => {
     void queries.invalidateQueries({ queryKey: frameSummaryQuery(commissionId).queryKey });
+    void queries.invalidateQueries({ queryKey: frameKeys.deleted(commissionId) });
     for (const id of ids) void queries.invalidateQueries({ queryKey: frameKeys.one(id) });
   };
 
@@ -49,7 +57,7 @@ function frameActions(queries: QueryClient, commissionId: string): FrameActions 
     changed(ids);
   }
 
-  async function restore(frames: readonly FrameItem[]): Promise<void> {
+  async function restore(frames: readonly FrameItem[]): Promise<number> {
     const answers = await post<FramesChangedExcept>(
       'restore',
       frames.map((frame) => frame.id),
@@ -61,7 +69,8 @@ function frameActions(queries: QueryClient, commissionId: string): FrameActions 
       frames.filter((frame) => back.has(frame.id)),
     );
     changed([...back]);
-    tellRefused(answers);
+    tellRefused(answers, 'was not brought back');
+    return back.size;
   }
 
   return {
@@ -85,23 +94,37 @@ function frameActions(queries: QueryClient, commissionId: string): FrameActions 
         showNotice(`${counted(ids.length, NOUN)} ${where}.`, { undo });
       }),
 
-    remove: (ids) =>
-      told(async () => {
+    remove: async (ids) => {
+      let allGone = false;
+      await told(async () => {
         const frames = loadedFrames(queries, commissionId, ids);
         const answers = await post<FramesChangedExcept>('delete', ids);
         const gone = answers.flatMap((answer) => answer.frameIds);
         removeFrames(queries, commissionId, gone);
         changed(gone);
         const known = new Set(gone);
-        const undo = () => void told(() => restore(frames.filter((frame) => known.has(frame.id))));
+        const undo = () => void told(async () => void (await restore(frames.filter((frame) => known.has(frame.id)))));
         if (gone.length > 0) showNotice(`${counted(gone.length, NOUN)} deleted.`, { undo });
-        tellRefused(answers);
-      }),
+        tellRefused(answers, 'was kept');
+        allGone = gone.length === ids.length;
+      });
+      return allGone;
+    },
+
+    restore: async (frames) => {
+      let back = 0;
+      await told(async () => {
+        back = await restore(frames);
+        if (back > 0) showNotice(`${counted(back, NOUN)} brought back.`);
+      });
+      return back === frames.length;
+    },
 
     putOnSheet: (ids, sheet) =>
       told(async () => {
         const target = await putAll(commissionId, ids, sheet);
-        void queries.invalidateQueries({ queryKey: sheetChoicesQuery(commissionId).queryKey });
+        void queries.invalidateQueries({ queryKey: sheetKeys.lists(commissionId) });
+        void queries.invalidateQueries({ queryKey: sheetKeys.one(target.id) });
         showNotice(`${counted(ids.length, NOUN)} put on sheet ${target.number}: it has ${counted(target.proofCount, PROOF)} now.`);
       }),
   };
@@ -141,10 +164,10 @@ async function told(act: () => Promise<void>): Promise<void> {
   }
 }
 
-function tellRefused(answers: readonly FramesChangedExcept[]): void {
+function tellRefused(answers: readonly FramesChangedExcept[], what: string): void {
   const refused = answers.flatMap((answer) => answer.refused);
   const [first] = refused;
   if (!first) return;
-  const others = refused.length > 1 ? ` So were ${refused.length - 1} more.` : '';
-  showNotice(`${first.name} was kept: ${first.why}${others}`, { tone: 'problem' });
+  const others = refused.length > 1 ? ` The same goes for ${refused.length - 1} more.` : '';
+  showNotice(`${first.name} ${what}: ${first.why}${others}`, { tone: 'problem' });
 }

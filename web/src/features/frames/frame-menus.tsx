@@ -1,8 +1,8 @@
 import { useQuery } from '@tanstack/react-query';
 import type { SheetSummary } from '../../../../api/contract/sheets.ts';
+import { sheetsQuery } from '../sheets/queries.ts';
 import { Menu } from '../../ui/menu.tsx';
 import type { FrameActions } from './actions.ts';
-import { sheetChoicesQuery } from './queries.ts';
 
 interface Props {
   ids: readonly string[];
@@ -20,7 +20,7 @@ export function HangMenu({ ids, actions, views }: Props & { views: ReadonlyMap<s
 
 /** Puts frames on a sheet that is still being made or open, or on a new one. */
 export function SheetMenu({ ids, actions, commissionId }: Props & { commissionId: string }) {
-  const sheets = useQuery(sheetChoicesQuery(commissionId)).data?.items ?? [];
+  const sheets = useQuery(sheetsQuery(commissionId)).data?.items ?? [];
   const entries = sheets.filter(takesProofs).map((sheet) => ({
     words: `Sheet ${sheet.number} · ${sheet.state.toLowerCase()} · ${sheet.proofCount} ${sheet.proofCount === 1 ? 'proof' : 'proofs'}`,
     onChoose: () => void actions.putOnSheet(ids, sheet),

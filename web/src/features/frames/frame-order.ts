@@ -3,8 +3,8 @@ import { formatAperture, formatFocalLength, formatIso, formatShutter } from '../
 import { formatLocalDay } from './local-time.ts';
 
 export type SortBy = 'taken' | 'name' | 'f-number' | 'exposure-time' | 'iso' | 'focal-length';
-/** Which frames are shown: those that are not hidden, the hidden ones, or those that could not be read. */
-export type Shown = 'visible' | 'hidden' | 'failed';
+/** Which frames are shown: those that are not hidden, the hidden ones, those that could not be read, or those that were deleted. */
+export type Shown = 'visible' | 'hidden' | 'failed' | 'deleted';
 
 /** How the Frames page shows the frames of a commission. */
 export interface FrameWish {
@@ -47,6 +47,8 @@ function compare(one: FrameItem, other: FrameItem, { sort, descending }: FrameWi
 }
 
 function isShown(frame: FrameItem, shown: Shown): boolean {
+  // Deleted frames come in a list of their own.
+  if (shown === 'deleted') return true;
   if (shown === 'failed') return frame.state === 'failed';
   return frame.hidden === (shown === 'hidden');
 }

@@ -72,8 +72,9 @@ function ShownButtons({ summary, shown, onShown }: { summary: FrameSummary | und
     visible: (summary?.total ?? 0) - (summary?.hidden ?? 0),
     hidden: summary?.hidden ?? 0,
     failed: summary?.failed ?? 0,
+    deleted: summary?.deleted ?? 0,
   };
-  const words: Record<Shown, string> = { visible: 'Frames', hidden: 'Hidden', failed: 'Failed' };
+  const words: Record<Shown, string> = { visible: 'Frames', hidden: 'Hidden', failed: 'Failed', deleted: 'Deleted' };
   const entries = (Object.keys(words) as Shown[]).filter((one) => one === 'visible' || one === shown || counts[one] > 0);
   return entries.map((one) => (
     <Button key={one} size="small" tone={one === shown ? 'first' : 'plain'} aria-pressed={one === shown} onClick={() => onShown(one)}>

@@ -1,7 +1,6 @@
 import { infiniteQueryOptions, queryOptions } from '@tanstack/react-query';
 import type { Views } from '../../../../api/contract/commissions.ts';
-import type { Frame, FrameList, FrameSummary } from '../../../../api/contract/frames.ts';
-import type { SheetSummary } from '../../../../api/contract/sheets.ts';
+import type { Frame, FrameList, FrameQuery, FrameSummary } from '../../../../api/contract/frames.ts';
 import { api } from '../../lib/api.ts';
 
 /** The first page is small, so that something is seen soon; the rest comes in large ones. */
@@ -11,6 +10,7 @@ const PAGE = 1000;
 export const frameKeys = {
   all: (commissionId: string) => ['commissions', commissionId, 'frames'] as const,
   list: (commissionId: string) => ['commissions', commissionId, 'frames', 'list'] as const,
+  deleted: (commissionId: string) => ['commissions', commissionId, 'frames', 'deleted'] as const,
   one: (frameId: string) => ['frames', frameId] as const,
 };
 
@@ -19,17 +19,26 @@ export const frameKeys = {
  * filters and selects without asking again. They arrive in the order in which they are shown first, by time taken.
  */
 export function framesQuery(commissionId: string) {
+  // Live changes are written into the pages; all of them are asked for anew only when something was missed.
+  return pagesOf(commissionId, frameKeys.list(commissionId), {}, 5 * 60_000);
+}
+
+/** Frames that were deleted and can still be brought back, in the same way. */
+export function deletedFramesQuery(commissionId: string) {
+  return pagesOf(commissionId, frameKeys.deleted(commissionId), { deleted: 'only' }, 0);
+}
+
+function pagesOf(commissionId: string, queryKey: readonly string[], more: Pick<FrameQuery, 'deleted'>, staleTime: number) {
   return infiniteQueryOptions({
-    queryKey: frameKeys.list(commissionId),
+    queryKey,
     queryFn: ({ pageParam, signal }) =>
       api.get<FrameList>(`/api/commissions/${commissionId}/frames`, {
-        query: { sort: 'taken', after: pageParam, limit: pageParam === null ? FIRST_PAGE : PAGE },
+        query: { sort: 'taken', after: pageParam, limit: pageParam === null ? FIRST_PAGE : PAGE, ...more },
         signal,
       }),
     initialPageParam: null as string | null,
     getNextPageParam: (last) => last.next,
-    // Live changes are written into the pages; all of them are asked for anew only when something was missed.
-    staleTime: 5 * 60_000,
+    staleTime,
   });
 }
 
@@ -53,13 +62,5 @@ export function viewTitlesQuery(commissionId: string) {
   return queryOptions({
     queryKey: ['commissions', commissionId, 'views'],
     queryFn: ({ signal }) => api.get<Views>(`/api/commissions/${commissionId}/views`, { signal }),
-  });
-}
-
-/** The sheets on which frames can be put. */
-export function sheetChoicesQuery(commissionId: string) {
-  return queryOptions({
-    queryKey: [...frameKeys.all(commissionId), 'sheets'],
-    queryFn: ({ signal }) => api.get<{ items: SheetSummary[] }>(`/api/commissions/${commissionId}/sheets`, { signal }),
   });
 }

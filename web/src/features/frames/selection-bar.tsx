@@ -10,12 +10,14 @@ interface Props {
   frames: readonly FrameItem[];
   views: ReadonlyMap<string, { title: string; number: number }>;
   actions: FrameActions;
+  /** They were deleted: they can be brought back and nothing else. */
+  deleted: boolean;
   onDelete: () => void;
   onNone: () => void;
 }
 
 /** Over the lower edge while frames are chosen: how many, and what can be done with them. */
-export function SelectionBar({ commissionId, frames, views, actions, onDelete, onNone }: Props) {
+export function SelectionBar({ commissionId, frames, views, actions, deleted, onDelete, onNone }: Props) {
   const ids = frames.map((frame) => frame.id);
   const ready = frames.filter((frame) => frame.state === 'ready').map((frame) => frame.id);
   const someHidden = frames.some((frame) => frame.hidden);
@@ -28,21 +30,29 @@ export function SelectionBar({ commissionId, frames, views, actions, onDelete, o
       <Button size="small" tone="quiet" className="mr-auto" onClick={onNone}>
         None
       </Button>
-      {ready.length > 0 ? <SheetMenu ids={ready} actions={actions} commissionId={commissionId} /> : null}
-      <HangMenu ids={ids} actions={actions} views={views} />
-      {someVisible ? (
-        <Button size="small" onClick={() => void actions.hide(ids, true)}>
-          Hide
+      {deleted ? (
+        <Button size="small" onClick={() => void actions.restore(frames)}>
+          Bring back
         </Button>
-      ) : null}
-      {someHidden ? (
-        <Button size="small" onClick={() => void actions.hide(ids, false)}>
-          Show again
-        </Button>
-      ) : null}
-      <Button size="small" tone="danger" onClick={onDelete}>
-        Delete
-      </Button>
+      ) : (
+        <>
+          {ready.length > 0 ? <SheetMenu ids={ready} actions={actions} commissionId={commissionId} /> : null}
+          <HangMenu ids={ids} actions={actions} views={views} />
+          {someVisible ? (
+            <Button size="small" onClick={() => void actions.hide(ids, true)}>
+              Hide
+            </Button>
+          ) : null}
+          {someHidden ? (
+            <Button size="small" onClick={() => void actions.hide(ids, false)}>
+              Show again
+            </Button>
+          ) : null}
+          <Button size="small" tone="danger" onClick={onDelete}>
+            Delete
+          </Button>
+        </>
+      )}
     </div>
   );
 }

@@ -3,7 +3,7 @@ import { useSearchParams } from 'react-router-dom';
 import type { FrameWish, Shown, SortBy } from './frame-order.ts';
 
 const SORTS: SortBy[] = ['taken', 'name', 'f-number', 'exposure-time', 'iso', 'focal-length'];
-const SHOWN: Shown[] = ['visible', 'hidden', 'failed'];
+const SHOWN: Shown[] = ['visible', 'hidden', 'failed', 'deleted'];
 
 /** What is shown and how it is sorted stands in the address, so that it survives a reload and the large view shares it. */
 export function useFrameWish(): [FrameWish, (change: Partial<FrameWish>) => void, string] {

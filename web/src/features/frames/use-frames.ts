@@ -2,11 +2,11 @@ import { useInfiniteQuery, useQuery } from '@tanstack/react-query';
 import { useDeferredValue, useEffect, useMemo } from 'react';
 import type { FrameItem } from '../../../../api/contract/frames.ts';
 import { arrange, type FrameWish } from './frame-order.ts';
-import { framesQuery, viewTitlesQuery } from './queries.ts';
+import { deletedFramesQuery, framesQuery, viewTitlesQuery } from './queries.ts';
 
 /** All frames of a commission, page after page, and those among them that are wished for, in the order wished for. */
 export function useFrames(commissionId: string, wish: FrameWish) {
-  const query = useInfiniteQuery(framesQuery(commissionId));
+  const query = useInfiniteQuery(wish.shown === 'deleted' ? deletedFramesQuery(commissionId) : framesQuery(commissionId));
   const { hasNextPage, isFetching, isError, fetchNextPage } = query;
   useEffect(() => {
     if (hasNextPage && !isFetching && !isError) void fetchNextPage();

@@ -76,7 +76,10 @@ class Gatherer {
     this.#frames.clear();
     this.#all = false;
     void this.queries.invalidateQueries({ queryKey: frameSummaryQuery(this.commissionId).queryKey });
-    if (all) return void (await this.queries.invalidateQueries({ queryKey: frameKeys.list(this.commissionId) }));
+    if (all) {
+      void this.queries.invalidateQueries({ queryKey: frameKeys.deleted(this.commissionId) });
+      return this.queries.invalidateQueries({ queryKey: frameKeys.list(this.commissionId) });
+    }
     const missing = ids.length > FEW ? await this.#newest(ids) : ids;
     for (const id of missing) await this.#one(id);
   }

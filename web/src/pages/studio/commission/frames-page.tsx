@@ -29,6 +29,9 @@ export interface FramesOutlet {
   shown: readonly FrameItem[];
   views: ReadonlyMap<string, { title: string; number: number }>;
   actions: FrameActions;
+  /** Whether frames may be changed, and whether those shown were deleted. */
+  can: boolean;
+  deleted: boolean;
   /** Opens another frame, or goes back to all of them with the focus on the one that was looked at. */
   go: (id: string) => void;
   close: (id: string) => void;
@@ -53,14 +56,16 @@ export function Component() {
   const [aboveRef, aboveHeight] = useHeight();
   const grid = useRef<FrameGridHandle>(null);
   const { addressOf, open, outlet } = useWays(id, search, grid, setSelection);
-  const askToDelete = () => chosen.length > 0 && setAsking('delete');
+  const deleted = wish.shown === 'deleted';
+  const can = commission.closedAt === null;
+  const askToDelete = () => can && !deleted && chosen.length > 0 && setAsking('delete');
 
   return (
     <>
       <PageTitle title="Frames" where={commission.title} hidden />
       <div ref={aboveRef} className="grid gap-5 pb-4">
-        <UploadPanel queue={queue} noun={{ one: 'frame', many: 'frames' }} />
-        {all.length > 0 ? (
+        {can ? <UploadPanel queue={queue} noun={{ one: 'frame', many: 'frames' }} /> : null}
+        {all.length > 0 || deleted || (summary?.deleted ?? 0) > 0 ? (
           <FrameToolbar
             summary={summary}
             wish={wish}
@@ -79,7 +84,11 @@ export function Component() {
           />
         ) : null}
       </div>
-      <QueryView query={query} isEmpty={() => all.length === 0 && !query.hasNextPage} empty={<NoFrames uploading={uploading} />}>
+      <QueryView
+        query={query}
+        isEmpty={() => all.length === 0 && !query.hasNextPage && !deleted}
+        empty={<NoFrames uploading={uploading} />}
+      >
         {() => (
           <section aria-label="All frames" className="border-t border-ink pt-2.5">
             <p className="flex items-center justify-between pb-1.5">
@@ -106,12 +115,13 @@ export function Component() {
           </section>
         )}
       </QueryView>
-      {chosen.length > 0 ? (
+      {can && chosen.length > 0 ? (
         <SelectionBar
           commissionId={id}
           frames={chosen}
           views={views}
           actions={actions}
+          deleted={deleted}
           onDelete={askToDelete}
           onNone={() => setSelection(chooseNone(selection))}
         />
@@ -119,11 +129,11 @@ export function Component() {
       <DeleteDialog
         open={asking === 'delete'}
         frames={chosen}
-        onDelete={() => actions.remove(chosen.map((frame) => frame.id))}
+        onDelete={async () => void (await actions.remove(chosen.map((frame) => frame.id)))}
         onClose={() => setAsking(null)}
       />
       <KeysDialog open={asking === 'keys'} onClose={() => setAsking(null)} />
-      <Outlet context={{ all, shown, views, actions, ...outlet } satisfies FramesOutlet} />
+      <Outlet context={{ all, shown, views, actions, can, deleted, ...outlet } satisfies FramesOutlet} />
     </>
   );
 }

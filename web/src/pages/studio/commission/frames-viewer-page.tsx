@@ -1,6 +1,7 @@
 import { useQuery } from '@tanstack/react-query';
 import { useState } from 'react';
 import { useOutletContext, useParams } from 'react-router-dom';
+import type { FrameItem } from '../../../../../api/contract/frames.ts';
 import { DeleteDialog } from '../../../features/frames/delete-dialog.tsx';
 import { HangMenu, SheetMenu } from '../../../features/frames/frame-menus.tsx';
 import { FrameViewer } from '../../../features/frames/frame-viewer.tsx';
@@ -12,17 +13,14 @@ import type { FramesOutlet } from './frames-page.tsx';
 
 /** /commissions/:commissionId/frames/:frameId, above the page of all frames. */
 export function Component() {
-  const { commissionId = '', frameId = '' } = useParams();
-  const { all, shown, views, actions, go, close } = useOutletContext<FramesOutlet>();
-  const [asking, setAsking] = useState(false);
+  const { frameId = '' } = useParams();
+  const { all, shown, can, go, close } = useOutletContext<FramesOutlet>();
   const list = shown.some((one) => one.id === frameId) ? shown : all;
   const at = list.findIndex((one) => one.id === frameId);
   const frame = list[at];
   if (!frame) return <NotLoaded frameId={frameId} onClose={() => close(frameId)} />;
   const [before, after] = [list[at - 1], list[at + 1]];
-
-  const remove = async () => {
-    await actions.remove([frame.id]);
+  const leave = () => {
     const next = after ?? before;
     if (next) go(next.id);
     else close(frame.id);
@@ -36,6 +34,28 @@ export function Component() {
       onGo={go}
       onClose={() => close(frame.id)}
     >
+      {can ? <FrameTools frame={frame} onGone={leave} /> : null}
+    </FrameViewer>
+  );
+}
+
+/** What can be done with the frame that is looked at; `onGone` is called when it has left the frames shown. */
+function FrameTools({ frame, onGone }: { frame: FrameItem; onGone: () => void }) {
+  const { commissionId = '' } = useParams();
+  const { views, actions, deleted } = useOutletContext<FramesOutlet>();
+  const [asking, setAsking] = useState(false);
+  const leaveIf = (gone: boolean) => {
+    if (gone) onGone();
+  };
+  if (deleted) {
+    return (
+      <Button size="small" onClick={() => void actions.restore([frame]).then(leaveIf)}>
+        Bring back
+      </Button>
+    );
+  }
+  return (
+    <>
       {frame.state === 'ready' ? <SheetMenu ids={[frame.id]} actions={actions} commissionId={commissionId} /> : null}
       <HangMenu ids={[frame.id]} actions={actions} views={views} />
       <Button size="small" onClick={() => void actions.hide([frame.id], !frame.hidden)}>
@@ -44,8 +64,13 @@ export function Component() {
       <Button size="small" tone="danger" onClick={() => setAsking(true)}>
         Delete
       </Button>
-      <DeleteDialog open={asking} frames={[frame]} onDelete={remove} onClose={() => setAsking(false)} />
-    </FrameViewer>
+      <DeleteDialog
+        open={asking}
+        frames={[frame]}
+        onDelete={() => actions.remove([frame.id]).then(leaveIf)}
+        onClose={() => setAsking(false)}
+      />
+    </>
   );
 }
 
