@@ -19,6 +19,7 @@ const doorPages: RouteObject[] = [
 
 /** The studio's pages, inside the shell with the navigation at the left. */
 const studioPages: RouteObject[] = [
+  { path: 'desk', lazy: () => import('./pages/studio/desk-page.tsx') },
   {
     path: 'settings',
     lazy: () => import('./pages/studio/settings/settings-layout.tsx'),
@@ -46,6 +47,7 @@ const studioPages: RouteObject[] = [
       { path: 'picks', lazy: () => import('./pages/studio/commission/picks-page.tsx') },
       { path: 'finals', lazy: () => import('./pages/studio/commission/finals-page.tsx') },
       { path: 'delivery', lazy: () => import('./pages/studio/commission/delivery-page.tsx') },
+      { path: 'record', lazy: () => import('./pages/studio/commission/record-page.tsx') },
     ],
   },
 ];
