@@ -105,7 +105,7 @@ async function startPrograms(
 ): Promise<void> {
   const { dev, dataDir, ports } = settings;
   program(running, { name: 'The worker', logName: 'worker', logDir, script: 'api/worker.ts', dev }, env);
-  if (await isEmpty(String(env.ORIEL_DATABASE_URL))) {
+  if (settings.demo && (await isEmpty(String(env.ORIEL_DATABASE_URL)))) {
     await step('Making the demo: drawing its pictures once takes a minute or two', () => makeDemo(dataDir, env, running));
   }
   program(running, { name: 'The API', logName: 'api', logDir, script: 'api/server.ts', dev }, env);

@@ -21,7 +21,7 @@ time, .quiet { color: #555; }
 h2 { font-size: 1.375rem; line-height: 1.3; margin: 0 0 1rem; overflow-wrap: anywhere; }
 dl { display: grid; grid-template-columns: max-content 1fr; gap: .25rem 1rem; margin: 0 0 1.5rem; padding: 1rem; border: 1px solid #8a8a8a; background: #fff; }
 dt { color: #555; } dd { margin: 0; overflow-wrap: anywhere; }
-iframe { display: block; width: 100%; height: 40rem; border: 1px solid #8a8a8a; background: #fff; }
+iframe { display: block; width: 100%; height: clamp(20rem, 60vh, 40rem); border: 1px solid #8a8a8a; background: #fff; }
 pre { margin: 0; padding: 1rem; border: 1px solid #8a8a8a; background: #fff; white-space: pre-wrap; overflow-wrap: anywhere; font: inherit; }
 pre.source { font: .875rem/1.5 monospace; }
 h3, summary { font-size: 1rem; font-weight: 700; margin: 1.5rem 0 .5rem; }

@@ -1,5 +1,4 @@
 import fs from 'node:fs';
-import path from 'node:path';
 import { pino } from 'pino';
 import { loadConfig } from '../../api/config.ts';
 import { openHouse } from '../../api/house.ts';

@@ -5,6 +5,8 @@ import path from 'node:path';
 export interface StartSettings {
   dataDir: string;
   dev: boolean;
+  /** Whether an empty database gets the demo. */
+  demo: boolean;
   host: string;
   ports: Ports;
   /** Real services outside, where the environment names them; the local one of that kind is not started then. */
@@ -54,6 +56,12 @@ function readPorts(environment: Environment): Ports {
   return Object.fromEntries(entries) as unknown as Ports;
 }
 
+function readDemoSwitch(text: string | undefined): boolean {
+  if (text === undefined || text === '' || text === 'yes') return true;
+  if (text === 'no') return false;
+  throw new Error(`ORIEL_DEMO must be yes or no, not "${text}".`);
+}
+
 /** Adds the lines of a .env file to the environment; what is set already wins. */
 export function loadDotEnv(root: string): void {
   const file = path.join(root, '.env');
@@ -73,6 +81,7 @@ export function readSettings(environment: Environment, argv: string[]): StartSet
   return {
     dataDir: path.resolve(environment.ORIEL_DATA_DIR || 'data'),
     dev: argv.includes('--dev'),
+    demo: readDemoSwitch(environment.ORIEL_DEMO),
     host: environment.ORIEL_HOST || '127.0.0.1',
     ports: readPorts(environment),
     outside,
