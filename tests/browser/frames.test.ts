@@ -1,5 +1,5 @@
 import { createHash } from 'node:crypto';
-import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { afterAll, beforeAll, describe, expect, it, vi } from 'vitest';
 import { announce } from '../../api/db/live.ts';
 import { Frame } from '../../api/models/Frame.ts';
 import { originalKey, RECIPE } from '../../api/services/storage-keys.ts';
@@ -7,6 +7,10 @@ import { drawPicture, makeFrame } from '../support/factories/frame.ts';
 import { makeCommission } from '../support/factories/commission.ts';
 import { makeStudio, type MadeStudio } from '../support/factories/studio.ts';
 import { SCREENS, startSite, type Site, type Visitor } from './support.ts';
+
+/** A machine that runs other tests beside these is slow, which is no failure. */
+const PATIENCE = 60_000;
+vi.setConfig({ testTimeout: 4 * PATIENCE });
 
 let site: Site;
 let studio: MadeStudio;
@@ -33,12 +37,13 @@ async function makeSet(count: number) {
 
 async function open(commission: { id: string }, screen = SCREENS.desktop): Promise<Visitor> {
   const visitor = await site.visit(`/commissions/${commission.id}/frames`, { cookie: studio.owner.cookie, ...screen });
+  visitor.page.setDefaultTimeout(PATIENCE);
   await visitor.page.getByRole('gridcell').first().waitFor();
   return visitor;
 }
 
-/** What comes sooner or later: this machine may be busy. */
-const soon = <T>(read: () => Promise<T>) => expect.poll(read, { timeout: 20_000 });
+/** What comes sooner or later. */
+const soon = <T>(read: () => Promise<T>) => expect.poll(read, { timeout: PATIENCE });
 
 const cells = ({ page }: Visitor) => page.getByRole('gridcell');
 const names = async (visitor: Visitor) =>

@@ -20,10 +20,10 @@ export function startCard() {
         .toBuffer();
       return this.file(name, picture);
     },
-    /** An uncompressed picture of 27 MB: four parts of 8 MiB. */
+    /** An uncompressed picture of 17 MB: three parts. */
     async largeTiff(name: string): Promise<string> {
       seed += 1;
-      const picture = sharp({ create: { width: 3000, height: 3000, channels: 3, background: { r: 90 + seed, g: 80, b: 70 } } });
+      const picture = sharp({ create: { width: 2400, height: 2400, channels: 3, background: { r: 90 + seed, g: 80, b: 70 } } });
       return this.file(name, await picture.tiff({ compression: 'none' }).toBuffer());
     },
     async file(name: string, content: Buffer | string): Promise<string> {
@@ -65,4 +65,25 @@ export function notePart(page: Page): number[] {
     if (number && request.method() === 'PUT') parts.push(Number(number));
   });
   return parts;
+}
+
+/**
+ * Keeps the parts that `which` names waiting between the server and its store. (To hold them back in the browser would
+ * send every byte through the test as well.)
+ */
+export function holdParts({ ctx }: House, which: (number: number) => boolean) {
+  const store = ctx.store;
+  const upload = store.uploadPart.bind(store);
+  const held: { release: () => void; lose: () => void }[] = [];
+  store.uploadPart = async (key, multipartId, number, part) => {
+    if (which(number)) {
+      await new Promise<void>((resolve, reject) => held.push({ release: resolve, lose: () => reject(new Error('Lost by the test.')) }));
+    }
+    return upload(key, multipartId, number, part);
+  };
+  const end = (how: 'release' | 'lose') => {
+    store.uploadPart = upload;
+    for (const one of held) one[how]();
+  };
+  return { held, release: () => end('release'), lose: () => end('lose') };
 }

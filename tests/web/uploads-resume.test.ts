@@ -62,6 +62,17 @@ describe('after a reload', () => {
     expect(shelf.files.size).toBe(0);
   });
 
+  it('does not list a file twice that was dropped again before the earlier visit was read', async () => {
+    const { clock, server, shelf, there } = await cutOff([fileOf('HL_1.tif', 300)]);
+    const { queue, states } = startQueue({ clock, server, shelf });
+    queue.add([fileOf('HL_1.tif', 300, 'again/')]);
+    await queue.restore();
+    await clock.pass(60_000);
+    expect(states()).toEqual({ 'again/HL_1.tif': 'done' });
+    for (const number of there) expect(server.calls).not.toContain(`part HL_1.tif ${number}`);
+    expect(shelf.files.size).toBe(0);
+  });
+
   it('does not take another file of the same name for the one it waits for', async () => {
     const { clock, server, shelf } = await cutOff([fileOf('HL_1.tif', 300)]);
     const { queue, files } = startQueue({ clock, server, shelf });

@@ -19,6 +19,10 @@ export class Memory {
     if (ids.length > 0) this.#then(() => this.store.drop(ids));
   }
 
+  forget(id: string): void {
+    this.#then(() => this.store.drop([id]));
+  }
+
   /** What an earlier visit left, in the order in which it came. */
   async load() {
     const files = await this.store.load().catch(() => []);

@@ -157,7 +157,10 @@ export class UploadQueue {
   /** Brings back what an earlier visit left, and goes on with what may be opened without asking. */
   async restore(): Promise<void> {
     for (const file of await this.#memory.load()) {
-      if (!this.#shelves.all.has(file.id)) this.#put(itemOfUnfinished(file));
+      // What was dropped again before this was read is on its way already.
+      if (this.#shelves.all.has(file.id)) continue;
+      if (this.#shelves.like(file).some((item) => item.file)) this.#memory.forget(file.id);
+      else this.#put(itemOfUnfinished(file));
     }
     this.store.touchList();
     await this.continueHeld(false);
