@@ -33,8 +33,9 @@ function OwnName({ me }: { me: Me }) {
     resolver: zodResolver(ChangeMe),
     defaultValues: { name: me.account.name, shortcuts: me.account.shortcuts },
   });
+  const patch = useMutation({ mutationFn: (change: ChangeMe) => api.patch<Me>('/api/me', change) });
   const save = async (change: ChangeMe) => {
-    queries.setQueryData(meKey, await api.patch<Me>('/api/me', change));
+    queries.setQueryData(meKey, await patch.mutateAsync(change));
     showNotice('Saved.');
   };
   const submit = form.handleSubmit((change) => save(change).catch((error: unknown) => landErrors(form, error)));
@@ -59,8 +60,9 @@ function OwnPassword({ email }: { email: string }) {
     resolver: zodResolver(ChangePassword),
     defaultValues: { current: '', password: '' },
   });
+  const put = useMutation({ mutationFn: (input: ChangePassword) => api.put('/api/me/password', input) });
   const change = async (input: ChangePassword) => {
-    await api.put('/api/me/password', input);
+    await put.mutateAsync(input);
     form.reset();
     showNotice('The new password counts from now on. Other browsers were signed out.');
   };

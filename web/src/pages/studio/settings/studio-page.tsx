@@ -1,4 +1,4 @@
-import { useQueries, useQueryClient } from '@tanstack/react-query';
+import { useMutation, useQueries, useQueryClient } from '@tanstack/react-query';
 import { useState } from 'react';
 import type { ChangeStudio, StudioSettings } from '../../../../../api/contract/studios.ts';
 import { meKey } from '../../../features/sign-in/queries.ts';
@@ -16,10 +16,13 @@ export function Component() {
   const [studio, currencies] = useQueries({ queries: [studioQuery, currenciesQuery] });
   const [overtaken, setOvertaken] = useState(false);
   const [loads, setLoads] = useState(0);
+  const change = useMutation({
+    mutationFn: ({ wish, version }: { wish: ChangeStudio; version: number }) => api.patch<StudioSettings>('/api/studio', wish, { version }),
+  });
   const error = studio.error ?? currencies.error;
-  const save = async (change: ChangeStudio, version: number): Promise<StudioSettings> => {
+  const save = async (wish: ChangeStudio, version: number): Promise<StudioSettings> => {
     try {
-      const saved = await api.patch<StudioSettings>('/api/studio', change, { version });
+      const saved = await change.mutateAsync({ wish, version });
       queries.setQueryData(studioKeys.settings, saved);
       void queries.invalidateQueries({ queryKey: meKey });
       setOvertaken(false);
