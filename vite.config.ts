@@ -72,7 +72,7 @@ export default defineConfig({
           name: 'browser',
           include: ['tests/browser/**/*.test.ts'],
           globalSetup: ['tests/support/cluster.ts', 'tests/browser/build-web.ts'],
-          testTimeout: 60_000,
+          testTimeout: 120_000,
         },
       },
     ],

@@ -54,7 +54,7 @@ describe('the guest’s sheet', () => {
     await open.lead.agent.put(`/api/guest${open.address}/proofs/${open.proofs[0]?.id}/mark`);
     const visitor = await visit(open, 'lead', screen);
     await picture(visitor, 1).waitFor();
-    for (const surround of ['paper', 'light grey', 'mid grey', 'black']) {
+    for (const surround of ['paper', 'mid grey', 'black']) {
       await visitor.page.getByRole('button', { name: /^Surround:/ }).click();
       await visitor.page.getByRole('button', { name: surround, exact: true }).click();
       await visitor.audit();

@@ -68,5 +68,6 @@ export function formatAge(value: Time, now: Date = new Date()): string {
 
 /** Whole days from now to a moment, rounded up; 0 or less when it has passed. */
 export function daysLeft(value: Time, now: Date = new Date()): number {
-  return Math.ceil((read(value).getTime() - now.getTime()) / 86_400_000);
+  // Adding 0 turns the -0 of a day that has just passed into a plain 0.
+  return Math.ceil((read(value).getTime() - now.getTime()) / 86_400_000) + 0;
 }

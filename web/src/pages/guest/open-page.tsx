@@ -54,31 +54,30 @@ export function Component() {
   );
 }
 
-/** A link that has ended, was taken back, or is not known: which of them, and the way to a new one. */
+const TITLES: Record<string, 'replaced' | 'withdrawn' | 'ended'> = { replaced: 'replaced', withdrawn: 'withdrawn', ended: 'ended' };
+
+/** A link that was replaced, taken back, is over or is not known: which of them, and what to do about it. */
 function DeadLink({ token, error }: { token: string; error: ApiProblem }) {
   const { t } = useTranslation();
   const renew = useMutation({ mutationFn: () => api.post<Asked>('/api/new-link', { token }) });
-  const canRenew = error.status === 410 || error.status === 404;
+  const why = TITLES[error.code ?? ''] ?? 'unknown';
   return (
     <>
-      <PageTitle title={t('open.deadTitle')} />
+      <PageTitle title={t(`open.${why}`)} />
       <p className="mt-3">{error.detail}</p>
       {renew.isSuccess ? (
         <p role="status" className="mt-5 border-l-4 border-verdigris bg-sheet px-4 py-2.5">
           {renew.data.says}
         </p>
-      ) : canRenew ? (
-        <>
-          <p className="mt-1 text-mute">{t('open.askWords')}</p>
-          <div className="mt-6 flex flex-wrap gap-3">
+      ) : (
+        <div className="mt-6 flex flex-wrap gap-3">
+          {why === 'replaced' ? (
             <Button tone="first" busy={renew.isPending} onClick={() => renew.mutate()}>
               {t('open.ask')}
             </Button>
-            <LinkButton to="/mine">{t('refused.mine')}</LinkButton>
-          </div>
-        </>
-      ) : (
-        <p className="mt-1 text-mute">{t('open.cutShort')}</p>
+          ) : null}
+          <LinkButton to="/mine">{t('refused.mine')}</LinkButton>
+        </div>
       )}
       {renew.isError ? (
         <p role="alert" className="mt-4 font-bold text-copper">
