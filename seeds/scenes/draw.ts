@@ -50,16 +50,19 @@ export async function drawDemoFrames(options: DrawOptions): Promise<DrawnFrame[]
   const plan = planFrames(today, longSide).map((planned, number) => ({ ...planned, number }));
   const wanted = plan.filter(({ take }) => !options.scenes || options.scenes.includes(take.scene));
   const total = wanted.reduce((sum, { frames }) => sum + frames.length, 0);
-  const waiting: number[] = [];
+  const waiting: (PlannedTake & { number: number })[] = [];
   let drawn = 0;
   for (const planned of wanted) {
     const missing = await missingFiles(planned, dir);
     drawn += planned.frames.length - missing;
-    if (missing > 0) waiting.push(planned.number);
+    if (missing > 0) waiting.push(planned);
   }
   options.onProgress?.(drawn, total);
-  const orders = waiting.map((take): Order => ({ take, dir, today: today.toISOString(), longSide }));
-  await inChildren(orders, () => options.onProgress?.(++drawn, total));
+  const order = (take: number): Order => ({ take, dir, today: today.toISOString(), longSide });
+  await inChildren(
+    byPlace(waiting).map((takes) => takes.map(({ number }) => order(number))),
+    () => options.onProgress?.(++drawn, total),
+  );
   return wanted.flatMap(({ frames }) => frames.map((frame) => drawnFrame(frame, dir)));
 }
 
@@ -97,14 +100,21 @@ function drawnFrame(frame: PlannedFrame, dir: string): DrawnFrame {
   };
 }
 
-/** Hands the orders to as many children as there are cores, one after the other each. */
-async function inChildren(orders: Order[], onFrame: () => void): Promise<void> {
-  const queue = [...orders];
+/** Takes of one place stay together, so that its city is built once; the longest rows come first, so that no core is left alone. */
+function byPlace<T extends PlannedTake>(takes: readonly T[]): T[][] {
+  const places = new Map<unknown, T[]>();
+  for (const take of takes) places.set(take.scene.build, [...(places.get(take.scene.build) ?? []), take]);
+  return [...places.values()].sort((a, b) => b.length - a.length);
+}
+
+/** Hands rows of orders to as many children as there are cores. */
+async function inChildren(rows: Order[][], onFrame: () => void): Promise<void> {
+  const queue = [...rows];
   const crew = Array.from({ length: Math.min(queue.length, os.availableParallelism()) }, () => startChild());
   try {
     await Promise.all(
       crew.map(async (child) => {
-        for (let order = queue.shift(); order; order = queue.shift()) await carryOut(child, order, onFrame);
+        for (let row = queue.shift(); row; row = queue.shift()) for (const order of row) await carryOut(child, order, onFrame);
       }),
     );
   } finally {

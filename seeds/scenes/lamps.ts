@@ -2,20 +2,23 @@ import type { Lamp } from './surface.ts';
 import type { Vec3 } from './vector.ts';
 
 const CELL = 12;
-/** Light below this share of full sunlight (0.2 lux) is left out. */
+/** Light below this share of the skylight is not seen, and neither is what is under 0.2 lux. */
+const SEEN_SHARE = 0.012;
 const LEAST = 0.000002;
 
 /** Lamps by the piece of ground they reach, so that a point asks only the few that matter. */
 export class Lamplight {
   private readonly cells = new Map<number, Lamp[]>();
 
-  constructor(lamps: readonly Lamp[], strength: number) {
+  /** @param skylight light on open ground, beside which lamps show or do not */
+  constructor(lamps: readonly Lamp[], strength: number, skylight: number) {
     if (strength <= 0) return;
-    for (const lamp of lamps) this.place({ ...lamp, power: lamp.power * strength });
+    const least = Math.max(LEAST, skylight * SEEN_SHARE);
+    for (const lamp of lamps) this.place({ ...lamp, power: lamp.power * strength }, least);
   }
 
-  private place(lamp: Lamp): void {
-    const reach = Math.min(70, Math.sqrt(lamp.power / LEAST));
+  private place(lamp: Lamp, least: number): void {
+    const reach = Math.min(70, Math.sqrt(lamp.power / least));
     for (let x = Math.floor((lamp.x - reach) / CELL); x <= (lamp.x + reach) / CELL; x++) {
       for (let z = Math.floor((lamp.z - reach) / CELL); z <= (lamp.z + reach) / CELL; z++) {
         const key = x * 65536 + z;

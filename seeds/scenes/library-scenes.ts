@@ -47,7 +47,7 @@ function promenade(mesh: Mesh, random: Random, leaves: boolean): void {
 const build = (mesh: Mesh, random: Random): void => ropewalk(mesh, random, false);
 
 export const libraryScenes: Scene[] = [
-  { name: 'library-dawn', words: 'Ropewalk Library across the basin, first light', format: 'landscape', camera: level([0, 1.7, -9.5], 33, { rise: 3.2 }), light: 'dawn', weather: { sunAzimuth: 150, sunElevation: 3.2, clouds: 0.45 }, mirror: 'water', seed: 11, build },
+  { name: 'library-dawn', words: 'Ropewalk Library across the basin, first light', format: 'landscape', camera: level([0, 1.7, -9.5], 33, { rise: 3.2 }), light: 'dawn', weather: { sunAzimuth: 150, sunElevation: 5, clouds: 0.45 }, mirror: 'water', seed: 11, build },
   { name: 'library-blue', words: 'East front across the basin, lamps lit', format: 'landscape', camera: level([0, 1.7, -9.5], 33, { rise: 3.2 }), light: 'blue', mirror: 'water', seed: 11, build },
   { name: 'library-fog', words: 'The three gables in harbour fog', format: 'landscape', camera: level([-16, 1.7, -9.5], 40, { rise: 3, yaw: 4 }), light: 'fog', mirror: 'water', seed: 11, build },
   { name: 'library-oriel', words: 'The oriel from the quay edge', format: 'landscape', camera: level([-4, 1.6, QUAY + 0.8], 20, { rise: 7.5, yaw: 5 }), light: 'overcast', mirror: null, seed: 11, build },

@@ -150,7 +150,7 @@ function renderMirror(subject: Subject, real: Camera, lighting: Lighting, level:
   const camera = mirrored(resized(real, real.width >> 1), level);
   const { mesh, light } = subject;
   const skylight = new Skylight(mesh, resized(camera, camera.width >> 2), lighting.patches, lighting.bounce, level);
-  const shader = new Shader(mesh, camera, light, lighting, skylight, null, false);
+  const shader = new Shader(mesh, camera, light, lighting, skylight, null, false, true);
   const raster = new Raster(camera.width, camera.height);
   raster.clear(0);
   // Wet streets lie at two heights, a kerb apart: what is lower than that mirrors nothing.

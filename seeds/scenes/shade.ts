@@ -29,6 +29,8 @@ export class Shader {
     private readonly skylight: Skylight,
     private readonly mirror: MirrorPicture | null,
     private readonly wet: boolean,
+    /** Panes show the sky alone: enough for what waves will break up. */
+    private readonly quick = false,
   ) {
     for (let i = 0; i < AIR; i++) {
       const angle = ((i + 0.5) / AIR) * Math.PI * 2;
@@ -155,7 +157,8 @@ export class Shader {
     rx *= l;
     ry *= l;
     rz *= l;
-    this.lighting.neighbours.reflect(x + n[0] * 0.6, y, z + n[2] * 0.6, rx, ry, rz, extra);
+    if (this.quick) this.lighting.sky.glance(rx, ry, rz, extra);
+    else this.lighting.neighbours.reflect(x + n[0] * 0.6, y, z + n[2] * 0.6, rx, ry, rz, extra);
     const grazing = (1 + facing) * (1 + facing);
     const fresnel = spot.mirror + (1 - spot.mirror) * grazing * grazing * (1 + facing);
     const k = spot.glass * fresnel;

@@ -6,8 +6,8 @@ import { Outlines, Raster } from './raster.ts';
 import type { Sky } from './sky.ts';
 import { type Colour, dot, type Vec3 } from './vector.ts';
 
-const DIRECTIONS = 26;
-const MAP = 512;
+const DIRECTIONS = 21;
+const MAP = 400;
 
 interface Patch {
   towards: Vec3;
@@ -26,7 +26,7 @@ export class SkyPatches {
     const colour = new Float64Array(3);
     const open = [0, 0, 0];
     // What is smaller than a point of these maps would only cost time.
-    const casting = facesWhere(mesh, 1.2, (kind) => kind !== 'water');
+    const casting = facesWhere(mesh, 1.8, (kind) => kind !== 'water');
     const outlines = new Outlines(mesh.count);
     for (let i = 0; i < DIRECTIONS; i++) {
       // A spiral with equal areas of the hemisphere between its points.

@@ -80,7 +80,7 @@ export const stuff = {
   rail: { kind: 'plain', colour: [0.1, 0.105, 0.11], gloss: 0.2 },
   green: { kind: 'plain', colour: [0.06, 0.12, 0.1], gloss: 0.2 },
   white: { kind: 'plain', colour: [0.7, 0.69, 0.66], gloss: 0.1 },
-  red: { kind: 'plain', colour: [0.35, 0.06, 0.04], gloss: 0.15 },
+  red: { kind: 'plain', colour: [0.25, 0.055, 0.045], gloss: 0.15 },
   wood: { kind: 'plain', colour: [0.2, 0.13, 0.08], gloss: 0 },
   bark: { kind: 'plain', colour: [0.075, 0.062, 0.05], gloss: 0 },
   quay: { kind: 'quay', colour: [0.3, 0.28, 0.25] },

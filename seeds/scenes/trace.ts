@@ -4,8 +4,8 @@ import { Outlines, Raster } from './raster.ts';
 import type { Sky } from './sky.ts';
 import { type Colour, type Vec3 } from './vector.ts';
 
-const GRID = 768;
-const STEPS = 150;
+const GRID = 512;
+const STEPS = 80;
 
 /**
  * The city as heights over a grid, for what panes reflect: a ray walks from cell to cell until it runs into something

@@ -43,10 +43,10 @@ function lightUp(mesh: Mesh, camera: Camera, light: Light, seed: number): Lighti
   const shines = sky.sunlight[0] > 1e-5 && sky.sun[1] > 0;
   return {
     sky,
-    shadow: shines ? new SunShadow(mesh, sky.sun, centre, radius, 3072) : null,
+    shadow: shines ? new SunShadow(mesh, sky.sun, centre, radius, 2560) : null,
     patches,
     neighbours: new Neighbours(mesh, sky, patches.open, centre, radius * 1.25 + 40),
-    lamps: new Lamplight(mesh.lamps, light.lamps),
+    lamps: new Lamplight(mesh.lamps, light.lamps, patches.open[1]),
     bounce,
   };
 }
