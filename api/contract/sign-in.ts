@@ -14,7 +14,7 @@ export const NewPassword = z
   .string()
   .max(1024, 'At most 128 characters.')
   .transform((password) => password.normalize('NFC'))
-  .refine((password) => [...password].length >= PASSWORD_LENGTH.least, 'At least 12 characters. Four or five words make a good one.')
+  .refine((password) => [...password].length >= PASSWORD_LENGTH.least, 'At least 12 characters.')
   .refine((password) => [...password].length <= PASSWORD_LENGTH.most, 'At most 128 characters.');
 
 /** A password to be compared: whatever was typed. */

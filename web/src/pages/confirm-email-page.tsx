@@ -37,7 +37,7 @@ export function Component() {
       lead={`The last step for ${link.data.studioName}.`}
       foot={
         <p>
-          <Link to="/reset-password" className="underline underline-offset-4">
+          <Link to="/reset-password" className="inline-block py-1.5 underline underline-offset-4">
             Forgotten the password you chose?
           </Link>
         </p>

@@ -31,7 +31,7 @@ export function Component() {
       foot={
         link.data.password === 'known' ? (
           <p>
-            <Link to="/reset-password" className="underline underline-offset-4">
+            <Link to="/reset-password" className="inline-block py-1.5 underline underline-offset-4">
               Forgotten your password?
             </Link>
           </p>

@@ -15,7 +15,7 @@ export function Component() {
       lead="We send you a link to choose a new one. It works for an hour."
       foot={
         <p>
-          <Link to="/sign-in" className="underline underline-offset-4">
+          <Link to="/sign-in" className="inline-block py-1.5 underline underline-offset-4">
             Back to sign in
           </Link>
         </p>

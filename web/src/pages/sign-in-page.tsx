@@ -24,13 +24,13 @@ export function Component() {
       foot={
         <>
           <p>
-            <Link to="/reset-password" className="underline underline-offset-4">
+            <Link to="/reset-password" className="inline-block py-1.5 underline underline-offset-4">
               Forgotten your password?
             </Link>
           </p>
           <p>
             No studio yet?{' '}
-            <Link to="/sign-up" className="underline underline-offset-4">
+            <Link to="/sign-up" className="inline-block py-1.5 underline underline-offset-4">
               Sign up
             </Link>
           </p>

@@ -16,7 +16,7 @@ export function Component() {
       foot={
         <p>
           Signed up already?{' '}
-          <Link to="/sign-in" className="underline underline-offset-4">
+          <Link to="/sign-in" className="inline-block py-1.5 underline underline-offset-4">
             Sign in
           </Link>
         </p>
