@@ -20,6 +20,10 @@ const doorPages: RouteObject[] = [
 /** The studio's pages, inside the shell with the navigation at the left. */
 const studioPages: RouteObject[] = [
   { path: 'desk', lazy: () => import('./pages/studio/desk-page.tsx') },
+  { path: 'commissions', lazy: () => import('./pages/studio/commissions-page.tsx') },
+  { path: 'commissions/new', lazy: () => import('./pages/studio/commissions-new-page.tsx') },
+  { path: 'clients', lazy: () => import('./pages/studio/clients-page.tsx') },
+  { path: 'clients/:clientId', lazy: () => import('./pages/studio/client-page.tsx') },
   {
     path: 'settings',
     lazy: () => import('./pages/studio/settings/settings-layout.tsx'),
@@ -37,6 +41,8 @@ const studioPages: RouteObject[] = [
     path: 'commissions/:commissionId',
     lazy: () => import('./pages/studio/commission/layout.tsx'),
     children: [
+      { index: true, element: <Navigate to="brief" replace /> },
+      { path: 'brief', lazy: () => import('./pages/studio/commission/brief-page.tsx') },
       {
         path: 'frames',
         lazy: () => import('./pages/studio/commission/frames-page.tsx'),
