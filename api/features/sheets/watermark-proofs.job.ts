@@ -50,7 +50,9 @@ async function watermarkProof(ctx: Context, sheet: Sheet, proof: ProofToMark, im
   const marked = await ctx.pixels.watermark(picture, sheet.watermark, image);
   const target = { studioId: proof.studioId, sheetId: sheet.id, id: proof.id, watermarkHash: sheet.watermarkHash };
   await Promise.all(marked.map(({ size, data }) => ctx.store.put(proofKey(target, sheet.commissionId, size), data, 'image/jpeg')));
-  await Proof.within(sheet).findById(proof.id).patch({ watermarkHash: sheet.watermarkHash });
+  // The watermark may have been changed meanwhile and its own run be through with this proof: then this one comes too late.
+  const stillWanted = Sheet.within(sheet).where({ id: sheet.id, watermarkHash: sheet.watermarkHash });
+  await Proof.within(sheet).findById(proof.id).whereExists(stillWanted).patch({ watermarkHash: sheet.watermarkHash });
 }
 
 async function tell(ctx: Context, sheet: Sheet): Promise<void> {
