@@ -72,7 +72,7 @@ function MailsTable({ mails, onShow }: { mails: MailRow[]; onShow: (id: string) 
       rows={mails}
       rowKey={(row) => row.id}
       columns={[
-        { key: 'state', words: 'State', width: '152px', cell: (row) => <MailStateWord state={row.state} /> },
+        { key: 'state', words: 'State', width: '120px', cell: (row) => <MailStateWord state={row.state} /> },
         {
           key: 'subject',
           words: 'Mail',
@@ -96,6 +96,7 @@ function MailsTable({ mails, onShow }: { mails: MailRow[]; onShow: (id: string) 
         {
           key: 'to',
           words: 'To',
+          width: '30%',
           cell: (row) => (
             <>
               {row.to.name}
@@ -103,7 +104,7 @@ function MailsTable({ mails, onShow }: { mails: MailRow[]; onShow: (id: string) 
             </>
           ),
         },
-        { key: 'when', words: 'When', width: '168px', cell: (row) => formatTime(row.sentAt ?? row.createdAt) },
+        { key: 'when', words: 'When', width: '136px', cell: (row) => formatTime(row.sentAt ?? row.createdAt) },
       ]}
     />
   );

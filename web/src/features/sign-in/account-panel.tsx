@@ -69,7 +69,7 @@ function OwnPassword({ email }: { email: string }) {
   const submit = form.handleSubmit((input) => change(input).catch((error: unknown) => landErrors(form, error)));
   return (
     <form noValidate className="grid max-w-xl gap-4" onSubmit={(event) => void submit(event)}>
-      <h3 className="text-17">Change the password</h3>
+      <h2 className="text-17">Change the password</h2>
       <FormError>{form.formState.errors.root?.message}</FormError>
       <input type="email" autoComplete="username" value={email} readOnly hidden />
       <PasswordField form={form} name="current" label="Present password" kind="present" />
