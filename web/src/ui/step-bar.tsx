@@ -16,12 +16,12 @@ export function StepBar({ steps, label }: { steps: Step[]; label?: string }) {
     <nav aria-label={label ?? t('ui.steps')} className="overflow-x-auto border-t border-ink">
       <ul className="flex">
         {steps.map((step, at) => (
-          <li key={step.to} className={joinClasses('min-w-24 flex-1', at > 0 && 'border-l border-line')}>
+          <li key={step.to} className={joinClasses('min-w-20 flex-1', at > 0 && 'border-l border-line')}>
             <NavLink
               to={step.to}
               className={({ isActive }) =>
                 joinClasses(
-                  'block h-full px-3.5 py-2 -outline-offset-4 focus-visible:shadow-none',
+                  'block h-full px-2.5 py-2 lg:px-3.5 -outline-offset-4 focus-visible:shadow-none',
                   isActive ? 'bg-ink text-sheet focus-visible:outline-sheet' : 'text-mute hover:bg-hair',
                 )
               }

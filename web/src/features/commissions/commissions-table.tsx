@@ -6,7 +6,7 @@ import { type Column, DataTable } from '../../ui/data-table.tsx';
 
 interface Props {
   commissions: CommissionSummary[];
-  /** On the page of one client the column says nothing. */
+  /** On the page of one client its name says nothing. */
   withoutClient?: boolean;
   /** For deleted ones: they open no page, but can be brought back. */
   onRestore?: (commission: CommissionSummary) => void;
@@ -20,16 +20,19 @@ export function CommissionsTable({ commissions, withoutClient = false, onRestore
     {
       key: 'title',
       words: 'Commission',
-      cell: ({ id, title }) =>
-        onRestore ? (
-          <b>{title}</b>
-        ) : (
-          <Link to={`/commissions/${id}/brief`} className="font-bold wrap-break-word hover:underline">
-            {title}
-          </Link>
-        ),
+      cell: ({ id, title, client }) => (
+        <>
+          {onRestore ? (
+            <b className="block wrap-break-word">{title}</b>
+          ) : (
+            <Link to={`/commissions/${id}/brief`} className="block font-bold wrap-break-word hover:underline">
+              {title}
+            </Link>
+          )}
+          {withoutClient ? null : <span className="block text-13 text-mute wrap-break-word">{client.name}</span>}
+        </>
+      ),
     },
-    !withoutClient && { key: 'client', words: 'Client', cell: ({ client }) => client.name },
     {
       key: 'state',
       words: 'Now',

@@ -17,7 +17,7 @@ export function Component() {
       <PageTitle title="Brief" where={commission.title} hidden />
       <div className="grid items-start gap-6 xl:grid-cols-2">
         <div>
-          <h2 className="mb-2 text-17">What was agreed</h2>
+          <h2 className="mb-2 flex min-h-8 items-center text-17">What was agreed</h2>
           <BriefForm key={commission.id} commission={commission} />
         </div>
         <ViewsList commission={commission} />
