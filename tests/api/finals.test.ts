@@ -1,4 +1,4 @@
-import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest';
+import { afterAll, beforeAll, beforeEach, describe, expect, it, vi } from 'vitest';
 import type { FinalItem, FinalList } from '../../api/contract/finals.ts';
 import { takeInFinal } from '../../api/features/finals/take-in-final.ts';
 import { KEPT_DAYS, sweepFinals } from '../../api/features/finals/sweep-finals.job.ts';
@@ -12,6 +12,9 @@ import { makeCommission } from '../support/factories/commission.ts';
 import { makeFinal, makePickList } from '../support/factories/final.ts';
 import { makeFrame } from '../support/factories/frame.ts';
 import { makeStudio, type MadeStudio } from '../support/factories/studio.ts';
+
+// Pictures are made in child processes: on a busy machine that takes its time.
+vi.setConfig({ testTimeout: 180_000 });
 
 let house: House;
 let made: MadeStudio;

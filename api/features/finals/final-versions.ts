@@ -77,7 +77,7 @@ export function detachVersion(ctx: Context, actor: StaffActor, versionId: string
     const picks = await currentPicks(actor, final.commissionId, trx);
     const { candidates } = findMatch(version, picks);
     const own = await Final.query(trx)
-      .insert({ studioId: actor.studioId, commissionId: final.commissionId, match: picks.length > 0 ? 'ask' : 'none', candidates })
+      .insert({ studioId: actor.studioId, commissionId: final.commissionId, match: 'ask', candidates })
       .returning('*');
     await FinalVersion.query(trx).findById(versionId).patch({ finalId: own.id, number: 1 });
     return { did: 'final.detached', says: `Made “${version.name}” a final of its own` };

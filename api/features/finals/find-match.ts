@@ -1,18 +1,19 @@
 import { matchFinal, type Doubt } from '../../domain/match-finals.ts';
 import type { CurrentPick } from './current-picks.ts';
 
-/** What to do with a finished file: hang it to a pick, ask, or let it stand as a further final where nothing was picked. */
+/** What to do with a finished file: hang it to a pick, or ask. */
 export interface FoundMatch {
-  match: 'by-name' | 'ask' | 'none';
+  match: 'by-name' | 'ask';
   frameId: string | null;
   /** Frames that come into consideration, likeliest first. */
   candidates: string[];
+  /** Null where there is no pick to ask about yet; the question is put once there is one. */
   doubt: Doubt | null;
 }
 
-/** Finds the pick of a finished file by name and time. Without any pick there is nothing to ask about. */
+/** Finds the pick of a finished file by name and time. */
 export function findMatch(file: { originalName: string; takenLocal: string | null }, picks: readonly CurrentPick[]): FoundMatch {
-  if (picks.length === 0) return { match: 'none', frameId: null, candidates: [], doubt: null };
+  if (picks.length === 0) return { match: 'ask', frameId: null, candidates: [], doubt: null };
   const found = matchFinal(
     { name: file.originalName, taken: file.takenLocal },
     picks.map(({ frameId, frameName, frame }) => ({ id: frameId, names: [frameName], taken: frame.takenLocal ? [frame.takenLocal] : [] })),

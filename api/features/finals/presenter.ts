@@ -17,8 +17,8 @@ export async function presentFinals(ctx: Context, scope: StudioScope, commission
     deliveriesOfVersions(scope, commission.id),
   ]);
   const place = new Map(picks.map((pick, index) => [pick.frameId, index]));
-  const order = (final: LoadedFinal) =>
-    final.match === 'ask' ? -1 : final.frameId ? (place.get(final.frameId) ?? picks.length) : picks.length + 1;
+  const asks = (final: LoadedFinal) => matchNow(final, picks) === 'ask';
+  const order = (final: LoadedFinal) => (asks(final) ? -1 : final.frameId ? (place.get(final.frameId) ?? picks.length) : picks.length + 1);
   const ordered = [...finals].sort((a, b) => order(a) - order(b));
   const finalOfFrame = new Map(finals.map((final) => [final.frameId, final.id]));
   return {
@@ -27,12 +27,17 @@ export async function presentFinals(ctx: Context, scope: StudioScope, commission
     figures: {
       picks: picks.length,
       picksWithFinal: picks.filter((pick) => finalOfFrame.has(pick.frameId)).length,
-      toAsk: finals.filter((final) => final.match === 'ask').length,
-      further: finals.filter((final) => final.match === 'none').length,
+      toAsk: finals.filter(asks).length,
+      further: finals.filter((final) => matchNow(final, picks) === 'none').length,
       bytes: finals.reduce((sum, final) => sum + (final.versions[0]?.sizeBytes ?? 0), 0),
     },
     can: { change: commission.closedAt === null },
   };
+}
+
+/** While nothing is picked there is no question: such a final stands by itself until there is a pick it may belong to. */
+function matchNow(final: LoadedFinal, picks: readonly CurrentPick[]): FinalItem['match'] {
+  return final.match === 'ask' && picks.length === 0 ? 'none' : final.match;
 }
 
 async function presentPick(ctx: Context, pick: CurrentPick, finalId: string | null): Promise<PickForFinal> {
@@ -51,7 +56,8 @@ async function presentFinal(
 ): Promise<FinalItem> {
   // The question is put anew each time: a pick list may have come since the file was taken in.
   const [newest] = final.versions;
-  const question = final.match === 'ask' && newest ? findMatch(newest, picks) : null;
+  const match = matchNow(final, picks);
+  const question = match === 'ask' && newest ? findMatch(newest, picks) : null;
   const candidates = question?.frameId ? [question.frameId] : (question?.candidates ?? []);
   return {
     id: final.id,
@@ -60,7 +66,7 @@ async function presentFinal(
       picks.find((pick) => pick.frameId === final.frameId),
     ),
     ownTitle: final.title !== '',
-    match: final.match,
+    match,
     frameId: final.frameId,
     doubt: question ? (question.doubt ?? 'several') : null,
     candidates,

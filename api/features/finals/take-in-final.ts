@@ -1,6 +1,7 @@
 import type { Transaction } from 'objection';
 import { announce } from '../../db/live.ts';
 import { enqueue } from '../../jobs/queue.ts';
+import { Account } from '../../models/Account.ts';
 import { Commission } from '../../models/Commission.ts';
 import { Final } from '../../models/Final.ts';
 import { FinalVersion } from '../../models/FinalVersion.ts';
@@ -31,7 +32,7 @@ export async function takeInFinal(trx: Transaction, upload: Upload, judged: Judg
   const final = (await finalThatIsThere(trx, upload, found)) ?? (await newFinal(trx, upload, found));
   const version = await addVersion(trx, final, upload, judged);
   await enqueue(trx, 'make-final-pictures', { versionId: version.id }, { key: `make-final-pictures:${version.id}` });
-  await tell(trx, upload, final, version);
+  await tell(trx, upload, final, version, found);
   return version;
 }
 
@@ -39,9 +40,9 @@ export async function takeInFinal(trx: Transaction, upload: Upload, judged: Judg
 async function finalThatIsThere(trx: Transaction, upload: Upload, found: FoundMatch): Promise<Final | undefined> {
   const finals = Final.within(upload, trx).where({ commissionId: upload.commissionId }).whereNull('deletedAt');
   if (found.frameId) return finals.findOne({ frameId: found.frameId });
-  if (found.match === 'ask') return undefined;
+  if (found.doubt) return undefined;
   return finals
-    .where({ match: 'none' })
+    .whereNull('frameId')
     .whereExists(
       FinalVersion.query(trx)
         .whereColumn('finalVersions.finalId', 'finals.id')
@@ -83,13 +84,15 @@ async function addVersion(trx: Transaction, final: Final, upload: Upload, judged
     .returning('*');
 }
 
-async function tell(trx: Transaction, upload: Upload, final: Final, version: FinalVersion): Promise<void> {
+async function tell(trx: Transaction, upload: Upload, final: Final, version: FinalVersion, found: FoundMatch): Promise<void> {
+  const person = upload.createdBy ? await Account.query(trx).findById(upload.createdBy) : undefined;
   const what = version.number > 1 ? `version ${version.number} of a final` : 'a final';
   await addToRecord(trx, {
     studioId: upload.studioId,
     commissionId: upload.commissionId,
+    ...(person ? { actor: { kind: 'staff' as const, accountId: person.id, name: person.name } } : {}),
     did: 'final.added',
-    says: `Took in “${version.name}” as ${what}${final.match === 'ask' ? '; its pick has to be asked' : ''}`,
+    says: `Took in “${version.name}” as ${what}${found.doubt ? '; its pick has to be asked' : ''}`,
     about: { finalId: final.id, versionId: version.id },
   });
   const topic = `commission:${upload.commissionId}`;

@@ -14,14 +14,10 @@ export function EverythingBox({ delivery }: { delivery: GuestDelivery }) {
       <ul className="mt-3 grid gap-2">
         {delivery.archives.map((archive) => (
           <li key={archive.kind} className="list-none">
-            <AnchorButton
-              href={archive.download}
-              download
-              tone={archive.kind === 'full' ? 'first' : 'plain'}
-              className="flex w-full justify-between"
-            >
-              <span>{t(`delivery.${archive.kind}`, { count: archive.files })}</span>
-              <span>{formatBytes(archive.size)}</span>
+            <AnchorButton href={archive.download} download tone={archive.kind === 'full' ? 'first' : 'plain'} className="w-full">
+              <span className="flex w-full justify-between gap-4">
+                <span>{t(`delivery.${archive.kind}`, { count: archive.files })}</span> <span>{formatBytes(archive.size)}</span>
+              </span>
             </AnchorButton>
             {archive.fetched ? <p className="mt-1 text-13 font-bold text-verdigris">{t('delivery.fetchedArchive')}</p> : null}
           </li>

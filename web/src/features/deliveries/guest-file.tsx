@@ -7,7 +7,7 @@ import { sizeWords } from '../finals/final-words.ts';
 export type GuestFile = GuestDelivery['files'][number];
 
 /** Room below a picture for its caption, CSS pixels. */
-export const CAPTION_HEIGHT = 92;
+export const CAPTION_HEIGHT = 80;
 
 interface Props {
   file: GuestFile;
@@ -43,8 +43,10 @@ export function GuestFileTile({ file, box, first, onLook, onFailed }: Props) {
           <b className="block truncate" title={file.title}>
             {file.title}
           </b>
-          <span className="block text-mute">{sizeWords(file)}</span>
-          {file.fetched ? <span className="block font-bold text-verdigris">{t('delivery.fetched')}</span> : null}
+          <span className="block truncate text-mute">
+            {file.fetched ? <b className="text-verdigris">{t('delivery.fetched')} · </b> : null}
+            {sizeWords(file)}
+          </span>
         </span>
         <AnchorButton size="small" href={file.download} download={file.name} aria-label={t('delivery.downloadOne', { title: file.title })}>
           {t('delivery.download')}

@@ -22,7 +22,7 @@ export function RecipientsTable({ commissionId, delivery }: Props) {
     { key: 'files', words: 'Files', cell: (one) => <Files recipient={one} delivery={delivery} /> },
     {
       key: 'change',
-      words: '',
+      words: 'Change',
       align: 'right',
       width: '110px',
       cell: (one) => <RecipientMenu commissionId={commissionId} delivery={delivery} recipient={one} />,

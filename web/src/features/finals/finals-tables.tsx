@@ -24,7 +24,7 @@ export function PickedFinals({ commissionId, list }: Props) {
     { key: 'delivered', words: 'Delivered', cell: (pick) => <OptionalDelivered final={finalOf(pick)} /> },
     {
       key: 'change',
-      words: '',
+      words: 'Change',
       align: 'right',
       width: '110px',
       cell: (pick) => {
@@ -73,7 +73,7 @@ export function FurtherFinals({ commissionId, list }: Props) {
     { key: 'delivered', words: 'Delivered', cell: (final) => <DeliveredCell final={final} /> },
     {
       key: 'change',
-      words: '',
+      words: 'Change',
       align: 'right',
       width: '110px',
       cell: (final) => <FinalMenu commissionId={commissionId} final={final} list={list} />,
