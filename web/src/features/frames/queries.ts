@@ -1,5 +1,4 @@
 import { infiniteQueryOptions, queryOptions } from '@tanstack/react-query';
-import type { Views } from '../../../../api/contract/commissions.ts';
 import type { Frame, FrameList, FrameQuery, FrameSummary } from '../../../../api/contract/frames.ts';
 import { api } from '../../lib/api.ts';
 
@@ -54,13 +53,5 @@ export function frameQuery(frameId: string) {
   return queryOptions({
     queryKey: frameKeys.one(frameId),
     queryFn: ({ signal }) => api.get<Frame>(`/api/frames/${frameId}`, { signal }),
-  });
-}
-
-/** The views under which frames can be hung, in the order of the brief. */
-export function viewTitlesQuery(commissionId: string) {
-  return queryOptions({
-    queryKey: ['commissions', commissionId, 'views'],
-    queryFn: ({ signal }) => api.get<Views>(`/api/commissions/${commissionId}/views`, { signal }),
   });
 }

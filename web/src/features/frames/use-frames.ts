@@ -2,7 +2,8 @@ import { useInfiniteQuery, useQuery } from '@tanstack/react-query';
 import { useDeferredValue, useEffect, useMemo } from 'react';
 import type { FrameItem } from '../../../../api/contract/frames.ts';
 import { arrange, type FrameWish } from './frame-order.ts';
-import { deletedFramesQuery, framesQuery, viewTitlesQuery } from './queries.ts';
+import { viewsQuery } from '../commissions/queries.ts';
+import { deletedFramesQuery, framesQuery } from './queries.ts';
 
 /** All frames of a commission, page after page, and those among them that are wished for, in the order wished for. */
 export function useFrames(commissionId: string, wish: FrameWish) {
@@ -20,6 +21,6 @@ export function useFrames(commissionId: string, wish: FrameWish) {
 
 /** The views of the brief by their ids, with their numbers, in order. */
 export function useViewTitles(commissionId: string): ReadonlyMap<string, { title: string; number: number }> {
-  const { data } = useQuery(viewTitlesQuery(commissionId));
+  const { data } = useQuery(viewsQuery(commissionId));
   return useMemo(() => new Map(data?.items.map(({ id, title }, at) => [id, { title, number: at + 1 }]) ?? []), [data]);
 }
