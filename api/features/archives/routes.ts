@@ -1,21 +1,11 @@
 import { Router } from 'express';
 import { staffOf } from '../../middleware/actor.ts';
-import { problem } from '../../middleware/problem.ts';
 import type { RouteContext } from '../../middleware/route-context.ts';
 import { ids } from '../../middleware/validation.ts';
-import type { Archive } from '../../models/Archive.ts';
-import { sendObject, type StoredObject } from '../downloads/send-object.ts';
+import { sendObject } from '../downloads/send-object.ts';
+import { archiveObject } from './archive-object.ts';
 import { findPicksArchive, notePicksFetched, requestPicksArchive } from './picks-archive.ts';
 import { presentArchive } from './request-archive.ts';
-
-/** An archive as a download. @throws Problem 409 until it is ready */
-export function archiveObject(archive: Archive): StoredObject {
-  const { storageKey: key, sizeBytes: size, sha256, readyAt } = archive;
-  if (archive.state !== 'ready' || size === null || sha256 === null || !readyAt) {
-    throw problem(409, 'The archive is still being built.', { code: 'not-ready' });
-  }
-  return { key, size, sha256, modified: readyAt, name: `${archive.name}.zip`, mediaType: 'application/zip' };
-}
 
 /** The originals of a pick list as an archive. */
 export function archiveRoutes({ ctx, gates: { staff }, limits: { limit } }: RouteContext): Router {

@@ -8,7 +8,7 @@ import { Archive } from '../../models/Archive.ts';
 import type { Delivery } from '../../models/Delivery.ts';
 import { DeliveryFile } from '../../models/DeliveryFile.ts';
 import type { FinalVersion } from '../../models/FinalVersion.ts';
-import { archiveObject } from '../archives/routes.ts';
+import { archiveObject } from '../archives/archive-object.ts';
 import { sendObject, type StoredObject } from '../downloads/send-object.ts';
 import { trackDownload, type Fetching } from '../downloads/track-download.ts';
 import { openDeliveryOf } from './guest-delivery.ts';

@@ -10,5 +10,6 @@ export async function startWords(): Promise<void> {
     resources: { en: { translation: english } },
     // React escapes what it writes; escaping twice would show &amp; in names.
     interpolation: { escapeValue: false },
+    showSupportNotice: false,
   });
 }
