@@ -9,14 +9,16 @@ import { sizeWords } from './final-words.ts';
 import { useFinalDeed } from './mutations.ts';
 import { Thumb } from './thumb.tsx';
 
-/** The newest file of a final: picture, name, size, how many versions there are. */
-export function FinalCell({ final }: { final: FinalItem }) {
+/** The newest file of a final: picture, name, size, how many versions there are. Beside its proof the picture waits for room. */
+export function FinalCell({ final, besideProof = false }: { final: FinalItem; besideProof?: boolean }) {
   const [newest] = final.versions;
   if (!newest) return null;
   return (
     <span className="flex items-center gap-3">
-      <Thumb {...newest} picture={newest.pictures?.['480']} />
-      <span className="min-w-0">
+      <span className={besideProof ? 'hidden xl:block' : 'block'}>
+        <Thumb {...newest} picture={newest.pictures?.['480']} />
+      </span>
+      <span className="min-w-40">
         <b className="block break-all">{newest.name}</b>
         <span className="block text-13 text-mute">{sizeWords(newest)}</span>
         <span className="block text-13 text-mute">

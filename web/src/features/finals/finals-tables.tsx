@@ -48,14 +48,14 @@ function PickNumber({ pick, sheets }: { pick: PickForFinal; sheets: number }) {
 function ViewCell({ pick, title }: { pick: PickForFinal; title: FinalItem | undefined }) {
   return (
     <>
-      <span className="block">{title?.ownTitle ? title.title : (pick.viewTitle ?? 'Also made')}</span>
+      <span className="block min-w-28">{title?.ownTitle ? title.title : (pick.viewTitle ?? 'Also made')}</span>
       <span className="block text-13 break-all text-mute">{pick.frameName}</span>
     </>
   );
 }
 
 function OptionalFinal({ final }: { final: FinalItem | undefined }) {
-  return final ? <FinalCell final={final} /> : <span className="text-mute">not yet</span>;
+  return final ? <FinalCell final={final} besideProof /> : <span className="text-mute">not yet</span>;
 }
 
 function OptionalDelivered({ final }: { final: FinalItem | undefined }) {
