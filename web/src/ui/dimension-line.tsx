@@ -22,7 +22,7 @@ export function drawAllowance(picked: number, included: number): AllowanceDrawin
 interface Props {
   picked: number;
   included: number;
-  /** The price of an extra in words ("£85"); null where none can be bought. */
+  /** The price of an extra in words ("£85"); null where further picks are free. */
   price: string | null;
   className?: string;
 }

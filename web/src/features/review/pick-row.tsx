@@ -28,7 +28,7 @@ export function PickRow({ proof, view, place, marks, sheetId, onTakeOff }: Props
   return (
     <li className="flex items-center gap-3 border-b border-hair py-2 md:gap-5">
       <Keystone number={place.number} extra={place.extra} size="small" className="shrink-0" />
-      <span className="grid shrink-0 place-items-center max-sm:w-24" style={{ width: WIDEST }}>
+      <span className="grid w-20 shrink-0 place-items-center sm:w-33">
         <Link
           to={`/sheets/${sheetId}/proofs/${proof.number}`}
           aria-label={nameOfProof(t, { number: proof.number, view, marks, place })}

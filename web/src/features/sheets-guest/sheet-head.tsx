@@ -6,6 +6,7 @@ import { formatPrice } from '../../lib/money.ts';
 import { DimensionLine } from '../../ui/dimension-line.tsx';
 import { PageTitle } from '../../ui/page-title.tsx';
 import { TitleBlock } from '../../ui/title-block.tsx';
+import { PeopleLine } from './people-line.tsx';
 
 interface Props {
   sheet: GuestSheet;
@@ -14,7 +15,7 @@ interface Props {
   takesFocus: boolean;
 }
 
-/** The title block of a sheet and, below it, its allowance as a dimension line. */
+/** The title block of a sheet and, below it, its allowance as a dimension line and the people who choose. */
 export function SheetHead({ sheet, picked, takesFocus }: Props) {
   const { t } = useTranslation();
   const { timeZone, name } = sheet.studio;
@@ -39,8 +40,9 @@ export function SheetHead({ sheet, picked, takesFocus }: Props) {
         className="mt-4"
         picked={picked}
         included={sheet.allowance}
-        price={sheet.extraPrice > 0 ? formatPrice(sheet.extraPrice, sheet.currency) : t('sheet.free')}
+        price={sheet.extraPrice > 0 ? formatPrice(sheet.extraPrice, sheet.currency) : null}
       />
+      <PeopleLine sheet={sheet} />
     </>
   );
 }
