@@ -9,8 +9,8 @@ import { makeStudio, type MadeStudio } from '../support/factories/studio.ts';
 import { SCREENS, startSite, type Site, type Visitor } from './support.ts';
 
 /** A machine that runs other tests beside these is slow, which is no failure. */
-const PATIENCE = 60_000;
-vi.setConfig({ testTimeout: 4 * PATIENCE });
+const PATIENCE = 100_000;
+vi.setConfig({ testTimeout: 3 * PATIENCE });
 
 let site: Site;
 let studio: MadeStudio;

@@ -7,8 +7,8 @@ import { startSite, type Site, type Visitor } from './support.ts';
 import { chooseFiles, holdParts, keepWorking, notePart, startCard } from './uploads-support.ts';
 
 /** A machine that runs other tests beside these is slow, which is no failure. */
-const PATIENCE = 60_000;
-vi.setConfig({ testTimeout: 4 * PATIENCE });
+const PATIENCE = 100_000;
+vi.setConfig({ testTimeout: 3 * PATIENCE });
 
 let site: Site;
 let studio: MadeStudio;
