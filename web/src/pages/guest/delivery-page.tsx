@@ -12,7 +12,6 @@ import { GuestRefused } from '../../features/sheets-guest/guest-refused.tsx';
 import { formatTimeWithZone } from '../../lib/dates.ts';
 import { GuestShell } from '../../ui/guest-shell.tsx';
 import { JustifiedRows } from '../../ui/justified-rows.tsx';
-import { AnchorButton } from '../../ui/link-button.tsx';
 import { Pending } from '../../ui/pending.tsx';
 
 /** A delivery as its recipient sees it: the pictures without watermark, and everything to download. */
@@ -50,9 +49,14 @@ function Ended({ delivery }: { delivery: GuestDelivery }) {
         {t('delivery.endedTitle')}
       </h2>
       <p className="mt-2">{t('delivery.ended', { when: formatTimeWithZone(delivery.endsAt, timeZone), studio: name })}</p>
-      <AnchorButton className="mt-4 max-w-full whitespace-normal" href={`mailto:${replyTo}?subject=${subject}`}>
-        {t('delivery.ask', { studio: name, address: replyTo })}
-      </AnchorButton>
+      <p className="mt-4">
+        <a
+          className="target inline-block font-bold wrap-anywhere underline underline-offset-4"
+          href={`mailto:${replyTo}?subject=${subject}`}
+        >
+          {t('delivery.ask', { studio: name, address: replyTo })}
+        </a>
+      </p>
     </section>
   );
 }
