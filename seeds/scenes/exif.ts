@@ -82,7 +82,7 @@ function gps([north, east]: readonly [number, number]): Tag[] {
     return [Math.floor(d), 1, Math.floor(minutes), 1, Math.round((minutes % 1) * 6000), 100];
   };
   return [
-    { tag: 0, type: 'undefined', value: [2, 3, 0, 0] },
+    { tag: 0, type: 'byte', value: [2, 3, 0, 0] },
     { tag: 1, type: 'ascii', value: north >= 0 ? 'N' : 'S' },
     { tag: 2, type: 'rational', value: parts(north) },
     { tag: 3, type: 'ascii', value: east >= 0 ? 'E' : 'W' },

@@ -1,15 +1,15 @@
 /** One entry of a TIFF directory, as TIFF 6.0 and Exif 2.32 define them. Numbers of rationals come in pairs. */
 export interface Tag {
   tag: number;
-  type: 'ascii' | 'short' | 'long' | 'rational' | 'srational' | 'undefined';
+  type: 'byte' | 'ascii' | 'short' | 'long' | 'rational' | 'srational' | 'undefined';
   value: string | readonly number[];
 }
 
-const CODES = { ascii: 2, short: 3, long: 4, rational: 5, undefined: 7, srational: 10 } as const;
+const CODES = { byte: 1, ascii: 2, short: 3, long: 4, rational: 5, undefined: 7, srational: 10 } as const;
 
 function bytesOf({ type, value }: Tag): Buffer {
   if (typeof value === 'string') return Buffer.from(type === 'ascii' ? `${value}\0` : value, 'latin1');
-  const wide = type === 'short' ? 2 : type === 'undefined' ? 1 : 4;
+  const wide = type === 'short' ? 2 : type === 'undefined' || type === 'byte' ? 1 : 4;
   const bytes = Buffer.alloc(value.length * wide);
   value.forEach((n, i) => {
     if (wide === 1) bytes.writeUInt8(n, i);
