@@ -9,7 +9,7 @@ function inPackages(names: string[]): RegExp {
 }
 
 const STUDIO_PARTS =
-  /web\/src\/ui\/(data-table|step-bar|studio-shell|checkbox|select|field|text-input|confirm-dialog|progress-bar|dialog|justified-rows)/;
+  /web\/src\/(?:ui|lib)\/(changed-meanwhile|more-button|search-field|bytes|data-table|step-bar|studio-shell|checkbox|select|field|text-input|confirm-dialog|progress-bar|dialog|justified-rows)/;
 
 function isGuestPart(id: string): boolean {
   return /web\/src\/(ui|lib|messages|features\/(sheets-guest|marks))\/[\w-]+\.(tsx?|json)$/.test(id) && !STUDIO_PARTS.test(id);

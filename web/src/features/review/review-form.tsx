@@ -1,4 +1,4 @@
-import { useState } from 'react';
+import { useRef, useState } from 'react';
 import { useTranslation } from 'react-i18next';
 import type { GuestProof } from '../../../../api/contract/guest-sheets.ts';
 import { allowanceState } from '../../../../api/domain/allowance.ts';
@@ -28,6 +28,8 @@ export function ReviewForm({ data, picks }: Props) {
   /** The picks as they were when the question was opened: only these are ever sent. */
   const [asked, setAsked] = useState<readonly GuestProof[]>();
   const send = useSend(sheet.id);
+  /** Set at once, where the mutation's own state comes a moment later: the second press of a double click is none. */
+  const sending = useRef(false);
   const state = allowanceState(asked?.length ?? picks.length, { included: sheet.allowance, extraPrice: sheet.extraPrice });
   const now = new Set(picks.map((pick) => pick.id));
   const changes = asked ? comparePicks(proofs, new Set(asked.map((pick) => pick.id)), now) : { added: [], gone: [] };
@@ -64,7 +66,10 @@ export function ReviewForm({ data, picks }: Props) {
         }}
         onConfirm={() => {
           if (changed) setAsked(picks);
-          else if (asked) send.mutate({ proofs: asked, words });
+          else if (asked && !sending.current) {
+            sending.current = true;
+            send.mutate({ proofs: asked, words }, { onSettled: () => (sending.current = false) });
+          }
         }}
       >
         {changed ? <Changed changes={changes} /> : null}
