@@ -101,6 +101,7 @@ describe('the viewer', () => {
     expect(await surround()).toBe('black');
     await page.keyboard.press('ArrowRight');
     await page.waitForURL(/\/proofs\/2$/);
+    await page.getByRole('button', { name: 'Picked · 2, Proof 2' }).waitFor();
     await page.keyboard.press('Space');
     await page.getByRole('button', { name: 'Pick, Proof 2' }).waitFor();
     await page.keyboard.press('?');

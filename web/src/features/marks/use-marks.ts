@@ -42,10 +42,13 @@ function keeperOf(queryClient: QueryClient, sheetId: string, me: string): MarkKe
 /** The marks as this guest should see them, their own wishes included, and the way to change one's own. */
 export function useMarks(sheet: GuestSheet, marks: SheetMarks['marks']) {
   const me = sheet.me.accountId;
-  const keeper = keeperOf(useQueryClient(), sheet.id, me);
+  const queryClient = useQueryClient();
+  const keeper = keeperOf(queryClient, sheet.id, me);
   const wishes = useSyncExternalStore(keeper.listen, keeper.wishes);
   const mark = (proof: GuestProof, wanted: boolean) => {
-    const has = marks.some((one) => one.proofId === proof.id && one.accountId === me);
+    // Read from the cache: an Undo is pressed long after the page that offered it was drawn.
+    const now = queryClient.getQueryData<SheetMarks>(sheetKeys.marks(sheet.id))?.marks ?? marks;
+    const has = now.some((one) => one.proofId === proof.id && one.accountId === me);
     keeper.want(proof.id, wanted, has);
   };
   return { marks: withWishes(marks, wishes, me), mark };
