@@ -52,7 +52,7 @@ export function meter(picture: LinearPicture, key: number): number {
     for (let x = 0; x < width; x += 5) {
       const at = (y * width + x) * 3;
       const w = 1.4 - Math.hypot(x / width - 0.5, y / height - 0.5);
-      sum += Math.log(luminance(light[at]!, light[at + 1]!, light[at + 2]!) + 1e-7) * w;
+      sum += Math.log(Math.max(0, luminance(light[at]!, light[at + 1]!, light[at + 2]!)) + 1e-7) * w;
       weight += w;
     }
   }
@@ -102,7 +102,7 @@ function expose(picture: LinearPicture, { factor, steps, balance }: Exposure): U
   for (let c = 0; c < 3; c++) {
     const gain = gains[c]!;
     for (let at = c; at < light.length; at += 3) {
-      const entry = (Math.sqrt(light[at]! * gain) + 0.5) | 0;
+      const entry = (Math.sqrt(Math.max(0, light[at]! * gain)) + 0.5) | 0;
       codes[at] = entry < CURVE ? curve16[entry]! : 65535;
     }
   }

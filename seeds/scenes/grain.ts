@@ -31,8 +31,9 @@ function weather(spot: Spot, strength: number): void {
   const patches = fractal(u * 0.11 + seed, v * 0.13, 3) - 0.5;
   const streaks = noise(u * 1.7 + seed, v * 0.09) * noise(u * 0.31, v * 0.05 + seed) - 0.3;
   const fine = noise(u * 7.1, v * 7.3) - 0.5;
-  const foot = Math.exp(-v / 1.1) * 0.22;
-  const crown = Math.exp(-(spot.vLength - v) / 0.8) * 0.14;
+  // Seen at a flat angle, a point may be reckoned a little outside its face.
+  const foot = Math.exp(-Math.max(0, v) / 1.1) * 0.22;
+  const crown = Math.exp(-Math.max(0, spot.vLength - v) / 0.8) * 0.14;
   spot.tone(1 + strength * (patches * 0.5 - Math.max(0, streaks) * 0.55 + fine * 0.1 - foot - crown));
   spot.r *= 1 + strength * 0.05 * patches;
   spot.b *= 1 - strength * 0.07 * patches;

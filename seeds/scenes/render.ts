@@ -86,9 +86,9 @@ function shadeBand(picture: LinearPicture, raster: Raster, camera: Camera, shade
         b += one[2]! * share;
       }
       const to = ((firstRow + y) * width + x) * 3;
-      picture.light[to] = r;
-      picture.light[to + 1] = g;
-      picture.light[to + 2] = b;
+      picture.light[to] = Math.max(0, r);
+      picture.light[to + 1] = Math.max(0, g);
+      picture.light[to + 2] = Math.max(0, b);
     }
   }
 }

@@ -52,7 +52,9 @@ export class Spot {
     this.sky = 1;
   }
 
-  tone(k: number): void {
+  /** Makes the point lighter or darker; nothing is darker than black. */
+  tone(factor: number): void {
+    const k = factor > 0 ? factor : 0;
     this.r *= k;
     this.g *= k;
     this.b *= k;
