@@ -7,4 +7,14 @@ sharp.concurrency(Number(process.argv[2] ?? 1));
 // No file is opened twice here, so nothing of it is kept.
 sharp.cache(false);
 
-workerpool.worker(tasks);
+type Task = (...args: never[]) => unknown;
+
+/** Says whose work it is before it begins, so that the parent can end it. */
+function announced(task: Task): Task {
+  return (...args) => {
+    workerpool.workerEmit({ pid: process.pid });
+    return task(...args);
+  };
+}
+
+workerpool.worker(Object.fromEntries(Object.entries(tasks).map(([name, task]) => [name, announced(task as Task)])));

@@ -39,6 +39,9 @@ export class PixelsFailure extends Error {
   override name = 'PixelsFailure';
 }
 
+/** A new child has so long to begin, on a machine that is very busy. */
+const START_SECONDS = 60;
+
 function startPool(processes: number): workerpool.Pool {
   const loader = pathToFileURL(createRequire(import.meta.url).resolve('tsx')).href;
   return workerpool.pool(fileURLToPath(new URL('./child.ts', import.meta.url)), {
@@ -57,25 +60,60 @@ function startPool(processes: number): workerpool.Pool {
 }
 
 /** Errors cross the line between processes as plain data; a refusal becomes one again. */
-function revive(error: unknown, what: string, timeoutSeconds: number): Error {
-  if (error instanceof workerpool.Promise.TimeoutError)
-    return new PixelsFailure(`${what} took longer than ${timeoutSeconds} s and was ended.`);
+function revive(error: unknown, task: string): Error {
+  if (error instanceof workerpool.Promise.TimeoutError) return new PixelsFailure(`${task}: the process for it did not begin.`);
   if (!(error instanceof Error)) return new PixelsFailure(String(error));
   if (error.name === 'Refusal') return new Refusal((error as Error & { code: RefusalCode }).code, error.message);
-  if (/terminated|disconnected|channel closed/i.test(error.message))
-    return new PixelsFailure(`${what}: the process at work ended unexpectedly.`);
+  if (/terminat|disconnected|channel closed/i.test(error.message))
+    return new PixelsFailure(`${task}: the process at work ended unexpectedly.`);
   return error;
+}
+
+/** A call that a child is busy with. */
+class Call {
+  #pid: number | undefined;
+  #deadline: NodeJS.Timeout | undefined;
+  tooLong = false;
+
+  /** The child says who it is when it begins, so its start does not count. */
+  begin(pid: number, seconds: number): void {
+    this.#pid = pid;
+    this.#deadline = setTimeout(() => {
+      this.tooLong = true;
+      this.kill();
+    }, seconds * 1000);
+  }
+
+  /** Only SIGKILL ends a child whatever it is doing; the pool notices and makes a new one. */
+  kill(): void {
+    if (this.#pid !== undefined) process.kill(this.#pid, 'SIGKILL');
+  }
+
+  /** From now on the number may be that of another process. */
+  end(): void {
+    clearTimeout(this.#deadline);
+    this.#pid = undefined;
+  }
 }
 
 /** Opens the pool of child processes that all work on pixels goes through, so that no picture can harm the process that asks. */
 export function createPixels(options: PixelsOptions): Pixels {
   const pool = startPool(options.processes ?? availableParallelism());
   const limits = { pixels: options.maxPixels, bytes: Number.MAX_SAFE_INTEGER };
+  const calls = new Set<Call>();
   async function run<Answer>(task: string, args: unknown[]): Promise<Answer> {
+    const call = new Call();
+    calls.add(call);
     try {
-      return (await pool.exec(task, args).timeout(options.timeoutSeconds * 1000)) as Answer;
+      const answer = pool.exec(task, args, { on: ({ pid }: { pid: number }) => call.begin(pid, options.timeoutSeconds) });
+      // The pool's own clock is for a child that never comes to begin.
+      return (await answer.timeout((options.timeoutSeconds + START_SECONDS) * 1000)) as Answer;
     } catch (error) {
-      throw revive(error, task, options.timeoutSeconds);
+      if (call.tooLong) throw new PixelsFailure(`${task} took longer than ${options.timeoutSeconds} s and was ended.`);
+      throw revive(error, task);
+    } finally {
+      call.end();
+      calls.delete(call);
     }
   }
   return {
@@ -84,6 +122,9 @@ export function createPixels(options: PixelsOptions): Pixels {
     watermark: (picture, settings, image, sizes) => run('watermark', [picture, settings, image, sizes]),
     cleanWatermark: (png) => run('cleanWatermark', [png]),
     webSize: (path) => run('webSize', [path, limits]),
-    stop: async () => void (await pool.terminate(true)),
+    stop: async () => {
+      for (const call of calls) call.kill();
+      await pool.terminate(true);
+    },
   };
 }

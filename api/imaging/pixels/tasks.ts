@@ -3,8 +3,8 @@ import { makeDerivatives, type Derivatives } from '../make-derivatives.ts';
 import { makeWebSize, type WebPicture } from '../make-web-size.ts';
 import { readSettings, type ShootingSettings } from '../read-settings.ts';
 import { uprightSize } from '../upright.ts';
-import { watermarkPicture } from '../watermark.ts';
-import { cleanWatermarkImage } from '../watermark-mark.ts';
+import type { watermarkPicture } from '../watermark.ts';
+import type { cleanWatermarkImage } from '../watermark-mark.ts';
 
 /** A file known for what it is and how it was shot. */
 export interface Examined {
@@ -31,6 +31,11 @@ export const tasks = {
   async webSize(path: string, limits: PictureLimits): Promise<WebPicture> {
     return makeWebSize(path, await judgeHeader(path, limits), limits);
   },
-  watermark: watermarkPicture,
-  cleanWatermark: cleanWatermarkImage,
+  // The letters' program takes a while to open, and children that take frames in never need it.
+  async watermark(...args: Parameters<typeof watermarkPicture>) {
+    return (await import('../watermark.ts')).watermarkPicture(...args);
+  },
+  async cleanWatermark(...args: Parameters<typeof cleanWatermarkImage>) {
+    return (await import('../watermark-mark.ts')).cleanWatermarkImage(...args);
+  },
 };
