@@ -9,17 +9,26 @@ export interface EnqueueOptions {
   maxAttempts?: number;
 }
 
+/** Each try meets a worker that takes the waiting job at that very moment; more than a few in a row is no chance any more. */
+const TRIES = 5;
+
 /** Puts a job into the queue within the caller's transaction: it exists if, and only if, the transaction commits. */
 export async function enqueue(db: Knex, name: string, payload: Record<string, unknown>, options: EnqueueOptions = {}): Promise<void> {
-  await db.raw(
-    'select graphile_worker.add_job(?, payload := ?::json, run_at := ?::timestamptz, max_attempts := ?::int, job_key := ?::text, priority := ?::int)',
-    [
-      name,
-      JSON.stringify(payload),
-      options.runAt?.toISOString() ?? null,
-      options.maxAttempts ?? 8,
-      options.key ?? null,
-      options.priority ?? 0,
-    ] as Knex.RawBinding[],
-  );
+  for (let attempt = 1; attempt <= TRIES; attempt += 1) {
+    const { rows } = await db.raw<{ rows: { id: unknown }[] }>(
+      `select id from graphile_worker.add_job(
+         ?, payload := ?::json, run_at := ?::timestamptz, max_attempts := ?::int, job_key := ?::text, priority := ?::int)`,
+      [
+        name,
+        JSON.stringify(payload),
+        options.runAt?.toISOString() ?? null,
+        options.maxAttempts ?? 8,
+        options.key ?? null,
+        options.priority ?? 0,
+      ] as Knex.RawBinding[],
+    );
+    // No row: a worker took the waiting job of that key between the two statements of add_job, which then adds nothing.
+    if (rows[0]?.id != null) return;
+  }
+  throw new Error(`The job ${name} could not be put into the queue.`);
 }
