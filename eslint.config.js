@@ -13,11 +13,23 @@ export default ts.config(
       '@typescript-eslint/no-unused-vars': ['error', { argsIgnorePattern: '^_', varsIgnorePattern: '^_' }],
       '@typescript-eslint/consistent-type-imports': 'error',
       eqeqeq: ['error', 'always', { null: 'ignore' }],
-      'no-restricted-properties': ['error', { object: 'process', property: 'env', message: 'Only api/config.ts reads the environment.' }],
+      'no-restricted-properties': [
+        'error',
+        { object: 'process', property: 'env', message: 'Settings come from api/config.ts, which the two processes hand the environment.' },
+      ],
     },
   },
   {
-    files: ['api/config.ts', 'scripts/**', 'tests/**', 'seeds/**', 'docker-free-dev/**', 'vite.config.ts'],
+    files: [
+      'api/config.ts',
+      'api/server.ts',
+      'api/worker.ts',
+      'scripts/**',
+      'tests/**',
+      'seeds/**',
+      'docker-free-dev/**',
+      'vite.config.ts',
+    ],
     rules: { 'no-restricted-properties': 'off' },
   },
   {

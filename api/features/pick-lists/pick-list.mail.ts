@@ -36,16 +36,14 @@ export function pickListMail(mail: SheetForMail & { list: PickList; picks: Marke
 }
 
 function lines(picks: MarkedProof[]): string {
-  const named = picks
-    .slice(0, MOST_LINES)
-    .map((pick, index) =>
-      t('pickList.line', {
-        number: index + 1,
-        proof: pick.proofNumber,
-        view: pick.viewTitle ?? t('pickList.alsoMade'),
-        frame: pick.frameName,
-      }),
-    );
+  const named = picks.slice(0, MOST_LINES).map((pick, index) =>
+    t('pickList.line', {
+      number: index + 1,
+      proof: pick.proofNumber,
+      view: pick.viewTitle ?? t('pickList.alsoMade'),
+      frame: pick.frameName,
+    }),
+  );
   const more = picks.length - named.length;
   return [...named, ...(more > 0 ? [t('pickList.more', { count: more })] : [])].join('\n');
 }
