@@ -79,7 +79,7 @@ export function ProofTile({ proof, view, editable, chosen, onChoose, onEarlier, 
 
 function Mover({ words, sign, onMove }: { words: string; sign: string; onMove: (() => void) | undefined }) {
   return (
-    <Button size="small" tone="quiet" className="px-2 no-underline" aria-label={words} disabled={!onMove} onClick={onMove}>
+    <Button size="small" className="-ml-px border-line px-2" aria-label={words} disabled={!onMove} onClick={onMove}>
       <span aria-hidden="true">{sign}</span>
     </Button>
   );
