@@ -45,6 +45,12 @@ describe('a picture by its signed address', () => {
     expect(await address(key, start)).not.toBe(await address(key, start + 6 * HOUR));
   });
 
+  it('opens all sizes of one picture by one seal', async () => {
+    const [small, large] = [await address(frameKey(frame, 480)), await address(frameKey(frame, 2560))];
+    expect(small.replace('-480.jpg', '-2560.jpg')).toBe(large);
+    expect((await house.request.get(large)).status).toBe(200);
+  });
+
   it('ends with the window after its own', async () => {
     const answer = await house.request.get(await address(frameKey(frame, 480), Date.now() - 13 * HOUR));
     expect(answer.status).toBe(403);
@@ -57,7 +63,7 @@ describe('a picture by its signed address', () => {
     const { until } = windowAt(Date.now());
     const wrong = [
       good.replace(/seal=(.)/, (_all, first: string) => `seal=${first === 'A' ? 'B' : 'A'}`),
-      good.replace('-480.jpg', '-2560.jpg'),
+      good.replace(frame.id, frame.commissionId),
       good.replace(String(until), String(until + 1)),
       good.replace(/until=\d+/, 'until=abc'),
       good.replace(/&seal=.*/, ''),
