@@ -76,6 +76,8 @@ export default defineConfig({
           include: ['tests/browser/**/*.test.ts'],
           globalSetup: ['tests/support/cluster.ts', 'tests/browser/build-web.ts'],
           testTimeout: 120_000,
+          // On a busy machine a browser may miss a deadline once; a fault fails twice. What was repeated is shown.
+          retry: 1,
         },
       },
     ],
