@@ -1,5 +1,6 @@
 import { type ChildProcess, spawn } from 'node:child_process';
 import readline from 'node:readline';
+import { prettyFactory } from 'pino-pretty';
 import { endWithUs } from '../../docker-free-dev/processes.ts';
 import { LogFile } from './log-file.ts';
 import { warn } from './say.ts';
@@ -14,6 +15,10 @@ export interface SupervisedOptions {
   /** Show its lines in the terminal as well. */
   echo?: boolean;
 }
+
+/** A JSON line of the log as a person reads it; every other line as it is. */
+const pretty = prettyFactory({ singleLine: true, ignore: 'pid,hostname,name', translateTime: 'HH:MM:ss' });
+const readable = (line: string): string => (line.startsWith('{') ? pretty(line).trimEnd() : line);
 
 const LONGEST_PAUSE_MS = 30_000;
 const STEADY_MS = 60_000;
@@ -67,7 +72,7 @@ export class Supervised {
 
   private write(line: string): void {
     this.log.write(line);
-    if (this.options.echo) console.log(`${this.options.logName} | ${line}`);
+    if (this.options.echo) console.log(`${this.options.logName} | ${readable(line)}`);
     else if (isSerious(line)) warn(`${this.options.name} reports an error: ${messageOf(line)} (${this.log.file})`);
   }
 

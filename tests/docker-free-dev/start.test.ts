@@ -4,7 +4,7 @@ import net from 'node:net';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
 import { afterAll, afterEach, beforeAll, describe, expect, it } from 'vitest';
-import { freePort } from '../../docker-free-dev/ports.ts';
+import { isPortFree } from '../../docker-free-dev/ports.ts';
 import { isAlive } from '../../docker-free-dev/processes.ts';
 import { PORT_VARIABLES } from '../../scripts/start/settings.ts';
 
@@ -14,11 +14,21 @@ let dir: string;
 let env: Record<string, string | undefined>;
 const started: ChildProcess[] = [];
 
+/** The first of so many free ports in a row, below those that the kernel hands out by itself while other tests run. */
+async function freeBlock(length: number): Promise<number> {
+  for (;;) {
+    const base = 20_000 + Math.floor(Math.random() * 10_000);
+    const free = await Promise.all(Array.from({ length }, (_, index) => isPortFree(base + index)));
+    if (free.every(Boolean)) return base;
+  }
+}
+
 beforeAll(async () => {
   dir = mkdtempSync(path.join(tmpdir(), 'oriel-start-'));
   // Started by root, PostgreSQL runs as another user, who must be let through.
   chmodSync(dir, 0o755);
-  const ports = await Promise.all(Object.values(PORT_VARIABLES).map(async ([variable]) => [variable, String(await freePort())]));
+  const base = await freeBlock(Object.keys(PORT_VARIABLES).length);
+  const ports = Object.values(PORT_VARIABLES).map(([variable], index) => [variable, String(base + index)]);
   const { VITEST: _vitest, NODE_ENV: _environment, ...rest } = process.env;
   const own = { ORIEL_DATA_DIR: path.join(dir, 'data'), ORIEL_WEB_ROOT: path.join(dir, 'web'), ORIEL_DEMO: 'no' };
   env = { ...rest, ...Object.fromEntries(ports), ...own };
