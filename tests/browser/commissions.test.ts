@@ -114,6 +114,8 @@ describe('a brief', () => {
     await page.getByRole('button', { name: 'Delete commission' }).click();
     const dialog = page.getByRole('dialog');
     await dialog.getByText('1 frame', { exact: true }).waitFor();
+    // The page hears of the deletion before it is left, and asks once more for what is gone.
+    visitor.expectErrors(/404 .*\/api\/commissions\//);
     await dialog.getByRole('button', { name: 'Delete commission' }).click();
     await page.getByText('Customs House is deleted.').waitFor();
     await page.getByRole('button', { name: 'Undo' }).click();

@@ -158,6 +158,7 @@ describe('the guest’s sheet', () => {
     await soon(() => marksOf(open)).toEqual([2]);
     await visitor.page.keyboard.press('Enter');
     await visitor.page.waitForURL(/\/proofs\/2$/);
+    await visitor.page.getByRole('button', { name: 'All proofs' }).waitFor();
     await visitor.page.keyboard.press('ArrowRight');
     await visitor.page.waitForURL(/\/proofs\/3$/);
     await visitor.page.keyboard.press('Escape');

@@ -34,9 +34,11 @@ export function BriefForm({ commission }: { commission: CommissionDetail }) {
   // Saved by somebody else while nothing is typed here: show theirs. With something typed, the save will tell.
   useCommissionChanges(commission.id, (change) => {
     if (!('what' in change) || change.what !== 'commission-changed' || form.formState.isDirty) return;
-    void api.get<CommissionDetail>(`/api/commissions/${commission.id}`).then((now) => {
+    const look = api.get<CommissionDetail>(`/api/commissions/${commission.id}`).then((now) => {
       if (!form.formState.isDirty) settle(now);
     });
+    // Gone or out of reach: whoever saves hears of it then.
+    look.catch(() => undefined);
   });
   const submit = form.handleSubmit(async (values) => {
     try {

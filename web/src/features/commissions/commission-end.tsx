@@ -58,7 +58,8 @@ function DeleteCommission({ commission, onClose }: { commission: CommissionDetai
     mutationFn: () => api.delete(`/api/commissions/${commission.id}`),
     onSuccess: async () => {
       await navigate('/commissions');
-      queries.removeQueries({ queryKey: commissionKeys.one(commission.id) });
+      // Not removed: a page that is just leaving would ask for it once more.
+      void queries.invalidateQueries({ queryKey: commissionKeys.one(commission.id), refetchType: 'none' });
       renew();
       showNotice(`${commission.title} is deleted.`, { undo: () => void restore() });
     },

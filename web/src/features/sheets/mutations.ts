@@ -74,7 +74,6 @@ export function useRemoveSheet(sheet: { id: string; commissionId: string; number
     mutationFn: () => api.delete<void>(`/api/sheets/${sheet.id}`),
     onSuccess: async () => {
       await navigate(`/commissions/${sheet.commissionId}/proofs`);
-      client.removeQueries({ queryKey: sheetKeys.one(sheet.id) });
       void client.invalidateQueries({ queryKey: sheetKeys.lists(sheet.commissionId) });
       void client.invalidateQueries({ queryKey: commissionKeys.one(sheet.commissionId) });
       showNotice(`The draft of proof sheet ${sheet.number} is removed. Its frames are still under Frames.`);
