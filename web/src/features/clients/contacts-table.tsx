@@ -48,7 +48,7 @@ export function ContactsTable({ client }: { client: ClientDetail }) {
             { key: 'telephone', words: 'Telephone', cell: (contact) => contact.telephone || '–' },
             {
               key: 'do',
-              words: '',
+              words: 'Change',
               align: 'right',
               cell: (contact) => (
                 <span className="flex justify-end gap-2">

@@ -46,7 +46,7 @@ export function CommissionsTable({ commissions, withoutClient = false, onRestore
     { key: 'finals', words: 'Finals', align: 'right', width: '68px', cell: ({ finals }) => finals || '–' },
     onRestore !== undefined && {
       key: 'restore',
-      words: '',
+      words: 'Bring back',
       align: 'right',
       cell: (commission) => (
         <Button size="small" aria-label={`Bring ${commission.title} back`} onClick={() => onRestore(commission)}>
