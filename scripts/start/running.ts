@@ -1,5 +1,6 @@
 import type { ChildProcess } from 'node:child_process';
 import type { RunningPostgres } from '../../docker-free-dev/postgres.ts';
+import { isAlive } from '../../docker-free-dev/processes.ts';
 import { say, warn } from './say.ts';
 import type { Supervised } from './supervised.ts';
 
@@ -43,7 +44,7 @@ export class Running {
   kill(): void {
     this.errand?.kill('SIGKILL');
     for (const program of [...this.programs, this.services]) program?.kill();
-    if (this.database) process.kill(this.database.pid, 'SIGQUIT');
+    if (this.database && isAlive(this.database.pid)) process.kill(this.database.pid, 'SIGQUIT');
     this.releaseFolder();
   }
 
