@@ -98,6 +98,15 @@ describe('a draft', () => {
     expect((await change(ours.owner.agent)).body).toMatchObject({ extraPrice: 9900, can: { price: true } });
   });
 
+  it('is nothing while its commission is deleted', async () => {
+    const { sheet, commission } = await draftOf(1);
+    await house.ctx.knex('commissions').where({ id: commission.id }).update({ deletedAt: new Date() });
+    expect((await ours.owner.agent.get(`/api/sheets/${sheet.id}`)).status).toBe(404);
+    expect((await ours.owner.agent.delete(`/api/sheets/${sheet.id}`)).status).toBe(404);
+    await house.ctx.knex('commissions').where({ id: commission.id }).update({ deletedAt: null });
+    expect((await ours.owner.agent.get(`/api/sheets/${sheet.id}`)).status).toBe(200);
+  });
+
   it('is nothing to another studio', async () => {
     const { sheet } = await draftOf(1);
     expect((await theirs.owner.agent.get(`/api/sheets/${sheet.id}`)).status).toBe(404);
