@@ -55,6 +55,8 @@ export type FinalItem = z.infer<typeof FinalItem>;
 export const PickForFinal = z.object({
   frameId: z.uuid(),
   frameName: z.string(),
+  /** Frames of the bracket; 1 for a single frame. */
+  exposures: z.number().int(),
   number: z.number().int(),
   sheetNumber: z.number().int(),
   viewTitle: z.string().nullable(),

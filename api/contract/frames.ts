@@ -8,6 +8,30 @@ export type FrameState = z.infer<typeof FrameState>;
 export const FramePictures = z.object({ '480': z.string(), '960': z.string() });
 export type FramePictures = z.infer<typeof FramePictures>;
 
+/** Something to know about a frame, in plain words; for the photographer alone. */
+export const FrameCheck = z.object({
+  /** Which check it is, for filters: "highlights". */
+  check: z.string(),
+  /** One sentence. */
+  says: z.string(),
+  /** A word or two for a label. */
+  short: z.string(),
+  /** Whether somebody should look; the rest is information. */
+  toCheck: z.boolean(),
+});
+export type FrameCheck = z.infer<typeof FrameCheck>;
+
+/** Near-doubles stand together, so that one is kept. */
+export const Alike = z.object({
+  /** The same for all frames of the group. */
+  group: z.uuid(),
+  /** Frames of the group. */
+  count: z.number().int(),
+  /** Where it is the sharpest or the softest of them. */
+  is: z.enum(['sharpest', 'softest']).nullable(),
+});
+export type Alike = z.infer<typeof Alike>;
+
 /** A frame in a list: what a row of pictures needs and no more, as there may be ten thousand. */
 export const FrameItem = z.object({
   id: z.uuid(),
@@ -33,8 +57,36 @@ export const FrameItem = z.object({
   iso: z.number().int().nullable(),
   /** Millimetres. */
   focalLength: z.number().nullable(),
+  /** The bracket it belongs to. */
+  bracketId: z.uuid().nullable(),
+  /** Empty as well while it has not been measured yet. */
+  checks: z.array(FrameCheck),
+  /** Null where no other frame looks nearly alike. */
+  alike: Alike.nullable(),
 });
 export type FrameItem = z.infer<typeof FrameItem>;
+
+/** Parts of 100,000 of the picture in each of 64 steps from black to white. */
+const Tones = z.array(z.number().int());
+/** Shares of the picture at one end of the scale, 0 to 1. */
+const AtLimit = z.object({
+  /** In at least one channel. */
+  any: z.number(),
+  /** In all three. */
+  all: z.number(),
+  /** In large areas, where it is no lamp. */
+  areas: z.number(),
+});
+
+/** What the viewer shows of a frame's measures. */
+export const ShownMeasures = z.object({
+  histogram: z.object({ red: Tones, green: Tones, blue: Tones, luma: Tones }),
+  highlights: AtLimit,
+  shadows: AtLimit,
+  /** Stops between the brightest parts and the limit. */
+  headroom: z.number(),
+});
+export type ShownMeasures = z.infer<typeof ShownMeasures>;
 
 /** A frame with everything that is known of it. */
 export const Frame = FrameItem.extend({
@@ -64,6 +116,10 @@ export const Frame = FrameItem.extend({
   hiddenAt: z.iso.datetime().nullable(),
   deletedAt: z.iso.datetime().nullable(),
   createdAt: z.iso.datetime(),
+  /** Stops brighter than the lead of its bracket. */
+  step: z.number().nullable(),
+  /** Null until it is measured. */
+  measures: ShownMeasures.nullable(),
 });
 export type Frame = z.infer<typeof Frame>;
 
@@ -102,6 +158,13 @@ export const FrameSummary = z.object({
   /** Bytes of the originals. */
   bytes: z.number().int(),
   underNoView: z.number().int(),
+  brackets: z.number().int(),
+  /** Frames in no bracket. */
+  single: z.number().int(),
+  /** Frames with something that somebody should look at. */
+  toCheck: z.number().int(),
+  /** Frames that look nearly like another. */
+  alike: z.number().int(),
   views: z.array(z.object({ viewId: z.uuid(), count: z.number().int() })),
   can: z.object({ upload: z.boolean(), change: z.boolean() }),
 });
@@ -135,6 +198,8 @@ export const CommissionEvent = z.union([
   z.object({ what: z.literal('upload-failed'), uploadId: z.uuid(), problem: z.string() }),
   z.object({ what: z.enum(['frame-added', 'frame-ready', 'frame-failed']), frameId: z.uuid(), uploadId: z.uuid().nullable() }),
   z.object({ what: z.literal('frames-changed') }),
+  /** Frames were measured, grouped or merged: read brackets and frames anew. */
+  z.object({ what: z.literal('brackets-changed') }),
   z.object({ what: z.literal('missed') }),
   z.object({ what: z.string() }).loose(),
 ]);

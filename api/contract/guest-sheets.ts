@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import type { Operation } from './operation.ts';
-import { SheetStateName, WriteToGuests } from './sheets.ts';
+import { Exposures, SheetStateName, WriteToGuests } from './sheets.ts';
+import { Uses } from './uses.ts';
 
 export const Role = z.enum(['lead', 'reviewer']);
 
@@ -29,6 +30,8 @@ export const GuestSheet = z.object({
   lastPickList: z
     .object({ number: z.number().int(), sentAt: z.iso.datetime(), sentBy: z.string(), picks: z.number().int(), extras: z.number().int() })
     .nullable(),
+  /** What a picture may be wanted for; whether it is good for it is worked out in the browser. */
+  uses: Uses,
   can: z.object({ mark: z.boolean(), send: z.boolean(), invite: z.boolean() }),
 });
 export type GuestSheet = z.infer<typeof GuestSheet>;
@@ -54,7 +57,11 @@ export const GuestProof = z.object({
     focalLength: z.number().nullable(),
     /** The camera's wall clock without zone. */
     takenLocal: z.string().nullable(),
+    /** The shortest and the longest time of a bracket, in seconds; null for a single frame. */
+    shutterRange: z.object({ fastest: z.number(), slowest: z.number() }).nullable(),
   }),
+  /** Null for a single frame. */
+  exposures: Exposures.nullable(),
 });
 export type GuestProof = z.infer<typeof GuestProof>;
 

@@ -1,3 +1,5 @@
+import * as brackets from './brackets.ts';
+import * as checks from './checks.ts';
 import * as clients from './clients.ts';
 import * as commissions from './commissions.ts';
 import * as deliveries from './deliveries.ts';
@@ -17,6 +19,7 @@ import * as signIn from './sign-in.ts';
 import * as studios from './studios.ts';
 import * as team from './team.ts';
 import * as uploads from './uploads.ts';
+import * as uses from './uses.ts';
 import * as watermark from './watermark.ts';
 
 /** Everything a file of the contract exports: schemas under their names, and lists of operations. */
@@ -31,13 +34,14 @@ export interface Section {
 /** The whole contract, in the order it is read. A file that is named here is described, documented and swept without a further line. */
 export const sections: readonly Section[] = [
   { name: 'Signing in', module: signIn },
-  { name: 'Studio', module: studios },
+  { name: 'Studio', module: { ...studios, ...checks, ...uses } },
   { name: 'Team', module: team },
   { name: 'Desk', module: desk },
   { name: 'Clients', module: clients },
   { name: 'Commissions', module: commissions },
   { name: 'Uploads', module: uploads },
   { name: 'Frames', module: frames },
+  { name: 'Brackets', module: brackets },
   { name: 'Proof sheets', module: sheets },
   { name: 'Watermark', module: watermark },
   { name: 'Pick lists', module: pickLists },

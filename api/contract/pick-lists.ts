@@ -7,6 +7,8 @@ export const PickRow = z.object({
   proofNumber: z.number().int(),
   frameId: z.uuid(),
   frameName: z.string(),
+  /** Every frame that was picked with it: all of a bracket, darkest first; else the frame alone. */
+  frames: z.array(z.object({ id: z.uuid(), name: z.string() })),
   viewTitle: z.string().nullable(),
   extra: z.boolean(),
   markedBy: z.array(z.object({ name: z.string(), initials: z.string(), role: z.enum(['lead', 'reviewer']) })),
@@ -14,6 +16,7 @@ export const PickRow = z.object({
   height: z.number().int(),
   placeholder: z.string().nullable(),
   picture: z.string().nullable(),
+  /** Bytes of its originals. */
   sizeBytes: z.number().int(),
   /** The finished file, where one was matched: its newest version's number. */
   final: z.object({ finalId: z.uuid(), versions: z.number().int() }).nullable(),
@@ -39,6 +42,8 @@ export const PickListDetail = z.object({
   extraPrice: z.number().int(),
   currency: z.string(),
   originalsBytes: z.number().int(),
+  /** Frames that were picked, those of brackets counted one by one. */
+  originals: z.number().int(),
   picks: z.array(PickRow),
   /** Picks of the list before that are not in this one. */
   dropped: z.array(z.object({ proofNumber: z.number().int(), frameName: z.string(), viewTitle: z.string().nullable() })),

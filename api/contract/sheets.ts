@@ -34,17 +34,32 @@ export const SheetSummary = z.object({
 });
 export type SheetSummary = z.infer<typeof SheetSummary>;
 
+/** What a bracket's proof is made of. */
+export const Exposures = z.object({
+  /** Frames of the bracket. */
+  count: z.number().int(),
+  /** The picture is fused from them; else it is the lead frame alone. */
+  merged: z.boolean(),
+  /** "5 exposures merged". */
+  says: z.string(),
+});
+export type Exposures = z.infer<typeof Exposures>;
+
 export const StudioProof = z.object({
   id: z.uuid(),
   number: z.number().int(),
   frameId: z.uuid(),
   frameName: z.string(),
+  /** The bracket it stands for; `frameId` is then the bracket's lead. */
+  bracketId: z.uuid().nullable(),
+  /** Null for a single frame. */
+  exposures: Exposures.nullable(),
   viewId: z.uuid().nullable(),
   width: z.number().int(),
   height: z.number().int(),
   placeholder: z.string().nullable(),
   ready: z.boolean(),
-  /** Addresses of the frame's pictures without watermark. */
+  /** Addresses of the pictures without watermark, of the frame or of the merged bracket. */
   pictures: z.object({ small: z.string(), medium: z.string() }),
   markedBy: z.array(z.string()),
   picked: z.boolean(),

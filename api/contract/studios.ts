@@ -1,8 +1,10 @@
 import { z } from 'zod';
 import { looksLikeCurrency } from '../domain/currencies.ts';
+import { CheckThresholds } from './checks.ts';
 import type { Operation } from './operation.ts';
 import { EmailAddress, NameLine } from './person.ts';
 import { TimeZone } from './time-zone.ts';
+import { Uses } from './uses.ts';
 
 export const StudioSettings = z.object({
   name: z.string(),
@@ -43,6 +45,24 @@ export const StudioStorage = z.object({
 });
 export type StudioStorage = z.infer<typeof StudioStorage>;
 
+/** From where on frames are pointed out, and from where where nobody changed it. */
+export const StudioChecks = z.object({
+  thresholds: CheckThresholds,
+  defaults: CheckThresholds,
+  can: z.object({ change: z.boolean() }),
+});
+export type StudioChecks = z.infer<typeof StudioChecks>;
+
+export const ChangeChecks = z.object({ thresholds: CheckThresholds });
+export type ChangeChecks = z.infer<typeof ChangeChecks>;
+
+/** What the studio's clients want pictures for, and the list a studio begins with. */
+export const StudioUses = z.object({ uses: Uses, defaults: Uses, can: z.object({ change: z.boolean() }) });
+export type StudioUses = z.infer<typeof StudioUses>;
+
+export const ChangeUses = z.object({ uses: Uses });
+export type ChangeUses = z.infer<typeof ChangeUses>;
+
 export const studiosOperations: Operation[] = [
   { method: 'get', path: '/api/studio', summary: "The studio's settings", who: 'staff', answer: StudioSettings },
   {
@@ -62,4 +82,22 @@ export const studiosOperations: Operation[] = [
     answer: z.object({ items: z.array(Currency) }),
   },
   { method: 'get', path: '/api/studio/storage', summary: 'What is stored, by kind, and the limit', who: 'staff', answer: StudioStorage },
+  { method: 'get', path: '/api/studio/checks', summary: 'From where on frames are pointed out', who: 'staff', answer: StudioChecks },
+  {
+    method: 'put',
+    path: '/api/studio/checks',
+    summary: 'Change from where on frames are pointed out',
+    who: 'owner',
+    body: ChangeChecks,
+    answer: StudioChecks,
+  },
+  { method: 'get', path: '/api/studio/uses', summary: 'What pictures are wanted for', who: 'staff', answer: StudioUses },
+  {
+    method: 'put',
+    path: '/api/studio/uses',
+    summary: 'Change what pictures are wanted for',
+    who: 'owner',
+    body: ChangeUses,
+    answer: StudioUses,
+  },
 ];
