@@ -9,6 +9,7 @@ export const TO_TEST = [
   ...TO_RUN,
   ...['chromium', 'fonts-lato', 's3cmd', 'nginx-light', 'curl', 'zip', 'unzip', 'p7zip-full', 'libarchive-tools', 'python3'],
   ...['libimage-exiftool-perl', 'libvips-tools', 'liblcms2-utils', 'colord-data', 'icc-profiles-free', 'mate-backgrounds'],
+  ...['enfuse', 'lomiri-wallpapers-16.04'],
 ];
 
 const POLICY_FILE = '/usr/sbin/policy-rc.d';
