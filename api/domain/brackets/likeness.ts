@@ -1,0 +1,106 @@
+import type { Exposure } from './row.ts';
+
+/** What two thumbs say about each other. */
+export interface Likeness {
+  /** One composition, or two; 'unknown' where too little of both is neither black nor white, or there is nothing to see. */
+  pictures: 'alike' | 'different' | 'unknown';
+  /** Stops by which the second picture is brighter; null where it cannot be measured. */
+  brighter: number | null;
+}
+
+const SIDE = 32;
+/** A cell is compared where neither picture is near its limits: in there tones are lost, and small numbers are coarse. */
+const [DARKEST, BRIGHTEST] = [12, 243];
+/** Share of the picture that must be comparable. */
+const ENOUGH = 0.12;
+/** Stops of detail below which there is nothing to compare but noise. */
+const FLAT = 0.06;
+const [ALIKE, DIFFERENT] = [0.6, 0.4];
+
+/** Stops of each 8-bit value, through the inverse of the sRGB curve (IEC 61966-2-1). */
+const STOPS = Float64Array.from({ length: 256 }, (_, value) => {
+  const v = Math.max(value, 0.5) / 255;
+  return Math.log2(v <= 0.04045 ? v / 12.92 : ((v + 0.055) / 1.055) ** 2.4);
+});
+
+const decoded = new WeakMap<object, Uint8Array | null>();
+
+function thumbOf({ frame }: Exposure): Uint8Array | null {
+  const kept = decoded.get(frame);
+  if (kept !== undefined) return kept;
+  const thumb = frame.thumb === null ? null : decode(frame.thumb);
+  decoded.set(frame, thumb);
+  return thumb;
+}
+
+/** Null for what is no thumb. */
+function decode(base64: string): Uint8Array | null {
+  try {
+    const bytes = Uint8Array.from(atob(base64), (letter) => letter.charCodeAt(0));
+    return bytes.length === SIDE * SIDE ? bytes : null;
+  } catch {
+    return null;
+  }
+}
+
+function comparable(one: Uint8Array, two: Uint8Array): Uint8Array {
+  const inside = (value: number) => value >= DARKEST && value <= BRIGHTEST;
+  return one.map((value, at) => (inside(value) && inside(two[at] as number) ? 1 : 0));
+}
+
+/**
+ * What is left of a picture, in stops, once the mean of every row and of every column is taken out: a bright sky above dark houses looks
+ * the same wherever one turns, the houses do not.
+ */
+function detail(thumb: Uint8Array, mask: Uint8Array): Float64Array {
+  const stops = Float64Array.from(thumb, (value) => STOPS[value] as number);
+  for (let pass = 0; pass < 2; pass++) {
+    for (let line = 0; line < SIDE; line++) {
+      centre(stops, mask, line * SIDE, 1);
+      centre(stops, mask, line, SIDE);
+    }
+  }
+  return stops;
+}
+
+function centre(values: Float64Array, mask: Uint8Array, from: number, step: number): void {
+  let [sum, count] = [0, 0];
+  for (let i = 0, at = from; i < SIDE; i++, at += step) {
+    if (mask[at]) [sum, count] = [sum + (values[at] as number), count + 1];
+  }
+  const mean = count > 0 ? sum / count : 0;
+  for (let i = 0, at = from; i < SIDE; i++, at += step) values[at] = (values[at] as number) - mean;
+}
+
+/** Mean product over the cells that are compared. */
+function product(one: Float64Array, two: Float64Array, mask: Uint8Array, count: number): number {
+  let sum = 0;
+  for (let at = 0; at < mask.length; at++) if (mask[at]) sum += (one[at] as number) * (two[at] as number);
+  return sum / count;
+}
+
+function medianDifference(one: Uint8Array, two: Uint8Array, mask: Uint8Array): number {
+  const differences: number[] = [];
+  for (let at = 0; at < mask.length; at++) {
+    if (mask[at]) differences.push((STOPS[two[at] as number] as number) - (STOPS[one[at] as number] as number));
+  }
+  differences.sort((a, b) => a - b);
+  return differences[differences.length >> 1] as number;
+}
+
+/** Compares two pictures by their thumbs, brightness taken out: where both hold tones, their details must go together. */
+export function likeness(first: Exposure, second: Exposure): Likeness {
+  const [one, two] = [thumbOf(first), thumbOf(second)];
+  if (!one || !two) return { pictures: 'unknown', brighter: null };
+  const mask = comparable(one, two);
+  const count = mask.reduce((sum, value) => sum + value, 0);
+  if (count < ENOUGH * mask.length) return { pictures: 'unknown', brighter: null };
+  return { pictures: pictures(detail(one, mask), detail(two, mask), mask, count), brighter: medianDifference(one, two, mask) };
+}
+
+function pictures(one: Float64Array, two: Float64Array, mask: Uint8Array, count: number): Likeness['pictures'] {
+  const [oneSpread, twoSpread] = [Math.sqrt(product(one, one, mask, count)), Math.sqrt(product(two, two, mask, count))];
+  if (Math.max(oneSpread, twoSpread) < FLAT) return 'unknown';
+  const together = product(one, two, mask, count) / (oneSpread * twoSpread || 1);
+  return together >= ALIKE ? 'alike' : together < DIFFERENT ? 'different' : 'unknown';
+}

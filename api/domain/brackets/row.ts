@@ -1,0 +1,122 @@
+import { brightness } from './stops.ts';
+import type { BracketCandidate } from './candidate.ts';
+import { compareNumbers, fileNumber, filesBetween, type FileNumber } from './file-number.ts';
+import { momentsOf, type Moment } from './moment.ts';
+
+/** A frame with what is derived from it once. */
+export interface Exposure {
+  frame: BracketCandidate;
+  moment: Moment;
+  file: FileNumber;
+  /** See stops.ts; null where the shutter time is unknown. */
+  stops: number | null;
+  /** Milliseconds that the shutter was open. */
+  lasts: number;
+}
+
+/** Exposures of one body with one setting of lens and size, each begun soon after the one before it. */
+export type Row = Exposure[];
+
+/** The next frame of a bracket begins within this after the end of the one before it. Milliseconds. */
+export const LONGEST_PAUSE = 2000;
+/** A shutter marked 30 s is open for 32 s: engraved times are up to 7 % off. */
+const ENGRAVED = 0.07;
+
+function fits<T>(one: T | null, two: T | null): boolean {
+  return one === null || two === null || one === two;
+}
+
+function sameBody(one: BracketCandidate, two: BracketCandidate): boolean {
+  if (one.serial !== null && two.serial !== null) return one.serial === two.serial && fits(one.model, two.model);
+  return one.make === two.make && one.model === two.model;
+}
+
+function sameFocalLength(one: number | null, two: number | null): boolean {
+  return one === null || two === null || Math.abs(one - two) <= 0.01 * one;
+}
+
+/** A picture and its raw file are two rows: a bracket lies in files of one kind. */
+function sameKind(one: Exposure, two: Exposure): boolean {
+  return one.file.extension === two.file.extension;
+}
+
+function sameSetting({ frame: one }: Exposure, { frame: two }: Exposure): boolean {
+  const sameSize = one.width === two.width && one.height === two.height;
+  return sameSize && sameBody(one, two) && fits(one.lens, two.lens) && sameFocalLength(one.focalLength, two.focalLength);
+}
+
+/** Shortest time, in milliseconds, between the end of one exposure and the beginning of the next, as far as the clock can tell. */
+export function pauseBetween(one: Exposure, two: Exposure): number {
+  return two.moment.begins - (one.moment.begins + one.moment.unsure) - one.lasts * (1 + ENGRAVED);
+}
+
+/** One body cannot begin an exposure while the shutter is open. */
+function overlap(one: Exposure, two: Exposure): boolean {
+  return two.moment.begins + two.moment.unsure < one.moment.begins + one.lasts * (1 - 2 * ENGRAVED) - 100;
+}
+
+function last(row: Row): Exposure {
+  return row[row.length - 1] as Exposure;
+}
+
+function continues(row: Row, next: Exposure): boolean {
+  const before = last(row);
+  if (!sameKind(before, next) || pauseBetween(before, next) > LONGEST_PAUSE || overlap(before, next)) return false;
+  return row.slice(-9).every((one) => sameSetting(one, next));
+}
+
+/** How surely a frame comes from the body of a row: by its serial number, then by the counter in the file names. */
+function nearness(row: Row, next: Exposure): number {
+  const before = last(row);
+  const serial = before.frame.serial !== null && before.frame.serial === next.frame.serial ? 4 : 0;
+  const files = filesBetween(before.file, next.file);
+  return serial + (files === 1 ? 2 : files !== null && Math.abs(files) < 20 ? 1 : 0);
+}
+
+/** The body has turned to something else: what it was at before is over. */
+function isOver(row: Row, next: Exposure): boolean {
+  const before = last(row);
+  if (pauseBetween(before, next) > LONGEST_PAUSE) return true;
+  if (!sameKind(before, next) || !sameBody(before.frame, next.frame)) return false;
+  const sameSerial = before.frame.serial !== null && before.frame.serial === next.frame.serial;
+  return sameSerial || filesBetween(before.file, next.file) === 1;
+}
+
+function inOrder(one: Exposure, two: Exposure): number {
+  return (
+    one.moment.begins - two.moment.begins ||
+    compareNumbers(one.file, two.file) ||
+    (one.stops ?? 0) - (two.stops ?? 0) ||
+    (one.frame.id < two.frame.id ? -1 : 1)
+  );
+}
+
+function exposuresOf(frames: readonly BracketCandidate[]): Exposure[] {
+  const moments = momentsOf(frames);
+  const exposures = [...moments].map(([frame, moment]) => ({
+    frame,
+    moment,
+    file: fileNumber(frame.name),
+    stops: brightness(frame),
+    lasts: Math.max(0, frame.exposureTime ?? 0) * 1000,
+  }));
+  return exposures.sort(inOrder);
+}
+
+/** Follows every body through the shoot: frames of several bodies may lie between each other. Rows are in the order they began. */
+export function rowsOf(frames: readonly BracketCandidate[]): Row[] {
+  const rows: Row[] = [];
+  let open: Row[] = [];
+  for (const next of exposuresOf(frames)) {
+    const own = open
+      .filter((row) => continues(row, next))
+      .reduce<Row | null>((best, row) => (best && nearness(best, next) >= nearness(row, next) ? best : row), null);
+    open = open.filter((row) => row === own || !isOver(row, next));
+    if (own) own.push(next);
+    else {
+      open.push([next]);
+      rows.push(open[open.length - 1] as Row);
+    }
+  }
+  return rows;
+}
