@@ -55,6 +55,8 @@ export default defineConfig({
   test: {
     testTimeout: 30_000,
     hookTimeout: 90_000,
+    // Of two cores the default would leave one idle: most files wait for a database, a browser or a child at least half the time.
+    maxWorkers: '100%',
     projects: [
       {
         extends: true,

@@ -240,7 +240,8 @@ describe('requests signed by the SDK of AWS', () => {
     method: fc.constantFrom('GET', 'PUT', 'HEAD', 'DELETE', 'POST'),
     path: fc.array(fc.oneof(word, fc.constantFrom('..', '.', '')), { minLength: 1, maxLength: 5 }),
     query: fc.dictionary(
-      word.filter((name) => !/^x-amz-/i.test(name)),
+      // The signer itself loses a parameter named __proto__: it collects them in a plain object.
+      word.filter((name) => !/^x-amz-|^__proto__$/i.test(name)),
       word,
       { maxKeys: 4, noNullPrototype: true },
     ),
