@@ -10,6 +10,9 @@ import * as workerBeats from './20261201111000_worker_beats.ts';
 import * as links from './20261201112000_links.ts';
 import * as versionsOfViewsAndContacts from './20261201112000_versions_of_views_and_contacts.ts';
 import * as downloadsCovered from './20261201113000_downloads_covered.ts';
+import * as brackets from './20261201120000_brackets.ts';
+import * as measures from './20261201121000_measures.ts';
+import * as checksAndUses from './20261201122000_checks_and_uses.ts';
 
 /** Every migration in the order it runs. Names carry no file ending, so that they stay the same however the code is run. */
 const migrations: Record<string, Knex.Migration> = {
@@ -24,6 +27,9 @@ const migrations: Record<string, Knex.Migration> = {
   '20261201112000_links': links,
   '20261201112000_versions_of_views_and_contacts': versionsOfViewsAndContacts,
   '20261201113000_downloads_covered': downloadsCovered,
+  '20261201120000_brackets': brackets,
+  '20261201121000_measures': measures,
+  '20261201122000_checks_and_uses': checksAndUses,
 };
 
 export const migrationSource: Knex.MigrationSource<string> = {

@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { FramePictures } from './frames.ts';
+import { FramePictures, FramesChanged } from './frames.ts';
 import type { Operation } from './operation.ts';
 
 /** A bracket has as many exposures as this. */
@@ -56,7 +56,7 @@ export type Bracket = z.infer<typeof Bracket>;
 export const BracketList = z.object({ items: z.array(Bracket) });
 export type BracketList = z.infer<typeof BracketList>;
 
-/** Whole brackets among them are taken in with all their frames, which may be named or not. */
+/** Exactly these frames: a bracket that one of them belonged to goes on without it. */
 export const JoinFrames = z.object({
   frameIds: z
     .array(z.uuid())
@@ -77,6 +77,10 @@ export const ChangeBracket = z
   .refine((change) => change.leadFrameId !== undefined || change.shows !== undefined, 'Nothing to change.');
 export type ChangeBracket = z.infer<typeof ChangeBracket>;
 
+/** Frames that are single frames now, and what is left of their bracket: null where that was one frame or none. */
+export const TakenOut = z.object({ frameIds: z.array(z.uuid()), bracket: Bracket.nullable() });
+export type TakenOut = z.infer<typeof TakenOut>;
+
 const many = '/api/commissions/{commissionId}/brackets';
 const bracket = '/api/brackets/{bracketId}';
 
@@ -91,13 +95,13 @@ export const bracketOperations: Operation[] = [
     body: ChangeBracket,
     answer: Bracket,
   },
-  { method: 'post', path: `${bracket}/split`, summary: 'Make its frames single frames', who: 'staff', answer: BracketList },
+  { method: 'post', path: `${bracket}/split`, summary: 'Make its frames single frames', who: 'staff', answer: FramesChanged },
   {
     method: 'post',
     path: `${bracket}/take-out`,
     summary: 'Take frames out of it; where one is left the bracket goes',
     who: 'staff',
     body: TakeOutFrames,
-    answer: BracketList,
+    answer: TakenOut,
   },
 ];

@@ -3,6 +3,7 @@ import { StudioRow } from './StudioRow.ts';
 /** One uploaded exposure, with its file untouched. */
 export class Frame extends StudioRow {
   static override tableName = 'frames';
+  static override jsonAttributes = ['alike'];
   static override modifiers = {
     present: (query: { whereNull(column: string): unknown }) => void query.whereNull('frames.deletedAt'),
   };
@@ -10,6 +11,9 @@ export class Frame extends StudioRow {
   declare commissionId: string;
   declare uploadId: string | null;
   declare viewId: string | null;
+  declare bracketId: string | null;
+  /** Somebody decided which bracket it belongs to, or that it belongs to none: the machine leaves it alone. */
+  declare groupedByHand: boolean;
   declare state: 'reading' | 'ready' | 'failed';
   declare problem: string | null;
   declare originalName: string;
@@ -24,6 +28,9 @@ export class Frame extends StudioRow {
   /** ThumbHash in base64. */
   declare placeholder: string | null;
   declare recipe: number | null;
+  /** Version of the measuring that was done; its outcome is in FrameMeasure, or nothing could be measured. */
+  declare measuresRecipe: number | null;
+  declare alike: { group: string; count: number; is: 'sharpest' | 'softest' | null } | null;
   /** The camera's wall clock, "2026-10-28T17:06:12.34". */
   declare takenLocal: string | null;
   declare takenOffsetMinutes: number | null;

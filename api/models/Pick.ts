@@ -10,6 +10,8 @@ export class Pick extends StudioRow {
   declare proofId: string;
   declare proofNumber: number;
   declare frameId: string;
+  /** All frames of a bracket, darkest first; empty for a single frame. */
+  declare frameIds: string[];
   declare frameName: string;
   declare viewId: string | null;
   declare viewTitle: string | null;

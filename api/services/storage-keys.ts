@@ -25,13 +25,22 @@ export function frameKey(
   return `${commission(frame.studioId, frame.commissionId)}/pictures/frames/${frame.id}/r${frame.recipe ?? RECIPE}-${size}.jpg`;
 }
 
-/** A proof's picture with the sheet's watermark. */
+/** A bracket's merged picture without watermark, named by what it was made of. */
+export function mergedKey(
+  bracket: { studioId: string; commissionId: string; id: string; madeOf: string | null },
+  size: DerivativeSize,
+): string {
+  return `${commission(bracket.studioId, bracket.commissionId)}/pictures/brackets/${bracket.id}/m${bracket.madeOf ?? ''}-${size}.jpg`;
+}
+
+/** A proof's picture with the sheet's watermark, named by that and by what lies below it where that may change. */
 export function proofKey(
-  proof: { studioId: string; sheetId: string; id: string; watermarkHash: string | null },
+  proof: { studioId: string; sheetId: string; id: string; watermarkHash: string | null; pictured?: string | null },
   commissionId: string,
   size: DerivativeSize,
 ): string {
-  return `${commission(proof.studioId, commissionId)}/pictures/sheets/${proof.sheetId}/${proof.id}/w${proof.watermarkHash ?? ''}-${size}.jpg`;
+  const name = `w${proof.watermarkHash ?? ''}${proof.pictured ? `-${proof.pictured}` : ''}`;
+  return `${commission(proof.studioId, commissionId)}/pictures/sheets/${proof.sheetId}/${proof.id}/${name}-${size}.jpg`;
 }
 
 /** A finished file's picture without watermark. */

@@ -7,7 +7,7 @@ import { sealHolds } from '../../services/picture-address.ts';
 const ID = '[0-9a-f]{8}-[0-9a-f]{4}-[0-9a-f]{4}-[0-9a-f]{4}-[0-9a-f]{12}';
 /** Keys of pictures made by us. Originals, web sizes and archives are downloads and never have such an address. */
 const PICTURE = new RegExp(
-  `^studios/${ID}/(commissions/${ID}/pictures/(frames|sheets|finals)/[0-9a-z/-]+\\.jpg|watermarks/[0-9a-f]{64}\\.png)$`,
+  `^studios/${ID}/(commissions/${ID}/pictures/(frames|brackets|sheets|finals)/[0-9a-z/-]+\\.jpg|watermarks/[0-9a-f]{64}\\.png)$`,
 );
 
 function isGone(error: unknown): boolean {
