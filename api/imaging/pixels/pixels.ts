@@ -2,6 +2,7 @@ import { availableParallelism } from 'node:os';
 import { createRequire } from 'node:module';
 import { fileURLToPath, pathToFileURL } from 'node:url';
 import workerpool from 'workerpool';
+import type { FrameMeasures } from '../../domain/frame-measures.ts';
 import type { WatermarkSettings } from '../../domain/watermark-settings.ts';
 import type { DerivativeSize } from '../derivative-sizes.ts';
 import type { Derivative } from '../make-derivatives.ts';
@@ -15,6 +16,8 @@ export interface Pixels {
   judge(path: string): Promise<Examined>;
   /** The same, and makes the file's pictures from the same decoding. */
   prepare(path: string): Promise<Prepared>;
+  /** Measures a frame's largest derivative: clipping, sharpness, tilt, hash. */
+  measure(picture: Buffer): Promise<FrameMeasures>;
   /** Lays a watermark over a picture's largest derivative; gives the sizes asked for, all of them where none is. */
   watermark(picture: Buffer, settings: WatermarkSettings, image: Buffer | null, sizes?: readonly DerivativeSize[]): Promise<Derivative[]>;
   /** Makes a PNG fit to be a watermark. */
@@ -119,6 +122,7 @@ export function createPixels(options: PixelsOptions): Pixels {
   return {
     judge: (path) => run('judge', [path, limits]),
     prepare: (path) => run('prepare', [path, limits]),
+    measure: (picture) => run('measure', [picture]),
     watermark: (picture, settings, image, sizes) => run('watermark', [picture, settings, image, sizes]),
     cleanWatermark: (png) => run('cleanWatermark', [png]),
     webSize: (path) => run('webSize', [path, limits]),

@@ -1,8 +1,10 @@
-import { judgeFile, judgeHeader, type JudgedFile, type PictureLimits } from '../judge-file.ts';
+import sharp from 'sharp';
+import type { FrameMeasures } from '../../domain/frame-measures.ts';
+import { asRefusal, judgeFile, judgeHeader, type JudgedFile, type PictureLimits } from '../judge-file.ts';
 import { makeDerivatives, type Derivatives } from '../make-derivatives.ts';
 import { makeWebSize, type WebPicture } from '../make-web-size.ts';
 import { readSettings, type ShootingSettings } from '../read-settings.ts';
-import { uprightSize } from '../upright.ts';
+import { toRaw, uprightSize } from '../upright.ts';
 import type { watermarkPicture } from '../watermark.ts';
 import type { cleanWatermarkImage } from '../watermark-mark.ts';
 
@@ -30,6 +32,14 @@ export const tasks = {
   },
   async webSize(path: string, limits: PictureLimits): Promise<WebPicture> {
     return makeWebSize(path, await judgeHeader(path, limits), limits);
+  },
+  async measure(picture: Buffer): Promise<FrameMeasures> {
+    const { measurePicture } = await import('../measure/measure-picture.ts');
+    try {
+      return measurePicture(await toRaw(sharp(picture).removeAlpha().toColourspace('srgb')));
+    } catch (error) {
+      throw asRefusal(error);
+    }
   },
   // The letters' program takes a while to open, and children that take frames in never need it.
   async watermark(...args: Parameters<typeof watermarkPicture>) {

@@ -1,0 +1,36 @@
+import { DERIVATIVE_LIMITS } from '../../domain/clipping.ts';
+import { MEASURES_RECIPE, type FrameMeasures } from '../../domain/frame-measures.ts';
+import type { RawPicture } from '../upright.ts';
+import { measureClipping } from './clipping.ts';
+import { hashOf, thumbOf } from './hash.ts';
+import { countCodes, headroomOf, histogramOf } from './histogram.ts';
+import { lumaOf } from './plane.ts';
+import { sharpnessOf } from './sharpness.ts';
+import { measureTilt } from './tilt.ts';
+
+/** Digits that mean something, and no more of them in the database. */
+function rounded<Value>(measures: Value): Value {
+  return JSON.parse(
+    JSON.stringify(measures, (_key, value: unknown) => (typeof value === 'number' ? Number(value.toPrecision(5)) : value)),
+  ) as Value;
+}
+
+/** Measures a derivative: 8 bits a channel, sRGB, decoded from a JPEG, 2560 px along its longer side or less. */
+export function measurePicture(picture: RawPicture): FrameMeasures {
+  const pixels = picture.width * picture.height;
+  const counts = countCodes(picture);
+  const luma = lumaOf(picture);
+  const thumb = thumbOf(luma);
+  return rounded({
+    recipe: MEASURES_RECIPE,
+    width: picture.width,
+    height: picture.height,
+    histogram: histogramOf(counts, pixels),
+    ...measureClipping(picture, counts, DERIVATIVE_LIMITS),
+    headroom: headroomOf(counts, pixels, DERIVATIVE_LIMITS.high),
+    sharpness: sharpnessOf(luma),
+    tilt: measureTilt(luma),
+    hash: hashOf(thumb),
+    thumb: Buffer.from(thumb).toString('base64'),
+  });
+}
