@@ -23,19 +23,24 @@ export function sayApart(apart: readonly number[]): string {
   return least === most ? sayStops(most) : `${sayNumber(least)} to ${sayStops(most)}`;
 }
 
+type Settings = Pick<BracketCandidate, 'fNumber' | 'exposureTime' | 'iso'>;
+
 /** A setting that all frames share, in words. */
-function shared(frames: readonly BracketCandidate[], say: (frame: BracketCandidate) => string | null): string | null {
+function shared(frames: readonly Settings[], say: (frame: Settings) => string | null): string | null {
   const [first = null, ...others] = frames.map(say);
   return others.every((one) => one === first) ? first : null;
 }
 
-function sayBracket(frames: readonly BracketCandidate[], apart: readonly number[]): string {
+/** What a bracket is, in words; `apart` are the stops between neighbours as far as they are known. */
+export function sayBracket(frames: readonly Settings[], apart: readonly number[]): string {
   const settings = [
     shared(frames, ({ fNumber }) => formatAperture(fNumber)),
     shared(frames, ({ exposureTime }) => formatShutter(exposureTime)),
     shared(frames, ({ iso }) => formatIso(iso)),
   ];
-  return [`${frames.length} frames`, sayApart(apart), ...settings].filter((part) => part !== null).join(', ');
+  return [`${frames.length} frames`, apart.some((stops) => stops > 0) ? sayApart(apart) : null, ...settings]
+    .filter((part) => part !== null)
+    .join(', ');
 }
 
 /** The exposure the camera measured: the one without bias where the camera wrote it, else the middle one, of two the earlier. */

@@ -20,7 +20,7 @@ function known(value: number | null): value is number {
  * How bright a frame's settings make its picture, in stops: one more doubles it. Comparable between frames of which the same settings are known;
  * a lens without contacts has no f-number, and adds none. Null without a shutter time.
  */
-export function brightness({ exposureTime, fNumber, iso }: BracketCandidate): number | null {
+export function brightness({ exposureTime, fNumber, iso }: Pick<BracketCandidate, 'exposureTime' | 'fNumber' | 'iso'>): number | null {
   if (!known(exposureTime)) return null;
   const aperture = known(fNumber) ? engraved(apertureValue(fNumber)) : 0;
   const sensitivity = known(iso) ? engraved(Math.log2(iso / 100)) : 0;
