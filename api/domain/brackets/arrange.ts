@@ -27,7 +27,7 @@ function darkestFirst(one: Exposed, two: Exposed): number {
 /** Puts the frames of a bracket in order and says what they are, whoever grouped them. */
 export function arrangeBracket<Frame extends Exposed>(frames: readonly Frame[], leadId: string): ArrangedBracket<Frame> {
   const ordered = [...frames].sort(darkestFirst);
-  const stops = ordered.map(brightness);
+  const stops = ordered.map((frame) => brightness(frame));
   const lead = stops[ordered.findIndex(({ id }) => id === leadId)] ?? null;
   const known = stops.filter((value) => value !== null);
   const apart = known.slice(1).map((value, index) => value - (known[index] ?? 0));

@@ -1,6 +1,7 @@
 import { brightness } from './stops.ts';
 import type { BracketCandidate } from './candidate.ts';
 import { compareNumbers, fileNumber, filesBetween, type FileNumber } from './file-number.ts';
+import { decodeThumb } from './likeness.ts';
 import { momentsOf, type Moment } from './moment.ts';
 
 /** A frame with what is derived from it once. */
@@ -12,6 +13,8 @@ export interface Exposure {
   stops: number | null;
   /** Milliseconds that the shutter was open. */
   lasts: number;
+  /** Decoded; see candidate.ts. */
+  thumb: Uint8Array | null;
 }
 
 /** Exposures of one body with one setting of lens and size, each begun soon after the one before it. */
@@ -99,6 +102,7 @@ function exposuresOf(frames: readonly BracketCandidate[]): Exposure[] {
     file: fileNumber(frame.name),
     stops: brightness(frame),
     lasts: Math.max(0, frame.exposureTime ?? 0) * 1000,
+    thumb: decodeThumb(frame.thumb),
   }));
   return exposures.sort(inOrder);
 }

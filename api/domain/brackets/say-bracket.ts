@@ -1,7 +1,7 @@
 import { formatAperture, formatIso, formatShutter } from '../photo-notation.ts';
 import type { BracketCandidate, FoundBracket } from './candidate.ts';
 import type { Exposure } from './row.ts';
-import { inThirds } from './stops.ts';
+import { differences, evenStep, inThirds, ladder } from './stops.ts';
 
 const FRACTIONS: Record<number, string> = { 2: '1/3', 3: '1/2', 4: '2/3' };
 
@@ -18,8 +18,9 @@ function sayStops(stops: number): string {
 
 /** "2 stops apart"; where the steps differ, "1 to 2 stops apart". */
 export function sayApart(apart: readonly number[]): string {
+  const even = evenStep(apart);
+  if (even !== null) return sayStops(inThirds(even));
   const [least, most] = [inThirds(Math.min(...apart)), inThirds(Math.max(...apart))];
-  if (Math.max(...apart) - Math.min(...apart) <= 0.34 / 2) return sayStops(inThirds(apart.reduce((a, b) => a + b, 0) / apart.length));
   return least === most ? sayStops(most) : `${sayNumber(least)} to ${sayStops(most)}`;
 }
 
@@ -57,14 +58,14 @@ function leadOf(byStops: readonly Exposure[], asTaken: readonly Exposure[]): Exp
 /** Presents exposures, in the order they were taken, as the bracket they are. */
 export function presentBracket(asTaken: readonly Exposure[]): FoundBracket {
   const byStops = [...asTaken].sort((one, two) => (one.stops as number) - (two.stops as number));
-  const stops = byStops.map((one) => one.stops as number);
   const lead = leadOf(byStops, asTaken);
   const frames = byStops.map(({ frame }) => frame);
-  const apart = stops.slice(1).map((value, index) => value - (stops[index] as number));
+  const stops = ladder(frames);
+  const metered = stops[byStops.indexOf(lead)] as number;
   return {
     frameIds: frames.map(({ id }) => id),
     leadId: lead.frame.id,
-    steps: stops.map((value) => inThirds(value - (lead.stops as number))),
-    says: sayBracket(frames, apart),
+    steps: stops.map((value) => inThirds(value - metered)),
+    says: sayBracket(frames, differences(stops)),
   };
 }

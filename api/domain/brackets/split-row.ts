@@ -1,3 +1,4 @@
+import { rememberedLikeness } from './likeness.ts';
 import type { Row } from './row.ts';
 import { worthAsBracket } from './worth.ts';
 
@@ -15,11 +16,12 @@ interface Split {
  * a row are two. Answers the brackets, in order.
  */
 export function splitRow(row: Row): Row[] {
+  const compare = rememberedLikeness();
   const best: Split[] = [{ worth: 0, length: 0 }];
   for (let end = 1; end <= row.length; end++) {
     let split: Split = { worth: (best[end - 1] as Split).worth, length: 1 };
     for (let length = 2; length <= Math.min(MOST, end); length++) {
-      const worth = worthAsBracket(row.slice(end - length, end));
+      const worth = worthAsBracket(row.slice(end - length, end), compare);
       // An exposure that stands twice stands twice in every longer part too.
       if (worth === 'never') break;
       const total = (best[end - length] as Split).worth + worth;

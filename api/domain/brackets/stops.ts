@@ -2,14 +2,18 @@ import { apertureValue, timeValue } from '../exposure.ts';
 import type { BracketCandidate } from './candidate.ts';
 
 /**
- * Engraved numbers lie up to 0.093 EV beside the exact thirds they stand for (30 s is 32 s, 1/15 s is 1/16 s, f/11 is f/11.3), so two of them
- * can be off by 0.15: what is that near a third of a stop is taken for that third. Halves, and the free times of a telephone, stay as they are.
+ * Settings are engraved as round numbers, up to 0.093 EV beside the third of a stop they stand for (30 s is 32 s, 1/15 s is 1/16 s, f/11 is f/11.3), and
+ * up to 0.178 EV beside the half (1/20 s is 1/22.6 s): what is that near is taken for it. The free times of a telephone stay as they are.
  */
-const ENGRAVING = 0.095;
+const ENGRAVING = { 3: 0.095, 2: 0.18 };
+/** What an exposure was made with; null where it is unknown. */
+export type Settings = Pick<BracketCandidate, 'exposureTime' | 'fNumber' | 'iso'>;
+/** Steps to a stop of the series a camera is set in. */
+export type Series = keyof typeof ENGRAVING;
 
-function engraved(stops: number): number {
-  const third = Math.round(stops * 3) / 3;
-  return Math.abs(stops - third) <= ENGRAVING ? third : stops;
+function engraved(stops: number, series: Series): number {
+  const exact = Math.round(stops * series) / series;
+  return Math.abs(stops - exact) <= ENGRAVING[series] ? exact : stops;
 }
 
 function known(value: number | null): value is number {
@@ -20,11 +24,11 @@ function known(value: number | null): value is number {
  * How bright a frame's settings make its picture, in stops: one more doubles it. Comparable between frames of which the same settings are known;
  * a lens without contacts has no f-number, and adds none. Null without a shutter time.
  */
-export function brightness({ exposureTime, fNumber, iso }: Pick<BracketCandidate, 'exposureTime' | 'fNumber' | 'iso'>): number | null {
+export function brightness({ exposureTime, fNumber, iso }: Settings, series: Series = 3): number | null {
   if (!known(exposureTime)) return null;
-  const aperture = known(fNumber) ? engraved(apertureValue(fNumber)) : 0;
-  const sensitivity = known(iso) ? engraved(Math.log2(iso / 100)) : 0;
-  return sensitivity - engraved(timeValue(exposureTime)) - aperture;
+  const aperture = known(fNumber) ? engraved(apertureValue(fNumber), series) : 0;
+  const sensitivity = known(iso) ? engraved(Math.log2(iso / 100), series) : 0;
+  return sensitivity - engraved(timeValue(exposureTime), series) - aperture;
 }
 
 /** Stops to the nearest third or half, whichever is nearer: what cameras can be set to. */
@@ -32,4 +36,26 @@ export function inThirds(stops: number): number {
   const [third, half] = [Math.round(stops * 3) / 3, Math.round(stops * 2) / 2];
   const nearer = Math.abs(stops - half) + 0.01 < Math.abs(stops - third) ? half : third;
   return nearer === 0 ? 0 : nearer;
+}
+
+export function differences(values: readonly number[]): number[] {
+  return values.slice(1).map((value, index) => value - (values[index] as number));
+}
+
+/** Steps are even within a sixth of a stop. */
+export const EVEN = 0.17;
+
+/** The step that all of these are; null where they differ. */
+export function evenStep(apart: readonly number[]): number | null {
+  const mean = apart.reduce((sum, step) => sum + step, 0) / apart.length;
+  return apart.every((step) => Math.abs(step - mean) <= EVEN) ? mean : null;
+}
+
+/** Brightness of frames sorted by it, read in the series of thirds, or in that of halves where only there the steps are even. */
+export function ladder(sorted: readonly Settings[]): number[] {
+  const read = (series: Series) => sorted.map((one) => brightness(one, series) ?? NaN);
+  const thirds = read(3);
+  if (sorted.length < 3 || evenStep(differences(thirds)) !== null) return thirds;
+  const halves = read(2);
+  return evenStep(differences(halves)) === null ? thirds : halves;
 }

@@ -1,19 +1,15 @@
-import { likeness, type Likeness } from './likeness.ts';
+import type { Compare, Likeness } from './likeness.ts';
 import type { Exposure, Row } from './row.ts';
 import { readMarks, type Marks } from './marks.ts';
+import { differences, EVEN, evenStep, ladder } from './stops.ts';
 
 /** Two exposures less than a third of a stop apart are the same; a telephone's free times are a little off the third. */
 const SAME = 0.27;
-/** Steps count as even within a sixth of a stop, as far as engraved numbers can be off. */
-const EVEN = 0.17;
 const USUAL_COUNTS = [3, 5, 7, 9];
-
-function differences(values: readonly number[]): number[] {
-  return values.slice(1).map((value, index) => value - (values[index] as number));
-}
 
 /** How far steps are from even, 0 to some; one that was lost leaves a step of two or three times the others. */
 function unevenness(apart: readonly number[]): number {
+  if (evenStep(apart) !== null) return 0;
   const usual = [...apart].sort((one, two) => one - two)[(apart.length - 1) >> 1] as number;
   return apart.reduce((sum, step) => {
     if (Math.abs(step - usual) <= EVEN) return sum;
@@ -22,11 +18,11 @@ function unevenness(apart: readonly number[]): number {
 }
 
 /** Cameras go from dark to bright, from bright to dark, or begin with the middle (makers' manuals). */
-function inUsualOrder(asTaken: readonly number[], sorted: readonly number[]): boolean {
-  const steps = differences(asTaken);
-  if (steps.every((step) => step > 0) || steps.every((step) => step < 0)) return true;
+function inUsualOrder(asTaken: Row, sorted: Row): boolean {
+  const places = asTaken.map((one) => sorted.indexOf(one));
+  const steps = differences(places);
   const half = (sorted.length - 1) / 2;
-  return asTaken[0] === sorted[Math.floor(half)] || asTaken[0] === sorted[Math.ceil(half)];
+  return steps.every((step) => step > 0) || steps.every((step) => step < 0) || Math.abs((places[0] as number) - half) < 1;
 }
 
 /** Seconds that passed between the exposures. */
@@ -39,6 +35,7 @@ function pauses(row: Row): number {
 
 interface Looks {
   different: boolean;
+  doubtful: boolean;
   /** Some neighbours are seen to be one composition, brighter by about what the settings say. */
   confirmed: boolean;
   /** Pictures stay as bright as before although the settings say otherwise: the meter followed the light. */
@@ -48,14 +45,15 @@ interface Looks {
 /** What a tone curve leaves of a stop, at least. */
 const LEFT_OF_A_STOP = 0.3;
 
-function look(sorted: readonly Exposure[], apart: readonly number[]): Looks {
+function look(sorted: readonly Exposure[], apart: readonly number[], compare: Compare): Looks {
   const seen = apart.map((step, index): Likeness & { share: number | null } => {
-    const found = likeness(sorted[index] as Exposure, sorted[index + 1] as Exposure);
+    const found = compare(sorted[index] as Exposure, sorted[index + 1] as Exposure);
     return { ...found, share: found.brighter === null ? null : found.brighter / step };
   });
   const share = (one: { share: number | null }) => one.share ?? 1;
   return {
     different: seen.some(({ pictures }) => pictures === 'different'),
+    doubtful: seen.some(({ pictures }) => pictures === 'doubtful'),
     confirmed: seen.some((one) => one.pictures === 'alike' && one.share !== null && one.share >= LEFT_OF_A_STOP),
     unchanged: seen.some((one) => share(one) < LEFT_OF_A_STOP),
   };
@@ -64,9 +62,9 @@ function look(sorted: readonly Exposure[], apart: readonly number[]): Looks {
 /** Whether enough speaks for a bracket. What the camera marked is enough; without marks its pattern must be plain. */
 function isMeant(marks: Marks, apart: readonly number[], looks: Looks): boolean {
   if (marks.marked) return true;
+  if (looks.doubtful || looks.unchanged) return false;
   const least = Math.min(...apart);
-  if (marks.automatic) return apart.length >= 2 && least > 0.6 && unevenness(apart) === 0 && !looks.unchanged;
-  if (looks.unchanged) return false;
+  if (marks.automatic) return apart.length >= 2 && least > 0.6 && unevenness(apart) === 0;
   return apart.length >= 2 || (looks.confirmed ? least > 0.6 : least > 0.95);
 }
 
@@ -74,21 +72,15 @@ function isMeant(marks: Marks, apart: readonly number[], looks: Looks): boolean 
  * What it is worth to take these exposures, in the order they were taken, for one bracket: more frames are worth more, up to a part of a point for
  * each thing that is unusual. 0 or less: they are none. 'never': nor is any longer part that holds them.
  */
-export function worthAsBracket(row: Row): number | 'never' {
+export function worthAsBracket(row: Row, compare: Compare): number | 'never' {
   const sorted = [...row].sort((one, two) => (one.stops ?? NaN) - (two.stops ?? NaN));
-  const stops = sorted.map((one) => one.stops ?? NaN);
-  const apart = differences(stops);
-  if (!apart.every((step) => step >= SAME)) return 'never';
-  const looks = look(sorted, apart);
+  if (!differences(sorted.map((one) => one.stops ?? NaN)).every((step) => step >= SAME)) return 'never';
+  const apart = differences(ladder(sorted.map(({ frame }) => frame)));
+  const looks = look(sorted, apart, compare);
   if (looks.different) return 'never';
   const marks = readMarks(sorted, apart);
   if (!isMeant(marks, apart, looks)) return 0;
   const usual = USUAL_COUNTS.includes(row.length) ? 0.3 : 0;
-  const order = inUsualOrder(
-    row.map((one) => one.stops ?? NaN),
-    stops,
-  )
-    ? 0
-    : 0.5;
+  const order = inUsualOrder(row, sorted) ? 0 : 0.5;
   return row.length - 1 + usual - unevenness(apart) - order - 0.15 * pauses(row) - 2 * marks.against;
 }
