@@ -1,5 +1,6 @@
 import { createHash, randomBytes } from 'node:crypto';
 import { NodePostgresAdapter } from '@lucia-auth/adapter-postgresql';
+import DataLoader from 'dataloader';
 import type { CookieOptions, Request, Response } from 'express';
 import { type DatabaseSession, type DatabaseUser, Lucia, TimeSpan } from 'lucia';
 import pg from 'pg';
@@ -31,6 +32,7 @@ const COOKIES = { staff: 'oriel_studio', guest: 'oriel_guest' } as const;
 const hash = (token: string) => createHash('sha256').update(token).digest('hex');
 
 interface SessionRow {
+  id: string;
   userId: string;
   expiresAt: Date;
   kind: SessionKind;
@@ -39,22 +41,29 @@ interface SessionRow {
 }
 
 /**
- * Reads a session and whose it is in one prepared statement, where the library's adapter asks twice for whole rows: every request of a
- * signed-in person begins with this.
+ * Reads a session and whose it is in one go, where the library's adapter asks twice for whole rows. Requests that arrive in the same turn of
+ * the event loop share the question; nothing is remembered after it, so a session that was ended is gone with the next request.
  */
 class SessionTable extends NodePostgresAdapter {
-  constructor(private readonly pool: pg.Pool) {
+  readonly #rows: DataLoader<string, SessionRow | undefined>;
+
+  constructor(pool: pg.Pool) {
     super(pool, { user: 'accounts', session: 'sessions' });
+    const read = async (ids: readonly string[]) => {
+      const { rows } = await pool.query<SessionRow>({
+        name: 'sessions',
+        text: `select s.id, s.user_id as "userId", s.expires_at as "expiresAt", s.kind, a.email, a.name
+                 from sessions s join accounts a on a.id = s.user_id where s.id = any($1)`,
+        values: [ids],
+      });
+      const byId = new Map(rows.map((row) => [row.id, row]));
+      return ids.map((id) => byId.get(id));
+    };
+    this.#rows = new DataLoader(read, { cache: false, batchScheduleFn: (ask) => setImmediate(ask) });
   }
 
   override async getSessionAndUser(id: string): Promise<[DatabaseSession | null, DatabaseUser | null]> {
-    const { rows } = await this.pool.query<SessionRow>({
-      name: 'session',
-      text: `select s.user_id as "userId", s.expires_at as "expiresAt", s.kind, a.email, a.name
-               from sessions s join accounts a on a.id = s.user_id where s.id = $1`,
-      values: [id],
-    });
-    const row = rows[0];
+    const row = await this.#rows.load(id);
     if (!row) return [null, null];
     const { userId, expiresAt, kind, email, name } = row;
     return [

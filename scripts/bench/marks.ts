@@ -36,11 +36,12 @@ export async function marks(rounds: number): Promise<Figure[]> {
             await put(address(proofIds[(at * 7 + mark * 3) % proofIds.length] ?? '', accountId), cookie);
         }),
       );
+    let wrong = 0;
     const rate = async (table: string, address: (proofId: string, accountId: string) => string) => {
       await house.ctx.knex(table).delete();
       const took = await seconds(() => everybody(address));
       const [{ count } = { count: 0 }] = await house.ctx.knex(table).count<{ count: number }[]>('* as count');
-      if (Number(count) !== GUESTS * MARKS_EACH) throw new Error(`${count} marks of ${GUESTS * MARKS_EACH} in ${table}`);
+      wrong += Math.abs(Number(count) - GUESTS * MARKS_EACH);
       return (GUESTS * MARKS_EACH) / took;
     };
     const { ours, reference: theirs } = await inTurns(
@@ -50,7 +51,7 @@ export async function marks(rounds: number): Promise<Figure[]> {
     );
     return [
       figure(`${GUESTS} guests, ${MARKS_EACH} marks each`, 'marks/s', median(ours), median(theirs)),
-      figure('marks lost or doubled', 'marks', 0, null),
+      figure('marks lost or doubled, in all rounds', 'marks', wrong, null),
     ];
   } finally {
     reference.stop();

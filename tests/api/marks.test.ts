@@ -1,4 +1,5 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { setMark } from '../../api/features/marks/set-mark.ts';
 import { Mail } from '../../api/models/Mail.ts';
 import { Mark } from '../../api/models/Mark.ts';
 import { PickList } from '../../api/models/PickList.ts';
@@ -50,6 +51,27 @@ describe('marks', () => {
     const answers = await Promise.all(guests.flatMap((guest) => proofs.map((proof) => guest.agent.put(at(proof)))));
     expect(new Set(answers.map((answer) => answer.status))).toEqual(new Set([200]));
     expect(await Mark.query().where({ sheetId: sheet.id }).resultSize()).toBe(120);
+  });
+
+  it('that arrive together are allowed and refused each for itself', async () => {
+    const [open, other] = [await openSheet({ proofs: 2 }), await openSheet()];
+    const guest = ({ id }: { id: string }) => ({ kind: 'guest' as const, accountId: id, name: '', email: '', sessionId: '' });
+    const mark = (account: { id: string }, proof: { id: string }, marked = true) =>
+      setMark(house.ctx, guest(account), open.sheet.id, proof.id, marked);
+    const [first, second] = [open.proofs[0]!, open.proofs[1]!];
+    await mark(open.reviewer.account, first);
+    const done = await Promise.allSettled([
+      mark(open.lead.account, first),
+      mark(other.lead.account, first),
+      mark(open.lead.account, second),
+      mark(open.lead.account, other.proofs[0]!),
+      mark(open.reviewer.account, first, false),
+    ]);
+    expect(done.map((each) => each.status)).toEqual(['fulfilled', 'rejected', 'fulfilled', 'rejected', 'fulfilled']);
+    const left = await Mark.query().where({ sheetId: open.sheet.id }).orderBy('markedAt');
+    expect(new Set(left.map((each) => `${each.accountId}/${each.proofId}`))).toEqual(
+      new Set([first, second].map((proof) => `${open.lead.account.id}/${proof.id}`)),
+    );
   });
 
   it('are refused after the last date and after sending, with a sentence', async () => {
