@@ -60,15 +60,19 @@ export async function shrink(picture: RawPicture, size: number): Promise<RawPict
   return Math.max(picture.width, picture.height) <= size ? picture : toRaw(fromRaw(picture).resize(inside(size)));
 }
 
-/**
- * Makes the pictures people see of a file, upright, in sRGB, without metadata, never enlarged: from one decoding, each
- * smaller one from the next larger.
- * @throws Refusal where the file cannot be read to its end.
- */
-export async function makeDerivatives(path: string, judged: JudgedFile, limits: Pick<PictureLimits, 'pixels'>): Promise<Derivatives> {
-  const large = await decodeInside(path, judged, 2560, limits);
+/** Makes the pictures people see from pixels, never enlarged, each smaller one from the next larger. */
+export async function derivativesOf(picture: RawPicture): Promise<Derivatives> {
+  const large = await shrink(picture, 2560);
   const medium = await shrink(large, 960);
   const small = await shrink(medium, 480);
   const pictures = [await encodeDerivative(small, 480), await encodeDerivative(medium, 960), await encodeDerivative(large, 2560)];
   return { pictures, placeholder: await makePlaceholder(small) };
+}
+
+/**
+ * Makes the pictures people see of a file, upright, in sRGB, without metadata, from one decoding.
+ * @throws Refusal where the file cannot be read to its end.
+ */
+export async function makeDerivatives(path: string, judged: JudgedFile, limits: Pick<PictureLimits, 'pixels'>): Promise<Derivatives> {
+  return derivativesOf(await decodeInside(path, judged, 2560, limits));
 }

@@ -6,6 +6,7 @@ import type { FrameMeasures } from '../../domain/frame-measures.ts';
 import type { WatermarkSettings } from '../../domain/watermark-settings.ts';
 import type { DerivativeSize } from '../derivative-sizes.ts';
 import type { Derivative } from '../make-derivatives.ts';
+import type { BracketFrame, Merged } from '../merge/merge-pictures.ts';
 import type { WebPicture } from '../make-web-size.ts';
 import { Refusal, type RefusalCode } from '../refusal.ts';
 import type { Examined, Prepared } from './tasks.ts';
@@ -24,6 +25,8 @@ export interface Pixels {
   cleanWatermark(png: Buffer): Promise<{ data: Buffer; width: number; height: number }>;
   /** Makes the web size of a finished file. */
   webSize(path: string): Promise<WebPicture>;
+  /** Merges the frames of a bracket, given as their largest derivatives, over the one at place `lead`. */
+  merge(frames: BracketFrame[], lead: number): Promise<Merged>;
   /** Ends the children, busy or not. */
   stop(): Promise<void>;
 }
@@ -126,6 +129,7 @@ export function createPixels(options: PixelsOptions): Pixels {
     watermark: (picture, settings, image, sizes) => run('watermark', [picture, settings, image, sizes]),
     cleanWatermark: (png) => run('cleanWatermark', [png]),
     webSize: (path) => run('webSize', [path, limits]),
+    merge: (frames, lead) => run('merge', [frames, lead]),
     stop: async () => {
       for (const call of calls) call.kill();
       await pool.terminate(true);

@@ -1,6 +1,7 @@
 import sharp from 'sharp';
 import type { FrameMeasures } from '../../domain/frame-measures.ts';
 import { asRefusal, judgeFile, judgeHeader, type JudgedFile, type PictureLimits } from '../judge-file.ts';
+import type { mergePictures } from '../merge/merge-pictures.ts';
 import { makeDerivatives, type Derivatives } from '../make-derivatives.ts';
 import { makeWebSize, type WebPicture } from '../make-web-size.ts';
 import { readSettings, type ShootingSettings } from '../read-settings.ts';
@@ -40,6 +41,9 @@ export const tasks = {
     } catch (error) {
       throw asRefusal(error);
     }
+  },
+  async merge(...args: Parameters<typeof mergePictures>) {
+    return (await import('../merge/merge-pictures.ts')).mergePictures(...args);
   },
   // The letters' program takes a while to open, and children that take frames in never need it.
   async watermark(...args: Parameters<typeof watermarkPicture>) {
