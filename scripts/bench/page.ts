@@ -1,5 +1,6 @@
 import { chromium } from 'playwright-core';
 import { makeBenchGuest, makeBigSheet } from './big-sheet.ts';
+import { buildWeb, webIsStale } from '../start/build-web.ts';
 import { startBenchHouse } from './bench-house.ts';
 import { type Figure, figure, median } from './figures.ts';
 
@@ -45,6 +46,8 @@ function watch(): void {
 /** A guest's sheet of 1,000 proofs in Chromium: first row after the JSON, longest task while scrolling through all of it, layout shift, bytes of script. */
 export async function page(rounds: number): Promise<Figure[]> {
   const house = await startBenchHouse();
+  const { webRoot } = house.ctx.config;
+  if (webIsStale(webRoot)) await buildWeb(webRoot);
   const browser = await chromium.launch({ executablePath: '/usr/bin/chromium', args: FLAGS });
   try {
     const { sheet } = await makeBigSheet(house, PROOFS, true);
