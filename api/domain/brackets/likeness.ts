@@ -41,6 +41,12 @@ export function decodeThumb(base64: string | null): Uint8Array | null {
   }
 }
 
+/** Variance, in squared stops, of a value that is unsure by one. */
+const COARSENESS = Float64Array.from({ length: 256 }, (_, value) => {
+  const [darker, brighter] = [STOPS[Math.max(0, value - 1)], STOPS[Math.min(255, value + 1)]] as [number, number];
+  return ((brighter - darker) / 2) ** 2;
+});
+
 function comparable(one: Uint8Array, two: Uint8Array): Uint8Array {
   const inside = (value: number) => value >= DARKEST && value <= BRIGHTEST;
   return one.map((value, at) => (inside(value) && inside(two[at] as number) ? 1 : 0));
@@ -77,13 +83,12 @@ function product(one: Float64Array, two: Float64Array, mask: Uint8Array, count: 
   return sum / count;
 }
 
-function medianDifference(one: Uint8Array, two: Uint8Array, mask: Uint8Array): number {
-  const differences: number[] = [];
-  for (let at = 0; at < mask.length; at++) {
-    if (mask[at]) differences.push((STOPS[two[at] as number] as number) - (STOPS[one[at] as number] as number));
+function medianDifference(one: Uint8Array, two: Uint8Array, mask: Uint8Array, count: number): number {
+  const differences = new Float32Array(count);
+  for (let at = 0, n = 0; at < mask.length; at++) {
+    if (mask[at]) differences[n++] = (STOPS[two[at] as number] as number) - (STOPS[one[at] as number] as number);
   }
-  differences.sort((a, b) => a - b);
-  return differences[differences.length >> 1] as number;
+  return differences.sort()[count >> 1] as number;
 }
 
 /** Compares two pictures by their thumbs, brightness taken out: where both hold tones, their details must go together. */
@@ -92,7 +97,7 @@ function compare(one: Uint8Array | null, two: Uint8Array | null): Likeness {
   const mask = comparable(one, two);
   const count = mask.reduce((sum, value) => sum + value, 0);
   if (count < ENOUGH * mask.length) return { pictures: 'unknown', brighter: null };
-  return { pictures: pictures(detail(one, mask), detail(two, mask), mask, count), brighter: medianDifference(one, two, mask) };
+  return { pictures: pictures(one, two, mask, count), brighter: medianDifference(one, two, mask, count) };
 }
 
 export type Compare = (one: Exposure, two: Exposure) => Likeness;
@@ -108,9 +113,20 @@ export function rememberedLikeness(): Compare {
   };
 }
 
-function pictures(one: Float64Array, two: Float64Array, mask: Uint8Array, count: number): Likeness['pictures'] {
-  const [oneSpread, twoSpread] = [Math.sqrt(product(one, one, mask, count)), Math.sqrt(product(two, two, mask, count))];
-  if (Math.max(oneSpread, twoSpread) < FLAT) return 'unknown';
-  const together = product(one, two, mask, count) / (oneSpread * twoSpread || 1);
+/** Squared stops by which the values themselves are unsure: one 8-bit value is a large step in the shadows. */
+function coarseness(thumb: Uint8Array, mask: Uint8Array, count: number): number {
+  let sum = 0;
+  for (let at = 0; at < mask.length; at++) if (mask[at]) sum += COARSENESS[thumb[at] as number] as number;
+  return sum / count;
+}
+
+function pictures(one: Uint8Array, two: Uint8Array, mask: Uint8Array, count: number): Likeness['pictures'] {
+  const [oneDetail, twoDetail] = [detail(one, mask), detail(two, mask)];
+  const [oneSpread, twoSpread] = [product(oneDetail, oneDetail, mask, count), product(twoDetail, twoDetail, mask, count)];
+  if (Math.max(oneSpread, twoSpread) < FLAT ** 2) return 'unknown';
+  // What noise takes from a correlation is known (Spearman 1904, attenuation); where it takes most of it, nothing can be said.
+  const sure = Math.min(1 - coarseness(one, mask, count) / oneSpread, 1 - coarseness(two, mask, count) / twoSpread);
+  if (!(sure > 0.5)) return 'unknown';
+  const together = product(oneDetail, twoDetail, mask, count) / Math.sqrt(oneSpread * twoSpread) / sure;
   return together >= ALIKE ? 'alike' : together < DIFFERENT ? 'different' : 'doubtful';
 }

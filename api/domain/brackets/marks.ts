@@ -4,7 +4,7 @@ import type { Exposure } from './row.ts';
 export interface Marks {
   /** It says so: all frames are of an automatic bracket, or their biases differ as their exposures do. */
   marked: boolean;
-  /** It says that each frame was exposed automatically, without any bias: differences come from the meter. */
+  /** It says that each frame was exposed automatically, and nothing of a bias: differences come from the meter. */
   automatic: boolean;
   /** How many of its marks speak against this being one bracket. */
   against: number;
@@ -27,17 +27,17 @@ function readModes(frames: readonly Exposure[]): { bracket: boolean; mixed: bool
 }
 
 /** Biases of neighbours in exposure: do they differ as the exposures do? Unknown ones say nothing. */
-function readBiases(sorted: readonly Exposure[], apart: readonly number[]): { agree: boolean; differ: boolean; flat: boolean } {
+function readBiases(sorted: readonly Exposure[], apart: readonly number[]): { agree: boolean; differ: boolean } {
   const biases = sorted.map(({ frame }) => frame.exposureBias);
   const known = biases.filter((bias) => bias !== null);
   const flat = known.length > 1 && Math.max(...known) - Math.min(...known) <= SAME_BIAS;
-  if (known.length < 2 || flat) return { agree: false, differ: false, flat };
+  if (known.length < 2 || flat) return { agree: false, differ: false };
   const pairs = apart.flatMap((step, index) => {
     const [darker = null, brighter = null] = biases.slice(index, index + 2);
     return darker === null || brighter === null ? [] : [{ step, bias: brighter - darker }];
   });
   const agree = pairs.every(({ step, bias }) => bias > SAME_BIAS && Math.abs(bias - step) <= BIAS_TOLERANCE);
-  return { agree: agree && pairs.length > 0, differ: !agree, flat };
+  return { agree: agree && pairs.length > 0, differ: !agree };
 }
 
 /** Reads ExposureMode and exposure bias of frames sorted by brightness, `apart` being the stops between them. */
@@ -46,7 +46,7 @@ export function readMarks(sorted: readonly Exposure[], apart: readonly number[])
   const biases = readBiases(sorted, apart);
   return {
     marked: !modes.mixed && (modes.bracket || biases.agree),
-    automatic: modes.automatic && biases.flat,
+    automatic: modes.automatic && !biases.agree,
     against: Number(modes.mixed) + Number(biases.differ),
   };
 }

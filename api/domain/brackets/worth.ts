@@ -64,8 +64,9 @@ function isMeant(marks: Marks, apart: readonly number[], looks: Looks): boolean 
   if (marks.marked) return true;
   if (looks.doubtful || looks.unchanged) return false;
   const least = Math.min(...apart);
-  if (marks.automatic) return apart.length >= 2 && least > 0.6 && unevenness(apart) === 0;
-  return apart.length >= 2 || (looks.confirmed ? least > 0.6 : least > 0.95);
+  if (apart.length === 1) return !marks.automatic && least > (looks.confirmed ? 0.6 : 1.9);
+  const even = evenStep(apart) !== null;
+  return marks.automatic ? even && least > (looks.confirmed ? 0.6 : 0.9) : looks.confirmed || even;
 }
 
 /**
@@ -77,7 +78,7 @@ export function worthAsBracket(row: Row, compare: Compare): number | 'never' {
   if (!differences(sorted.map((one) => one.stops ?? NaN)).every((step) => step >= SAME)) return 'never';
   const apart = differences(ladder(sorted.map(({ frame }) => frame)));
   const looks = look(sorted, apart, compare);
-  if (looks.different) return 'never';
+  if (looks.different) return 0;
   const marks = readMarks(sorted, apart);
   if (!isMeant(marks, apart, looks)) return 0;
   const usual = USUAL_COUNTS.includes(row.length) ? 0.3 : 0;
