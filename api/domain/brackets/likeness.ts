@@ -34,7 +34,9 @@ const STOPS = Float64Array.from({ length: 256 }, (_, value) => {
 export function decodeThumb(base64: string | null): Uint8Array | null {
   if (base64 === null) return null;
   try {
-    const bytes = Uint8Array.from(atob(base64), (letter) => letter.charCodeAt(0));
+    const letters = atob(base64);
+    const bytes = new Uint8Array(letters.length);
+    for (let at = 0; at < bytes.length; at++) bytes[at] = letters.charCodeAt(at);
     return bytes.length === SIDE * SIDE ? bytes : null;
   } catch {
     return null;

@@ -43,7 +43,7 @@ export function differences(values: readonly number[]): number[] {
 }
 
 /** Steps are even within a sixth of a stop. */
-export const EVEN = 0.17;
+const EVEN = 0.17;
 
 /** The step that all of these are; null where they differ. */
 export function evenStep(apart: readonly number[]): number | null {
@@ -51,11 +51,19 @@ export function evenStep(apart: readonly number[]): number | null {
   return apart.every((step) => Math.abs(step - mean) <= EVEN) ? mean : null;
 }
 
-/** Brightness of frames sorted by it, read in the series of thirds, or in that of halves where only there the steps are even. */
+/** How far steps are from even, 0 to some; one that was lost leaves a step of two or three times the others. */
+export function unevenness(apart: readonly number[]): number {
+  if (evenStep(apart) !== null) return 0;
+  const usual = [...apart].sort((one, two) => one - two)[(apart.length - 1) >> 1] as number;
+  return apart.reduce((sum, step) => {
+    if (Math.abs(step - usual) <= EVEN) return sum;
+    return sum + ([2, 3].some((times) => Math.abs(step - times * usual) <= EVEN) ? 0.4 : 0.6);
+  }, 0);
+}
+
+/** Brightness of frames sorted by it, read in the series of thirds, or in that of halves where the steps are more even there. */
 export function ladder(sorted: readonly Settings[]): number[] {
-  const read = (series: Series) => sorted.map((one) => brightness(one, series) ?? NaN);
-  const thirds = read(3);
-  if (sorted.length < 3 || evenStep(differences(thirds)) !== null) return thirds;
-  const halves = read(2);
-  return evenStep(differences(halves)) === null ? thirds : halves;
+  const [thirds, halves] = ([3, 2] as const).map((series) => sorted.map((one) => brightness(one, series) ?? NaN)) as [number[], number[]];
+  if (sorted.length < 3) return thirds;
+  return unevenness(differences(halves)) < unevenness(differences(thirds)) ? halves : thirds;
 }

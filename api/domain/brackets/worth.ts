@@ -1,21 +1,11 @@
 import type { Compare, Likeness } from './likeness.ts';
 import type { Exposure, Row } from './row.ts';
 import { readMarks, type Marks } from './marks.ts';
-import { differences, EVEN, evenStep, ladder } from './stops.ts';
+import { differences, evenStep, ladder, unevenness } from './stops.ts';
 
 /** Two exposures less than a third of a stop apart are the same; a telephone's free times are a little off the third. */
 const SAME = 0.27;
 const USUAL_COUNTS = [3, 5, 7, 9];
-
-/** How far steps are from even, 0 to some; one that was lost leaves a step of two or three times the others. */
-function unevenness(apart: readonly number[]): number {
-  if (evenStep(apart) !== null) return 0;
-  const usual = [...apart].sort((one, two) => one - two)[(apart.length - 1) >> 1] as number;
-  return apart.reduce((sum, step) => {
-    if (Math.abs(step - usual) <= EVEN) return sum;
-    return sum + ([2, 3].some((times) => Math.abs(step - times * usual) <= EVEN) ? 0.4 : 0.6);
-  }, 0);
-}
 
 /** Cameras go from dark to bright, from bright to dark, or begin with the middle (makers' manuals). */
 function inUsualOrder(asTaken: Row, sorted: Row): boolean {
@@ -34,7 +24,8 @@ function pauses(row: Row): number {
 }
 
 interface Looks {
-  different: boolean;
+  /** How many neighbours are seen to be two compositions. */
+  different: number;
   doubtful: boolean;
   /** Some neighbours are seen to be one composition, brighter by about what the settings say. */
   confirmed: boolean;
@@ -52,7 +43,7 @@ function look(sorted: readonly Exposure[], apart: readonly number[], compare: Co
   });
   const share = (one: { share: number | null }) => one.share ?? 1;
   return {
-    different: seen.some(({ pictures }) => pictures === 'different'),
+    different: seen.filter(({ pictures }) => pictures === 'different').length,
     doubtful: seen.some(({ pictures }) => pictures === 'doubtful'),
     confirmed: seen.some((one) => one.pictures === 'alike' && one.share !== null && one.share >= LEFT_OF_A_STOP),
     unchanged: seen.some((one) => share(one) < LEFT_OF_A_STOP),
@@ -62,7 +53,7 @@ function look(sorted: readonly Exposure[], apart: readonly number[], compare: Co
 /** Whether enough speaks for a bracket. What the camera marked is enough; without marks its pattern must be plain. */
 function isMeant(marks: Marks, apart: readonly number[], looks: Looks): boolean {
   if (marks.marked) return true;
-  if (looks.doubtful || looks.unchanged) return false;
+  if (looks.different > 0 || looks.doubtful || looks.unchanged) return false;
   const least = Math.min(...apart);
   if (apart.length === 1) return !marks.automatic && least > (looks.confirmed ? 0.6 : 1.9);
   const even = evenStep(apart) !== null;
@@ -78,10 +69,9 @@ export function worthAsBracket(row: Row, compare: Compare): number | 'never' {
   if (!differences(sorted.map((one) => one.stops ?? NaN)).every((step) => step >= SAME)) return 'never';
   const apart = differences(ladder(sorted.map(({ frame }) => frame)));
   const looks = look(sorted, apart, compare);
-  if (looks.different) return 0;
   const marks = readMarks(sorted, apart);
   if (!isMeant(marks, apart, looks)) return 0;
   const usual = USUAL_COUNTS.includes(row.length) ? 0.3 : 0;
   const order = inUsualOrder(row, sorted) ? 0 : 0.5;
-  return row.length - 1 + usual - unevenness(apart) - order - 0.15 * pauses(row) - 2 * marks.against;
+  return row.length - 1 + usual - unevenness(apart) - order - 0.15 * pauses(row) - 2 * marks.against - looks.different;
 }

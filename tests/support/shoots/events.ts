@@ -68,11 +68,13 @@ export function bracket(work: Work, place: Place, direction: number, stops: read
   // A camera whose time is fixed by hand changes its sensitivity instead.
   const bySensitivity =
     camera.series === 'thirds' && chance.is(0.06) && stops.every((stop) => Number.isInteger(stop) && Math.abs(stop) <= 4);
+  // A hand moves by a column, which is 1.6 % of the width.
+  const unsteady = chance.is(0.2) ? 1 : 0;
   const taken = stops.map((stop) => {
     const seconds = setShutter(camera, bySensitivity ? metered : metered * 2 ** stop) as number;
     const bias = camera.biasMoves ? Math.round(stop * 10) / 10 : 0;
     const iso = bySensitivity ? 800 * 2 ** stop : camera.iso;
-    const frames = take(work, { seconds, iso, bias, mode: 2, place, direction, brighter: stop });
+    const frames = take(work, { seconds, iso, bias, mode: 2, place, direction: direction + chance.whole(0, unsteady), brighter: stop });
     work.clock += Math.min(1900, pause * chance.between(0.85, 1.25));
     return frames;
   });

@@ -21,7 +21,16 @@ export function drawPlace(chance: Chance): Place {
     drawTower(light, chance, x, wide, night);
     x += wide + chance.whole(0, 7);
   }
-  return { light };
+  return { light: soften(light) };
+}
+
+/** Windows are smaller than a column, so that most of them fall into two. */
+function soften(light: Float32Array): Float32Array {
+  return light.map((value, at) => {
+    const left = at % AROUND === 0 ? at + AROUND - 1 : at - 1;
+    const right = at % AROUND === AROUND - 1 ? at - AROUND + 1 : at + 1;
+    return 0.5 * value + 0.25 * ((light[left] as number) + (light[right] as number));
+  });
 }
 
 function drawTower(light: Float32Array, chance: Chance, from: number, wide: number, night: boolean): void {

@@ -61,7 +61,7 @@ function moveOn(work: Work): void {
 
 function photographer(chance: Chance, camera: Camera, start: number): Work {
   const work: Work = { camera, chance, clock: start, zone: camera.zone ?? chance.pick([60, 120]), frames: [], brackets: [] };
-  for (let i = chance.whole(4, 10); i > 0; i--) {
+  for (let i = chance.whole(2, 5); i > 0; i--) {
     act(work);
     moveOn(work);
   }
