@@ -20,7 +20,7 @@ function fillCells(mask: Uint8Array, width: number, height: number, bit: number)
   const marked = new Uint32Array(across * Math.ceil(height / side));
   for (let y = 0, at = 0; y < height; y++) {
     const row = Math.floor(y / side) * across;
-    for (let x = 0; x < width; x++, at++) if (mask[at]! & bit) marked[row + Math.floor(x / side)]!++;
+    for (let x = 0; x < width; x++, at++) if (mask[at]! & bit) marked[row + ((x / side) | 0)]!++;
   }
   for (let cell = 0; cell < marked.length; cell++) {
     const pixels = Math.min(side, width - (cell % across) * side) * Math.min(side, height - Math.floor(cell / across) * side);

@@ -4,43 +4,54 @@ import type { RawPicture } from '../upright.ts';
 import { findAreas } from './areas.ts';
 import type { Counts } from './histogram.ts';
 
-function shareOf(mask: Uint8Array, bit: number): number {
-  let marked = 0;
-  for (let pixel = 0; pixel < mask.length; pixel++) if (mask[pixel]! & bit) marked++;
-  return marked / mask.length;
+/** How often each combination of the mask's bits occurs. */
+function countBits(mask: Uint8Array): Uint32Array {
+  const counts = new Uint32Array(16);
+  for (let pixel = 0; pixel < mask.length; pixel++) counts[mask[pixel]!]!++;
+  return counts;
 }
 
-function inRange(counts: Uint32Array, from: number, to: number, pixels: number): number {
-  return counts.subarray(from, to + 1).reduce((sum, count) => sum + count, 0) / pixels;
+function sumWhere(counts: Uint32Array, wanted: (at: number) => boolean): number {
+  return counts.reduce((sum, count, at) => (wanted(at) ? sum + count : sum), 0);
 }
 
-function oneEnd(
+/** Bits of the mask and codes of one end of the scale. */
+interface End {
+  any: number;
+  all: number;
+  from: number;
+  to: number;
+}
+
+function measureEnd(
   mask: Uint8Array,
-  picture: RawPicture,
-  counts: Counts,
-  ends: { any: number; all: number; codes: [number, number] },
+  bits: Uint32Array,
+  { width, height }: RawPicture,
+  codes: Counts,
+  { any, all, from, to }: End,
 ): AtLimit {
-  const { width, height } = picture;
-  const areas = findAreas(mask, width, height, ends.all);
-  const channel = (of: Uint32Array) => inRange(of, ...ends.codes, mask.length);
+  const marked = (bit: number) => sumWhere(bits, (at) => (at & bit) > 0) / mask.length;
+  const channel = (counts: Uint32Array) => sumWhere(counts, (code) => code >= from && code <= to) / mask.length;
+  const areas = findAreas(mask, width, height, all);
   return {
-    any: shareOf(mask, ends.any),
-    all: shareOf(mask, ends.all),
-    red: channel(counts.red),
-    green: channel(counts.green),
-    blue: channel(counts.blue),
+    any: marked(any),
+    all: marked(all),
+    red: channel(codes.red),
+    green: channel(codes.green),
+    blue: channel(codes.blue),
     areas: areas.inLarge,
-    areasAny: findAreas(mask, width, height, ends.any).inLarge,
+    areasAny: marked(any) > marked(all) ? findAreas(mask, width, height, any).inLarge : areas.inLarge,
     largest: areas.largest,
     spots: areas.spots,
   };
 }
 
 /** Measures what lies at either end of the scale, how much and in what pieces. */
-export function measureClipping(picture: RawPicture, counts: Counts, limits: Limits): { highlights: AtLimit; shadows: AtLimit } {
-  const mask = markClipped(picture.data, picture.channels, limits);
+export function measureClipping(picture: RawPicture, codes: Counts, { high, low }: Limits): { highlights: AtLimit; shadows: AtLimit } {
+  const mask = markClipped(picture.data, picture.channels, { high, low });
+  const bits = countBits(mask);
   return {
-    highlights: oneEnd(mask, picture, counts, { any: CLIPPED.anyHigh, all: CLIPPED.allHigh, codes: [limits.high, 255] }),
-    shadows: oneEnd(mask, picture, counts, { any: CLIPPED.anyLow, all: CLIPPED.allLow, codes: [0, limits.low] }),
+    highlights: measureEnd(mask, bits, picture, codes, { any: CLIPPED.anyHigh, all: CLIPPED.allHigh, from: high, to: 255 }),
+    shadows: measureEnd(mask, bits, picture, codes, { any: CLIPPED.anyLow, all: CLIPPED.allLow, from: 0, to: low }),
   };
 }

@@ -4,9 +4,9 @@ import type { RawPicture } from '../upright.ts';
 import { measureClipping } from './clipping.ts';
 import { hashOf, thumbOf } from './hash.ts';
 import { countCodes, headroomOf, histogramOf } from './histogram.ts';
-import { lumaOf } from './plane.ts';
-import { sharpnessOf } from './sharpness.ts';
-import { measureTilt } from './tilt.ts';
+import { lumaOf, shrinkInside } from './plane.ts';
+import { SHARPNESS_SIDE, sharpnessOf } from './sharpness.ts';
+import { measureTilt, TILT_SIDE } from './tilt.ts';
 
 /** Digits that mean something, and no more of them in the database. */
 function rounded<Value>(measures: Value): Value {
@@ -20,7 +20,10 @@ export function measurePicture(picture: RawPicture): FrameMeasures {
   const pixels = picture.width * picture.height;
   const counts = countCodes(picture);
   const luma = lumaOf(picture);
-  const thumb = thumbOf(luma);
+  // Each smaller picture is made from the next larger one: means of means of areas are the same means.
+  const medium = shrinkInside(luma, SHARPNESS_SIDE);
+  const small = shrinkInside(medium, TILT_SIDE);
+  const thumb = thumbOf(small);
   return rounded({
     recipe: MEASURES_RECIPE,
     width: picture.width,
@@ -28,8 +31,8 @@ export function measurePicture(picture: RawPicture): FrameMeasures {
     histogram: histogramOf(counts, pixels),
     ...measureClipping(picture, counts, DERIVATIVE_LIMITS),
     headroom: headroomOf(counts, pixels, DERIVATIVE_LIMITS.high),
-    sharpness: sharpnessOf(luma),
-    tilt: measureTilt(luma),
+    sharpness: sharpnessOf(medium),
+    tilt: measureTilt(small),
     hash: hashOf(thumb),
     thumb: Buffer.from(thumb).toString('base64'),
   });

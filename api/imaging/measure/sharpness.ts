@@ -1,7 +1,7 @@
 import { shrinkInside, type Plane } from './plane.ts';
 
 /** Longer side that sharpness is measured at, so that files of all sizes compare. */
-const LONG_SIDE = 1600;
+export const SHARPNESS_SIDE = 1600;
 const TILE = 64;
 
 /** Variance of the luma and of its Laplacian in a tile. */
@@ -55,7 +55,7 @@ const KERNEL_SQUARES = 20;
  * Null where no tile has anything in it.
  */
 export function sharpnessOf(luma: Plane): number | null {
-  const tiles = tilesOf(shrinkInside(luma, LONG_SIDE));
+  const tiles = tilesOf(shrinkInside(luma, SHARPNESS_SIDE));
   const noise =
     quantile(
       tiles.map((tile) => tile.laplacian),
