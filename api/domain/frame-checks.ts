@@ -1,34 +1,24 @@
 import type { CheckThresholds } from './check-thresholds.ts';
+import type { CheckedShot, FrameCheck, Rule } from './checks/check.ts';
+import { checkHighlights, checkShadows } from './checks/clipping.ts';
+import { checkAperture, checkIso } from './checks/settings.ts';
+import { checkShake } from './checks/shake.ts';
+import { checkConverging, checkTilt } from './checks/tilt.ts';
 import type { FrameMeasures } from './frame-measures.ts';
 
-/** What can be pointed out on a frame. */
-export type CheckName = 'highlights' | 'shadows' | 'shake' | 'tilt' | 'converging' | 'aperture' | 'iso';
+export type { CheckedShot, CheckName, FrameCheck } from './checks/check.ts';
 
-/** One thing pointed out on a frame. */
-export interface FrameCheck {
-  check: CheckName;
-  /** A plain sentence. */
-  says: string;
-  /** A few words for the picture's tile: "31% clipped", "shake risk", "tilted 1.2°". */
-  short: string;
-  /** Whether somebody should look; false for information alone. */
-  toCheck: boolean;
-}
-
-/** What the rules need of a frame, in the units of its columns. */
-export interface CheckedShot {
-  fNumber: number | null;
-  /** Seconds. */
-  exposureTime: number | null;
-  iso: number | null;
-  /** Millimetres. */
-  focalLength: number | null;
-  focalLength35: number | null;
-  /** A frame of a bracket is exposed over or under on purpose, and stands on a tripod or is taken in one burst. */
-  inBracket: boolean;
-}
+const RULES: readonly Rule[] = [checkHighlights, checkShadows, checkShake, checkTilt, checkConverging, checkAperture, checkIso];
 
 /** Everything worth pointing out on a frame, what needs a look first. Without measures only the settings are judged. */
-export function checkFrame(_shot: CheckedShot, _measures: FrameMeasures | null, _thresholds: CheckThresholds): FrameCheck[] {
-  return [];
+export function checkFrame(shot: CheckedShot, measures: FrameMeasures | null, thresholds: CheckThresholds): FrameCheck[] {
+  const found = RULES.map((rule) => rule(shot, measures, thresholds)).filter((check) => check !== null);
+  return found.toSorted((a, b) => Number(b.toCheck) - Number(a.toCheck));
+}
+
+/** The exposure headroom in words. */
+export function headroomWords(headroom: number): string {
+  const stops = Number(headroom.toFixed(1));
+  if (stops === 0) return 'The brightest parts are at the limit.';
+  return `The brightest parts are ${stops} ${stops === 1 ? 'stop' : 'stops'} below the limit.`;
 }
