@@ -2,6 +2,7 @@ import path from 'node:path';
 import compression from 'compression';
 import express, { type Express, Router } from 'express';
 import helmet from 'helmet';
+import { bracketRoutes } from './features/brackets/routes.ts';
 import { clientRoutes } from './features/clients/routes.ts';
 import { commissionRoutes } from './features/commissions/routes.ts';
 import { frameRoutes } from './features/frames/routes.ts';
@@ -40,6 +41,7 @@ export function apiRoutes(routes: RouteContext): Router {
   api.use(viewRoutes(routes));
   api.use(uploadRoutes(routes));
   api.use(frameRoutes(routes));
+  api.use(bracketRoutes(routes));
   api.use(recordRoutes(routes));
   api.use(guestRoutes(routes));
   api.use(mailRoutes(routes));

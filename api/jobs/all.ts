@@ -1,3 +1,8 @@
+import { dropMerged } from '../features/brackets/drop-merged.job.ts';
+import { groupFrames } from '../features/brackets/group-frames.job.ts';
+import { mergeBracket } from '../features/brackets/merge-bracket.job.ts';
+import { measureFrame } from '../features/frames/measure-frame.job.ts';
+import { measureOlder } from '../features/frames/measure-older.job.ts';
 import { purgeClients } from '../features/clients/purge-clients.job.ts';
 import { purgeCommissions } from '../features/commissions/purge-commissions.job.ts';
 import { findUnsureMails } from '../features/mail/find-unsure-mails.job.ts';
@@ -24,6 +29,11 @@ export const jobs: Job<never>[] = [
   dropTwin,
   noteFrames,
   cleanUploads,
+  measureFrame,
+  measureOlder,
+  groupFrames,
+  mergeBracket,
+  dropMerged,
   purgeFrames,
   watermarkProofs,
   sendMail,

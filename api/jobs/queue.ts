@@ -4,6 +4,8 @@ export interface EnqueueOptions {
   /** A second job with the same key replaces the first while that one waits. */
   key?: string;
   runAt?: Date;
+  /** A job with the same key that waits already keeps its time: it runs so long after the first cause, not after the last. */
+  keepRunAt?: boolean;
   /** Lower runs first; 0 by default. */
   priority?: number;
   maxAttempts?: number;
@@ -17,7 +19,7 @@ export async function enqueue(db: Knex, name: string, payload: Record<string, un
   for (let attempt = 1; attempt <= TRIES; attempt += 1) {
     const { rows } = await db.raw<{ rows: { id: unknown }[] }>(
       `select id from graphile_worker.add_job(
-         ?, payload := ?::json, run_at := ?::timestamptz, max_attempts := ?::int, job_key := ?::text, priority := ?::int)`,
+         ?, payload := ?::json, run_at := ?::timestamptz, max_attempts := ?::int, job_key := ?::text, priority := ?::int, job_key_mode := ?::text)`,
       [
         name,
         JSON.stringify(payload),
@@ -25,6 +27,7 @@ export async function enqueue(db: Knex, name: string, payload: Record<string, un
         options.maxAttempts ?? 8,
         options.key ?? null,
         options.priority ?? 0,
+        options.keepRunAt ? 'preserve_run_at' : 'replace',
       ] as Knex.RawBinding[],
     );
     // No row: a worker took the waiting job of that key between the two statements of add_job, which then adds nothing.

@@ -3,9 +3,9 @@ import { splitExtension } from '../../domain/file-names.ts';
 import type { Archive } from '../../models/Archive.ts';
 import { DeliveryFile } from '../../models/DeliveryFile.ts';
 import type { FinalVersion } from '../../models/FinalVersion.ts';
-import { Frame } from '../../models/Frame.ts';
 import { Pick as PickRow } from '../../models/Pick.ts';
 import { findWebSize } from '../finals/web-size.ts';
+import { framesOfPick, framesOfPicks } from '../pick-lists/picked-frames.ts';
 import type { ArchiveFile } from './plan-archive.ts';
 
 /** The files an archive is made of, in the order they are shown. The web sizes that are missing are made on the way. */
@@ -49,10 +49,6 @@ async function pickedOriginals(ctx: Context, archive: Archive): Promise<ArchiveF
   const picks = await PickRow.within(archive, ctx.knex)
     .where({ pickListId: archive.pickListId ?? '' })
     .orderBy('number');
-  const frames = await Frame.within(archive, ctx.knex).findByIds(picks.map((pick) => pick.frameId));
-  const byId = new Map(frames.map((frame) => [frame.id, frame]));
-  return picks.flatMap((pick) => {
-    const frame = byId.get(pick.frameId);
-    return frame ? [original(ctx, frame, pick.frameName)] : [];
-  });
+  const frames = await framesOfPicks(archive, picks, ctx.knex);
+  return picks.flatMap((pick) => framesOfPick(pick, frames).map((frame) => original(ctx, frame, frame.name)));
 }

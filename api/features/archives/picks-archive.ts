@@ -3,8 +3,10 @@ import type { StudioScope } from '../../db/scope.ts';
 import type { StaffActor } from '../../middleware/actor.ts';
 import { problem } from '../../middleware/problem.ts';
 import { Archive } from '../../models/Archive.ts';
+import { Pick } from '../../models/Pick.ts';
 import { PickList } from '../../models/PickList.ts';
 import { findCommission } from '../commissions/find-commission.ts';
+import { pickedIds } from '../pick-lists/picked-frames.ts';
 import { addToRecord } from '../record/add-to-record.ts';
 import { requestArchive } from './request-archive.ts';
 
@@ -16,7 +18,9 @@ export async function requestPicksArchive(ctx: Context, actor: StaffActor, pickL
     const commission = await findCommission(actor, list.commissionId, trx);
     const name = `${commission.title} – pick list ${list.number}`;
     const { studioId, commissionId } = list;
-    return requestArchive(trx, { studioId, commissionId, of: { pickListId, kind: 'picks' }, name, files: list.pickCount });
+    const picks = await Pick.within(actor, trx).where({ pickListId }).select('frameId', 'frameIds');
+    const files = picks.reduce((sum, pick) => sum + pickedIds(pick).length, 0);
+    return requestArchive(trx, { studioId, commissionId, of: { pickListId, kind: 'picks' }, name, files });
   });
 }
 

@@ -1,7 +1,8 @@
 import type { TransactionOrKnex } from 'objection';
 import type { StudioScope } from '../../db/scope.ts';
-import { Frame } from '../../models/Frame.ts';
+import type { Frame } from '../../models/Frame.ts';
 import { Pick } from '../../models/Pick.ts';
+import { framesOfPick, framesOfPicks } from '../pick-lists/picked-frames.ts';
 
 /** A pick that waits for its final, or has it: from the newest list of one of the commission's sheets. */
 export interface CurrentPick {
@@ -13,6 +14,8 @@ export interface CurrentPick {
   viewTitle: string | null;
   extra: boolean;
   frame: Frame;
+  /** Every frame of a bracket, the lead first; else the frame alone. */
+  frames: Frame[];
 }
 
 interface PickOfSheet extends Pick {
@@ -30,13 +33,14 @@ export async function currentPicks(scope: StudioScope, commissionId: string, db?
     )
     .orderBy(['sheets.number', 'picks.number'])
     .select('picks.*', 'sheets.number as sheetNumber')) as PickOfSheet[];
-  const frames = await Frame.within(scope, db).findByIds(rows.map((row) => row.frameId));
-  const byId = new Map(frames.map((frame) => [frame.id, frame]));
+  const byId = await framesOfPicks(scope, rows, db);
   const seen = new Set<string>();
-  return rows.flatMap(({ frameId, frameName, number, sheetNumber, viewTitle, extra }) => {
+  return rows.flatMap((row) => {
+    const { frameId, frameName, number, sheetNumber, viewTitle, extra } = row;
     const frame = byId.get(frameId);
     if (!frame || seen.has(frameId)) return [];
     seen.add(frameId);
-    return [{ frameId, frameName, number, sheetNumber, viewTitle, extra, frame }];
+    const frames = [frame, ...framesOfPick(row, byId).filter(({ id }) => id !== frameId)];
+    return [{ frameId, frameName, number, sheetNumber, viewTitle, extra, frame, frames }];
   });
 }

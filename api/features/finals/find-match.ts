@@ -16,7 +16,12 @@ export function findMatch(file: { originalName: string; takenLocal: string | nul
   if (picks.length === 0) return { match: 'ask', frameId: null, candidates: [], doubt: null };
   const found = matchFinal(
     { name: file.originalName, taken: file.takenLocal },
-    picks.map(({ frameId, frameName, frame }) => ({ id: frameId, names: [frameName], taken: frame.takenLocal ? [frame.takenLocal] : [] })),
+    // A merged file may bear the name of any frame of its bracket.
+    picks.map(({ frameId, frames }) => ({
+      id: frameId,
+      names: frames.map(({ name }) => name),
+      taken: frames.flatMap(({ takenLocal }) => takenLocal ?? []),
+    })),
   );
   return found.kind === 'matched'
     ? { match: 'by-name', frameId: found.pickId, candidates: [], doubt: null }

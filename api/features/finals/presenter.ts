@@ -41,10 +41,11 @@ function matchNow(final: LoadedFinal, picks: readonly CurrentPick[]): FinalItem[
 }
 
 async function presentPick(ctx: Context, pick: CurrentPick, finalId: string | null): Promise<PickForFinal> {
-  const { frameId, frameName, number, sheetNumber, viewTitle, extra, frame } = pick;
+  const { frameId, frameName, number, sheetNumber, viewTitle, extra, frame, frames } = pick;
   const { width, height, placeholder } = frame;
   const picture = frame.state === 'ready' ? await pictureAddress(ctx, frameKey(frame, 480)) : null;
-  return { frameId, frameName, number, sheetNumber, viewTitle, extra, width, height, placeholder, picture, finalId };
+  const exposures = frames.length;
+  return { frameId, frameName, exposures, number, sheetNumber, viewTitle, extra, width, height, placeholder, picture, finalId };
 }
 
 async function presentFinal(

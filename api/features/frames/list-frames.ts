@@ -7,6 +7,7 @@ import { behindCursor } from '../../middleware/forged-cursor.ts';
 import { Frame } from '../../models/Frame.ts';
 import { findCommission } from '../commissions/find-commission.ts';
 import { RESTORABLE_DAYS } from './restore-frames.ts';
+import { type CheckedFrame, LEAN_MEASURES, thresholdsOf } from './frame-checks.ts';
 import { presentFrameItem } from './presenter.ts';
 
 /** The column of each order and its type: keys travel as text, which loses neither microseconds nor digits. */
@@ -21,7 +22,7 @@ const ORDERS: Record<FrameSort, [column: string, type: string]> = {
 };
 
 type Rows = QueryBuilder<Frame, Frame[]>;
-type Row = Frame & { sortKey: string | null };
+type Row = CheckedFrame & { sortKey: string | null };
 
 function filter(rows: Rows, input: FrameQuery): void {
   if (input.deleted === 'only') {
@@ -56,12 +57,13 @@ export async function listFrames(ctx: Context, scope: StudioScope, commissionId:
   const order = ORDERS[input.sort];
   const rows = Frame.within(scope)
     .where({ commissionId: commission.id })
-    .select('frames.*', ctx.knex.raw(`${order[0]}::text as "sortKey"`))
+    .select('frames.*', ctx.knex.raw(`${order[0]}::text as "sortKey"`), ctx.knex.raw(LEAN_MEASURES))
     .orderByRaw(`${order[0]} ${input.order} nulls last, name, id`)
     .limit(input.limit + 1);
   filter(rows, input);
   const after = keyOf(input.after, 3);
   if (after) goOn(rows, order, input.order, after);
   const page = pageOf((await behindCursor(rows)) as Row[], input.limit, (row) => [row.sortKey, row.name, row.id]);
-  return { items: await Promise.all(page.items.map((frame) => presentFrameItem(ctx, frame))), next: page.next };
+  const thresholds = await thresholdsOf(scope);
+  return { items: await Promise.all(page.items.map((frame) => presentFrameItem(ctx, frame, thresholds))), next: page.next };
 }

@@ -1,9 +1,16 @@
 import type { Context } from '../../context.ts';
-import type { Frame as FrameAnswer, FrameItem } from '../../contract/frames.ts';
+import type { Frame as FrameAnswer, FrameItem, ShownMeasures } from '../../contract/frames.ts';
+import type { StudioScope } from '../../db/scope.ts';
+import type { CheckThresholds } from '../../domain/check-thresholds.ts';
+import type { AtLimit, FrameMeasures } from '../../domain/frame-measures.ts';
 import type { DerivativeSize } from '../../imaging/derivative-sizes.ts';
+import { Bracket } from '../../models/Bracket.ts';
 import type { Frame } from '../../models/Frame.ts';
+import { FrameMeasure } from '../../models/FrameMeasure.ts';
 import { pictureAddress } from '../../services/picture-address.ts';
 import { frameKey } from '../../services/storage-keys.ts';
+import { framesOfBrackets } from '../brackets/bracket-frames.ts';
+import { type CheckedFrame, checksOf, thresholdsOf } from './frame-checks.ts';
 
 type Pictured = Pick<Frame, 'studioId' | 'commissionId' | 'id' | 'recipe'>;
 
@@ -19,7 +26,7 @@ async function smallPictures(ctx: Context, frame: Frame): Promise<FrameItem['pic
 }
 
 /** A frame as a row of pictures shows it. */
-export async function presentFrameItem(ctx: Context, frame: Frame): Promise<FrameItem> {
+export async function presentFrameItem(ctx: Context, frame: CheckedFrame, thresholds: CheckThresholds): Promise<FrameItem> {
   return {
     id: frame.id,
     name: frame.name,
@@ -36,12 +43,29 @@ export async function presentFrameItem(ctx: Context, frame: Frame): Promise<Fram
     exposureTime: frame.exposureTime,
     iso: frame.iso,
     focalLength: frame.focalLength,
+    bracketId: frame.bracketId,
+    checks: checksOf(frame, thresholds),
+    alike: frame.alike,
   };
 }
 
+const atLimit = ({ any, all, areas }: AtLimit) => ({ any, all, areas });
+
+function presentMeasures({ histogram, highlights, shadows, headroom }: FrameMeasures): ShownMeasures {
+  return { histogram, highlights: atLimit(highlights), shadows: atLimit(shadows), headroom };
+}
+
+/** Stops that a frame is brighter than the lead of its bracket. */
+async function stepOf(scope: StudioScope, { id, bracketId }: Frame): Promise<number | null> {
+  const bracket = bracketId === null ? undefined : await Bracket.within(scope).findById(bracketId);
+  const arranged = bracket && (await framesOfBrackets(scope, [bracket])).get(bracket.id);
+  return arranged?.steps[arranged.frames.findIndex((frame) => frame.id === id)] ?? null;
+}
+
 /** A frame with everything known of it. */
-export async function presentFrame(ctx: Context, frame: Frame): Promise<FrameAnswer> {
-  const item = await presentFrameItem(ctx, frame);
+export async function presentFrame(ctx: Context, scope: StudioScope, frame: Frame): Promise<FrameAnswer> {
+  const measures = (await FrameMeasure.within(scope).findById(frame.id))?.measures ?? null;
+  const item = await presentFrameItem(ctx, Object.assign(frame, { measures }), await thresholdsOf(scope));
   return {
     ...item,
     commissionId: frame.commissionId,
@@ -65,5 +89,7 @@ export async function presentFrame(ctx: Context, frame: Frame): Promise<FrameAns
     hiddenAt: frame.hiddenAt?.toISOString() ?? null,
     deletedAt: frame.deletedAt?.toISOString() ?? null,
     createdAt: frame.createdAt.toISOString(),
+    step: await stepOf(scope, frame),
+    measures: measures && presentMeasures(measures),
   };
 }

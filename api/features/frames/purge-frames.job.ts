@@ -13,6 +13,7 @@ function overdue() {
   return Frame.query()
     .whereRaw('deleted_at < now() - make_interval(days => ?)', PURGED_AFTER_DAYS)
     .whereRaw('not exists (select from proofs where proofs.frame_id = frames.id)')
+    .whereRaw('not exists (select from picks where picks.frame_ids @> array[frames.id])')
     .whereRaw('not exists (select from finals where finals.frame_id = frames.id)');
 }
 

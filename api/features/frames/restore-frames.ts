@@ -3,6 +3,7 @@ import type { FramesChangedExcept } from '../../contract/frames.ts';
 import type { StaffActor } from '../../middleware/actor.ts';
 import { Frame } from '../../models/Frame.ts';
 import { addToRecord } from '../record/add-to-record.ts';
+import { queueGrouping } from '../brackets/queue-grouping.ts';
 import { lockOpenCommission } from '../commissions/find-commission.ts';
 import { announceFrames } from './change-frames.ts';
 
@@ -48,6 +49,7 @@ export async function restoreFrames(actor: StaffActor, commissionId: string, fra
     const back = await restorable(trx, actor, commissionId, frameIds);
     if (back.length > 0) {
       await Frame.within(actor, trx).patch({ deletedAt: null }).whereIn('id', back);
+      await queueGrouping(trx, commissionId);
       await addToRecord(trx, {
         studioId: actor.studioId,
         commissionId,

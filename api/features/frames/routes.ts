@@ -48,7 +48,7 @@ export function frameRoutes({ ctx, gates: { staff } }: RouteContext): Router {
   });
 
   router.get('/frames/:frameId', staff(), ids('frameId'), async (req, res) => {
-    res.json(await presentFrame(ctx, await findFrame(staffOf(req), req.params.frameId)));
+    res.json(await presentFrame(ctx, staffOf(req), await findFrame(staffOf(req), req.params.frameId)));
   });
   router.get('/commissions/:commissionId/events', staff(), ids('commissionId'), async (req, res) => {
     const commission = await findCommission(staffOf(req), req.params.commissionId);

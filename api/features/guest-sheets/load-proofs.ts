@@ -4,13 +4,13 @@ import { LRUCache } from 'lru-cache';
 import type { GuestProof, GuestProofs } from '../../contract/guest-sheets.ts';
 import type { Context } from '../../context.ts';
 import { problem } from '../../middleware/problem.ts';
-import type { Frame } from '../../models/Frame.ts';
-import type { Proof } from '../../models/Proof.ts';
 import { Sheet } from '../../models/Sheet.ts';
 import { View } from '../../models/View.ts';
 import { pictureAddress, windowAt } from '../../services/picture-address.ts';
 import { proofKey } from '../../services/storage-keys.ts';
-import { proofsInOrder } from '../sheets/presenter.ts';
+import { type BracketExposures, exposuresOfProofs } from '../brackets/count-exposures.ts';
+import { exposuresOf, shownPicture } from '../brackets/shown-picture.ts';
+import { type ProofWithPicture, proofsInOrder } from '../sheets/presenter.ts';
 
 /** The proofs of a sheet as bytes, plain and compressed: the same for all its guests. */
 export interface ProofsBody {
@@ -47,26 +47,35 @@ export async function loadGuestProofs(ctx: Context, sheet: Sheet): Promise<Guest
     View.within(sheet).where({ commissionId: sheet.commissionId }).orderBy(['position', 'id']),
     proofsInOrder(sheet),
   ]);
+  const exposed = await exposuresOfProofs(ctx.knex, proofs);
   const used = new Set(proofs.map((proof) => proof.viewId));
   const storeys = views.filter((view) => used.has(view.id)).map(({ id, title, askedFor }) => ({ viewId: id, title, askedFor }));
   return {
     revision: sheet.revision,
     storeys: used.has(null) ? [...storeys, ALSO_MADE] : storeys,
-    proofs: await Promise.all(proofs.map((proof) => presentProof(ctx, sheet, proof))),
+    proofs: await Promise.all(
+      proofs.map((proof) => presentProof(ctx, sheet, proof, proof.bracketId ? exposed.get(proof.bracketId) : undefined)),
+    ),
   };
 }
 
-async function presentProof(ctx: Context, sheet: Sheet, proof: Proof & { frame: Frame }): Promise<GuestProof> {
-  const { frame } = proof;
+async function presentProof(
+  ctx: Context,
+  sheet: Sheet,
+  proof: ProofWithPicture,
+  exposed: BracketExposures | undefined,
+): Promise<GuestProof> {
+  const { frame, bracket } = proof;
+  const shown = shownPicture(frame, bracket);
   const address = (size: 480 | 960 | 2560) => pictureAddress(ctx, proofKey(proof, sheet.commissionId, size));
   const ready = proof.watermarkHash !== null && proof.watermarkHash === sheet.watermarkHash;
   return {
     id: proof.id,
     number: proof.number,
     viewId: proof.viewId,
-    width: frame.width,
-    height: frame.height,
-    placeholder: frame.placeholder,
+    width: shown.width,
+    height: shown.height,
+    placeholder: shown.placeholder,
     pictures: ready ? { small: await address(480), medium: await address(960), large: await address(2560) } : null,
     asShot: {
       fNumber: frame.fNumber,
@@ -74,6 +83,8 @@ async function presentProof(ctx: Context, sheet: Sheet, proof: Proof & { frame: 
       iso: frame.iso,
       focalLength: frame.focalLength,
       takenLocal: frame.takenLocal,
+      shutterRange: exposed?.shutterRange ?? null,
     },
+    exposures: exposuresOf(bracket, exposed?.count ?? 0, shown),
   };
 }

@@ -7,6 +7,7 @@ import { Proof } from '../../models/Proof.ts';
 import { Sheet } from '../../models/Sheet.ts';
 import { SheetGuest } from '../../models/SheetGuest.ts';
 import { Studio } from '../../models/Studio.ts';
+import { usesOf } from '../studios/studio-uses.ts';
 
 /** Who looks: a guest by invitation, or the studio in a preview. */
 export type Viewer = GuestSheet['me'];
@@ -44,6 +45,7 @@ export async function loadGuestSheet(sheetId: string, me: Viewer): Promise<Guest
     lastPickList: list
       ? { number: list.number, sentAt: list.sentAt.toISOString(), sentBy: list.sentByName, picks: list.pickCount, extras: list.extraCount }
       : null,
+    uses: usesOf(studio),
     can: { mark: open, send: open && me.role === 'lead', invite: open && me.role === 'lead' },
   };
 }

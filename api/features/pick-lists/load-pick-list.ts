@@ -3,11 +3,13 @@ import type { Context } from '../../context.ts';
 import type { StudioScope } from '../../db/scope.ts';
 import { problem } from '../../middleware/problem.ts';
 import { Commission } from '../../models/Commission.ts';
+import type { Frame } from '../../models/Frame.ts';
 import { PickList } from '../../models/PickList.ts';
 import { pictureAddress } from '../../services/picture-address.ts';
 import { frameKey } from '../../services/storage-keys.ts';
+import { framesOfPick, framesOfPicks } from './picked-frames.ts';
 
-type ListRow = PickList & { sheetNumber: number; latest: boolean; originalsBytes: number };
+type ListRow = PickList & { sheetNumber: number; latest: boolean; originalsBytes: number; originals: number };
 
 function listsOf(ctx: Context, scope: StudioScope) {
   return PickList.within(scope)
@@ -18,8 +20,10 @@ function listsOf(ctx: Context, scope: StudioScope) {
       ctx.knex.raw(
         'not exists (select from pick_lists newer where newer.sheet_id = pick_lists.sheet_id and newer.number > pick_lists.number) as latest',
       ),
-      ctx.knex.raw(`(select coalesce(sum(f.size_bytes), 0)::bigint from picks p join frames f on f.id = p.frame_id
+      ctx.knex.raw(`(select coalesce(sum(f.size_bytes), 0)::bigint from picks p join frames f on f.id = any(p.frame_ids || p.frame_id)
         where p.pick_list_id = pick_lists.id) as originals_bytes`),
+      ctx.knex.raw(`(select coalesce(sum(greatest(cardinality(p.frame_ids), 1)), 0)::int from picks p
+        where p.pick_list_id = pick_lists.id) as originals`),
     );
 }
 
@@ -39,6 +43,7 @@ function presentLine(list: ListRow): PickListLine {
     extraPrice: list.extraPrice,
     currency: list.currency,
     originalsBytes: list.originalsBytes,
+    originals: list.originals,
   };
 }
 
@@ -56,12 +61,13 @@ export async function loadPickList(ctx: Context, scope: StudioScope, pickListId:
   if (!list) throw problem(404);
   const before = list.number > 1 ? await picksOf(ctx, scope, { sheetId: list.sheetId, number: list.number - 1 }) : null;
   const picks = await picksOf(ctx, scope, { sheetId: list.sheetId, number: list.number });
+  const frames = await framesOfPicks(scope, picks);
   const had = before && new Set(before.map((pick) => pick.proofId));
   const has = new Set(picks.map((pick) => pick.proofId));
   return {
     ...presentLine(list),
     picks: await Promise.all(
-      picks.map(async (pick) => ({ ...(await presentPick(ctx, pick)), change: had && (had.has(pick.proofId) ? 'kept' : 'added') })),
+      picks.map(async (pick) => ({ ...(await presentPick(ctx, pick, frames)), change: had && (had.has(pick.proofId) ? 'kept' : 'added') })),
     ),
     dropped: (before ?? [])
       .filter((pick) => !has.has(pick.proofId))
@@ -78,6 +84,7 @@ interface FullPick {
   proofNumber: number;
   frameId: string;
   frameName: string;
+  frameIds: string[];
   viewTitle: string | null;
   extra: boolean;
   markedBy: PickRow['markedBy'];
@@ -85,7 +92,6 @@ interface FullPick {
   height: number;
   placeholder: string | null;
   recipe: number | null;
-  sizeBytes: number;
   finalId: string | null;
   versions: number;
 }
@@ -105,19 +111,20 @@ async function picksOf(ctx: Context, scope: StudioScope, list: { sheetId: string
       'frames.height',
       'frames.placeholder',
       'frames.recipe',
-      'frames.sizeBytes',
       'finals.id as finalId',
       ctx.knex.raw('(select count(*)::int from final_versions v where v.final_id = finals.id and v.deleted_at is null) as versions'),
     );
 }
 
-async function presentPick(ctx: Context, pick: FullPick): Promise<Omit<PickRow, 'change'>> {
+async function presentPick(ctx: Context, pick: FullPick, frames: Map<string, Frame>): Promise<Omit<PickRow, 'change'>> {
+  const picked = framesOfPick(pick, frames);
   return {
     id: pick.id,
     number: pick.number,
     proofNumber: pick.proofNumber,
     frameId: pick.frameId,
     frameName: pick.frameName,
+    frames: picked.map(({ id, name }) => ({ id, name })),
     viewTitle: pick.viewTitle,
     extra: pick.extra,
     markedBy: pick.markedBy,
@@ -125,7 +132,7 @@ async function presentPick(ctx: Context, pick: FullPick): Promise<Omit<PickRow, 
     height: pick.height,
     placeholder: pick.placeholder,
     picture: await pictureAddress(ctx, frameKey({ ...pick, id: pick.frameId }, 480)),
-    sizeBytes: pick.sizeBytes,
+    sizeBytes: picked.reduce((sum, { sizeBytes }) => sum + sizeBytes, 0),
     final: pick.finalId ? { finalId: pick.finalId, versions: pick.versions } : null,
   };
 }

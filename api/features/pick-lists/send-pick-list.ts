@@ -86,6 +86,7 @@ async function copyPicks(
       proofNumber: pick.proofNumber,
       frameId: pick.frameId,
       frameName: pick.frameName,
+      frameIds: pick.frameIds,
       viewId: pick.viewId,
       viewTitle: pick.viewTitle,
       markedBy: pick.markedBy.map((guest) => ({ ...guest, initials: initials(guest.name) })),

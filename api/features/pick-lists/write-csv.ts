@@ -11,6 +11,8 @@ export function pickListCsv(list: PickListDetail): string {
     Proof: pick.proofNumber,
     View: pick.viewTitle ?? 'Also made',
     Frame: pick.frameName,
+    Exposures: pick.frames.length,
+    Frames: pick.frames.map(({ name }) => name).join(', '),
     Extra: pick.extra ? 'yes' : 'no',
     'Marked by': pick.markedBy.map((guest) => guest.name).join(', '),
   }));
@@ -22,6 +24,6 @@ export function pickListCsv(list: PickListDetail): string {
  * spaces stand in quotation marks.
  */
 export function pickListNames(list: PickListDetail): string {
-  const stems = list.picks.map((pick) => pick.frameName.replace(/\.[^.]{1,5}$/, ''));
+  const stems = list.picks.flatMap((pick) => pick.frames.map(({ name }) => name.replace(/\.[^.]{1,5}$/, '')));
   return stems.map((stem) => (/\s/.test(stem) ? `"${stem}"` : stem)).join(' ');
 }

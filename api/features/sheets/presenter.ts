@@ -2,12 +2,14 @@ import type { SheetGuestRow, StudioProof, StudioSheet } from '../../contract/she
 import type { Context } from '../../context.ts';
 import { initials } from '../../domain/initials.ts';
 import type { StaffActor } from '../../middleware/actor.ts';
+import type { Bracket } from '../../models/Bracket.ts';
 import type { Frame } from '../../models/Frame.ts';
 import { Proof } from '../../models/Proof.ts';
 import { Sheet } from '../../models/Sheet.ts';
 import { SheetGuest } from '../../models/SheetGuest.ts';
 import { pictureAddress } from '../../services/picture-address.ts';
-import { frameKey } from '../../services/storage-keys.ts';
+import { type Exposed, exposuresOfProofs } from '../brackets/count-exposures.ts';
+import { exposuresOf, shownPicture } from '../brackets/shown-picture.ts';
 import { countsOf, presentSummary } from './list-sheets.ts';
 import { sheetCan } from './policy.ts';
 
@@ -27,41 +29,48 @@ export async function presentSheet(ctx: Context, actor: StaffActor, sheet: Sheet
     guestRows(ctx, sheet),
     marksOf(ctx, sheet.id),
   ]);
+  const exposed = await exposuresOfProofs(ctx.knex, proofs);
   return {
     ...presentSummary(sheet, { ...counted }, now),
     watermark: sheet.watermark,
     reopenedAt: iso(sheet.reopenedAt),
     reopenReason: sheet.reopenReason,
-    proofs: await Promise.all(proofs.map((proof) => presentProof(ctx, sheet, proof, marks))),
+    proofs: await Promise.all(proofs.map((proof) => presentProof(ctx, sheet, proof, marks, exposed))),
     guests,
     can: sheetCan(sheet, counted.proofCount, now, actor.role),
   };
 }
 
-/** Proofs storey by storey, those under no view last, with their frames. */
-export async function proofsInOrder(sheet: Pick<Sheet, 'id' | 'studioId'>): Promise<(Proof & { frame: Frame })[]> {
+/** A proof with what it is of: its frame, and the bracket where it stands for one. */
+export type ProofWithPicture = Proof & { frame: Frame; bracket: Bracket | null };
+
+/** Proofs storey by storey, those under no view last, with their frames and brackets. */
+export async function proofsInOrder(sheet: Pick<Sheet, 'id' | 'studioId'>): Promise<ProofWithPicture[]> {
   return Proof.within(sheet)
     .where({ 'proofs.sheetId': sheet.id })
     .joinRaw('left join views on views.id = proofs.view_id')
     .orderByRaw('views.position nulls last, proofs.position, proofs.id')
     .select('proofs.*')
-    .withGraphFetched('frame')
-    .castTo<(Proof & { frame: Frame })[]>();
+    .withGraphFetched('[frame, bracket]')
+    .castTo<ProofWithPicture[]>();
 }
 
-async function presentProof(ctx: Context, sheet: Sheet, proof: Proof & { frame: Frame }, marks: Marks): Promise<StudioProof> {
-  const { frame } = proof;
+async function presentProof(ctx: Context, sheet: Sheet, proof: ProofWithPicture, marks: Marks, exposed: Exposed): Promise<StudioProof> {
+  const { frame, bracket } = proof;
+  const shown = shownPicture(frame, bracket);
   const by = marks.get(proof.id) ?? [];
-  const [small, medium] = await Promise.all([pictureAddress(ctx, frameKey(frame, 480)), pictureAddress(ctx, frameKey(frame, 960))]);
+  const [small, medium] = await Promise.all([pictureAddress(ctx, shown.key(480)), pictureAddress(ctx, shown.key(960))]);
   return {
     id: proof.id,
     number: proof.number,
     frameId: frame.id,
     frameName: frame.name,
+    bracketId: proof.bracketId,
+    exposures: bracket && exposuresOf(bracket, exposed.get(bracket.id)?.count ?? 0, shown),
     viewId: proof.viewId,
-    width: frame.width,
-    height: frame.height,
-    placeholder: frame.placeholder,
+    width: shown.width,
+    height: shown.height,
+    placeholder: shown.placeholder,
     ready: proof.watermarkHash === sheet.watermarkHash,
     pictures: { small, medium },
     markedBy: by.map((guest) => initials(guest.name)),

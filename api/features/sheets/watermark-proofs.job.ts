@@ -1,17 +1,19 @@
 import type { Context } from '../../context.ts';
 import { announce } from '../../db/live.ts';
 import type { Job } from '../../jobs/job.ts';
+import { Bracket } from '../../models/Bracket.ts';
 import type { Frame } from '../../models/Frame.ts';
 import { Proof } from '../../models/Proof.ts';
 import { Sheet } from '../../models/Sheet.ts';
-import { frameKey, proofKey } from '../../services/storage-keys.ts';
+import { proofKey } from '../../services/storage-keys.ts';
+import { shownPicture } from '../brackets/shown-picture.ts';
 
 /** Proofs under way at once: enough to keep every child at work while others are fetched and stored. */
 const ABREAST = 4;
 /** The guest's page is told after so many, not after each. */
 const TELL_EVERY = 12;
 
-type ProofToMark = Proof & { frame: Frame };
+type ProofToMark = Proof & { frame: Frame; bracket: Bracket | null };
 
 /**
  * Lays the sheet's watermark over every proof that does not carry it yet. Killed or run twice it goes on with what is missing; a watermark
@@ -23,12 +25,15 @@ export const watermarkProofs: Job<{ sheetId: string }> = {
   async run(ctx, { sheetId }, { signal }) {
     const sheet = await Sheet.query().findById(sheetId);
     if (!sheet) return;
-    const missing = await Proof.within(sheet)
+    const unmarked = await Proof.within(sheet)
       .where({ sheetId })
       .where((any) => any.whereNull('watermarkHash').orWhereNot('watermarkHash', sheet.watermarkHash))
       .orderBy('position')
-      .withGraphFetched('frame')
+      .withGraphFetched('[frame, bracket]')
       .castTo<ProofToMark[]>();
+    const waiting = (proof: ProofToMark) => !shownPicture(proof.frame, proof.bracket).settled;
+    // What waits for its merged picture has its turn when that is made.
+    const missing = unmarked.filter((proof) => !waiting(proof));
     if (missing.length === 0) return;
     const image = sheet.watermark.kind === 'image' && sheet.watermark.imageKey ? await ctx.store.getBuffer(sheet.watermark.imageKey) : null;
     let made = 0;
@@ -46,13 +51,28 @@ export const watermarkProofs: Job<{ sheetId: string }> = {
 };
 
 async function watermarkProof(ctx: Context, sheet: Sheet, proof: ProofToMark, image: Buffer | null): Promise<void> {
-  const picture = await ctx.store.getBuffer(frameKey(proof.frame, 2560));
+  const shown = shownPicture(proof.frame, proof.bracket);
+  const picture = await ctx.store.getBuffer(shown.key(2560));
   const marked = await ctx.pixels.watermark(picture, sheet.watermark, image);
-  const target = { studioId: proof.studioId, sheetId: sheet.id, id: proof.id, watermarkHash: sheet.watermarkHash };
+  const target = {
+    studioId: proof.studioId,
+    sheetId: sheet.id,
+    id: proof.id,
+    watermarkHash: sheet.watermarkHash,
+    pictured: shown.pictured,
+  };
   await Promise.all(marked.map(({ size, data }) => ctx.store.put(proofKey(target, sheet.commissionId, size), data, 'image/jpeg')));
-  // The watermark may have been changed meanwhile and its own run be through with this proof: then this one comes too late.
+  // Watermark or bracket may have been changed meanwhile and its own run be through with this proof: then this one comes too late.
   const stillWanted = Sheet.within(sheet).where({ id: sheet.id, watermarkHash: sheet.watermarkHash });
-  await Proof.within(sheet).findById(proof.id).whereExists(stillWanted).patch({ watermarkHash: sheet.watermarkHash });
+  const proofNow = Proof.within(sheet)
+    .findById(proof.id)
+    .where({ bracketId: proof.bracketId, frameId: proof.frameId })
+    .whereExists(stillWanted);
+  if (proof.bracket) {
+    const { id, shows, wanted, madeOf } = proof.bracket;
+    void proofNow.whereExists(Bracket.within(sheet).where({ id, shows, wanted, madeOf }));
+  }
+  await proofNow.patch({ watermarkHash: sheet.watermarkHash, pictured: shown.pictured });
 }
 
 async function tell(ctx: Context, sheet: Sheet): Promise<void> {

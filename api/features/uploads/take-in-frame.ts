@@ -6,6 +6,7 @@ import type { Prepared } from '../../imaging/pixels/tasks.ts';
 import { Frame } from '../../models/Frame.ts';
 import { Upload } from '../../models/Upload.ts';
 import { frameKey, RECIPE } from '../../services/storage-keys.ts';
+import { queueMeasuring } from '../frames/queue-measuring.ts';
 
 /** Instants and settings in the columns of a frame. */
 function columnsOf(upload: Upload, { judged, settings, width, height, placeholder }: Prepared) {
@@ -55,6 +56,7 @@ export async function takeInFrame(trx: Transaction, upload: Upload, prepared: Pr
   const frame = await Frame.query(trx).insert(columnsOf(upload, prepared)).onConflict().ignore().returning('createdAt');
   // The time comes from the database: without it no row was made.
   const isNew = (frame.createdAt as Date | undefined) !== undefined;
+  if (isNew) await queueMeasuring(trx, upload.id);
   const frameId = isNew ? upload.id : await yieldToTwin(trx, upload);
   const done = await Upload.within(upload, trx)
     .patch({ state: 'done', frameId, multipartId: null, updatedAt: new Date() })
