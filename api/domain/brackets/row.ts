@@ -1,6 +1,6 @@
 import { brightness } from './stops.ts';
 import type { BracketCandidate } from './candidate.ts';
-import { compareNumbers, fileNumber, filesBetween, type FileNumber } from './file-number.ts';
+import { compareNumbers, fileNumber, filesBetween, ofTwoCounters, type FileNumber } from './file-number.ts';
 import { decodeThumb } from './likeness.ts';
 import { momentsOf, type Moment } from './moment.ts';
 
@@ -29,9 +29,15 @@ function fits<T>(one: T | null, two: T | null): boolean {
   return one === null || two === null || one === two;
 }
 
-function sameBody(one: BracketCandidate, two: BracketCandidate): boolean {
-  if (one.serial !== null && two.serial !== null) return one.serial === two.serial && fits(one.model, two.model);
-  return one.make === two.make && one.model === two.model;
+function sameSerial({ frame: one }: Exposure, { frame: two }: Exposure): boolean {
+  return one.serial !== null && one.serial === two.serial;
+}
+
+/** By serial number, else by make and model; two of one model without numbers are told apart by the counters in their file names. */
+function sameBody(one: Exposure, two: Exposure): boolean {
+  if (sameSerial(one, two)) return fits(one.frame.model, two.frame.model);
+  if (!fits(one.frame.serial, two.frame.serial) || ofTwoCounters(one.file, two.file)) return false;
+  return one.frame.make === two.frame.make && one.frame.model === two.frame.model;
 }
 
 function sameFocalLength(one: number | null, two: number | null): boolean {
@@ -43,9 +49,10 @@ function sameKind(one: Exposure, two: Exposure): boolean {
   return one.file.extension === two.file.extension;
 }
 
-function sameSetting({ frame: one }: Exposure, { frame: two }: Exposure): boolean {
+function sameSetting(first: Exposure, second: Exposure): boolean {
+  const [one, two] = [first.frame, second.frame];
   const sameSize = one.width === two.width && one.height === two.height;
-  return sameSize && sameBody(one, two) && fits(one.lens, two.lens) && sameFocalLength(one.focalLength, two.focalLength);
+  return sameSize && sameBody(first, second) && fits(one.lens, two.lens) && sameFocalLength(one.focalLength, two.focalLength);
 }
 
 /** Shortest time, in milliseconds, between the end of one exposure and the beginning of the next, as far as the clock can tell. */
@@ -71,7 +78,7 @@ function continues(row: Row, next: Exposure): boolean {
 /** How surely a frame comes from the body of a row: by its serial number, then by the counter in the file names. */
 function nearness(row: Row, next: Exposure): number {
   const before = last(row);
-  const serial = before.frame.serial !== null && before.frame.serial === next.frame.serial ? 4 : 0;
+  const serial = sameSerial(before, next) ? 4 : 0;
   const files = filesBetween(before.file, next.file);
   return serial + (files === 1 ? 2 : files !== null && Math.abs(files) < 20 ? 1 : 0);
 }
@@ -80,9 +87,8 @@ function nearness(row: Row, next: Exposure): number {
 function isOver(row: Row, next: Exposure): boolean {
   const before = last(row);
   if (pauseBetween(before, next) > LONGEST_PAUSE) return true;
-  if (!sameKind(before, next) || !sameBody(before.frame, next.frame)) return false;
-  const sameSerial = before.frame.serial !== null && before.frame.serial === next.frame.serial;
-  return sameSerial || filesBetween(before.file, next.file) === 1;
+  if (!sameKind(before, next) || !sameBody(before, next)) return false;
+  return sameSerial(before, next) || filesBetween(before.file, next.file) === 1;
 }
 
 function inOrder(one: Exposure, two: Exposure): number {

@@ -55,7 +55,7 @@ function isMeant(marks: Marks, apart: readonly number[], looks: Looks): boolean 
   if (marks.marked) return true;
   if (looks.different > 0 || looks.doubtful || looks.unchanged) return false;
   const least = Math.min(...apart);
-  if (apart.length === 1) return !marks.automatic && least > (looks.confirmed ? 0.6 : 1.9);
+  if (apart.length === 1) return looks.confirmed && !marks.automatic && least > 0.6;
   const even = evenStep(apart) !== null;
   return marks.automatic ? even && least > (looks.confirmed ? 0.6 : 0.9) : looks.confirmed || even;
 }
