@@ -61,8 +61,7 @@ export const JoinFrames = z.object({
   frameIds: z
     .array(z.uuid())
     .min(FEWEST_EXPOSURES, 'Choose at least two frames.')
-    .max(MOST_EXPOSURES, 'A bracket has at most nine frames.')
-    .refine((ids) => new Set(ids).size === ids.length, 'A frame is named twice.'),
+    .max(MOST_EXPOSURES, 'A bracket has at most nine frames.'),
   /** The one in the middle of the exposures where nothing is said. */
   leadFrameId: z.uuid().optional(),
 });

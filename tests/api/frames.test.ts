@@ -88,6 +88,9 @@ describe('the list', () => {
       exposureTime: 1 / 125,
       iso: 100,
       focalLength: 35,
+      bracketId: null,
+      checks: [],
+      alike: null,
     });
     const address = item?.pictures?.['480'] ?? '';
     expect((await house.request.get(address)).status).toBe(200);
@@ -197,6 +200,7 @@ describe('the figures', () => {
     const { body } = await ours.owner.agent.get(path('/summary'));
     expect(body).toEqual({
       ...{ total: 4, ready: 3, reading: 1, failed: 0, hidden: 1, deleted: 1, bytes: 4, underNoView: 2 },
+      ...{ brackets: 0, single: 4, toCheck: 0, alike: 0 },
       views: [{ viewId, count: 2 }],
       can: { upload: true, change: true },
     });

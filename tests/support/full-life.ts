@@ -7,7 +7,7 @@ import { Proof } from '../../api/models/Proof.ts';
 import { Upload } from '../../api/models/Upload.ts';
 import { archiveKey } from '../../api/services/storage-keys.ts';
 import { makeClient } from './factories/client.ts';
-import { rowOfDelivery, rowOfFinal, rowOfPickList, rowOfSheet } from './factories/commission-life.ts';
+import { rowOfBracket, rowOfDelivery, rowOfFinal, rowOfPickList, rowOfSheet } from './factories/commission-life.ts';
 import { makeOpenSheet, type SheetPerson } from './factories/sheet.ts';
 import { type GuestPerson, makeGuestAgent, type MadeStudio } from './factories/studio.ts';
 import type { House } from './house.ts';
@@ -49,6 +49,7 @@ export async function makeFullLife(house: House, made: MadeStudio): Promise<Full
       viewId: commission.views[0]?.id ?? '',
       uploadId: await uploadUnderWay(commission),
       frameId: frames[0]?.id ?? '',
+      bracketId: (await rowOfBracket(commission)).id,
       sheetId: sheet.id,
       guestId: reviewer.guest.id,
       proofId: proof.id,

@@ -1,5 +1,5 @@
 import type { Transaction } from 'objection';
-import type { JoinFrames } from '../../contract/brackets.ts';
+import { FEWEST_EXPOSURES, type JoinFrames } from '../../contract/brackets.ts';
 import { middleFrame } from '../../domain/brackets/arrange.ts';
 import type { StaffActor } from '../../middleware/actor.ts';
 import { invalid, problem } from '../../middleware/problem.ts';
@@ -51,7 +51,9 @@ export async function leaveByHand(trx: Transaction, bracket: Bracket): Promise<B
 }
 
 async function framesToJoin(trx: Transaction, actor: StaffActor, { id }: Commission, input: JoinFrames): Promise<Frame[]> {
-  const { frameIds, leadFrameId } = input;
+  const { leadFrameId } = input;
+  const frameIds = [...new Set(input.frameIds)];
+  if (frameIds.length < FEWEST_EXPOSURES) throw invalid([{ path: 'frameIds', message: 'Choose at least two frames.' }]);
   const frames = await Frame.within(actor, trx)
     .where({ commissionId: id })
     .whereIn('id', frameIds)

@@ -1,4 +1,5 @@
 import { randomUUID } from 'node:crypto';
+import { Bracket } from '../../../api/models/Bracket.ts';
 import { Delivery } from '../../../api/models/Delivery.ts';
 import { DeliveryFile } from '../../../api/models/DeliveryFile.ts';
 import { Final } from '../../../api/models/Final.ts';
@@ -38,6 +39,16 @@ export async function rowOfFrame({ id: commissionId, studioId }: LifeOf, values:
     recipe: 1,
     ...values,
   });
+}
+
+/** A bracket of so many frames that nothing else is known of. */
+export async function rowOfBracket(commission: LifeOf, count = 2): Promise<Bracket> {
+  const { id: commissionId, studioId } = commission;
+  const frames = [await rowOfFrame(commission)];
+  while (frames.length < count) frames.push(await rowOfFrame(commission));
+  const bracket = await Bracket.query().insertAndFetch({ studioId, commissionId, leadFrameId: frames[0]?.id ?? '', wanted: 'nothing yet' });
+  for (const { id } of frames) await Frame.query().findById(id).patch({ bracketId: bracket.id });
+  return bracket;
 }
 
 export async function rowOfSheet(
