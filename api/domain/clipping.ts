@@ -17,22 +17,24 @@ export const CLIPPED = { anyHigh: 1, allHigh: 2, anyLow: 4, allLow: 8 } as const
 /** Pixels in memory, 8 bits a channel, row by row: a picture's own buffer, or the data of a canvas. */
 export type PixelBytes = Uint8Array | Uint8ClampedArray;
 
+/** The bits of one pixel. */
+export function clippedBits(red: number, green: number, blue: number, { high, low }: Limits): number {
+  const most = red > green ? (red > blue ? red : blue) : green > blue ? green : blue;
+  const least = red < green ? (red < blue ? red : blue) : green < blue ? green : blue;
+  if (most < high && least > low) return 0;
+  return (
+    (most >= high ? CLIPPED.anyHigh : 0) |
+    (least >= high ? CLIPPED.allHigh : 0) |
+    (least <= low ? CLIPPED.anyLow : 0) |
+    (most <= low ? CLIPPED.allLow : 0)
+  );
+}
+
 /** Marks each pixel at the ends of the scale: one byte a pixel, with the bits of CLIPPED. Alpha is not looked at. */
-export function markClipped(pixels: PixelBytes, channels: 3 | 4, { high, low }: Limits = DERIVATIVE_LIMITS): Uint8Array {
+export function markClipped(pixels: PixelBytes, channels: 3 | 4, limits: Limits = DERIVATIVE_LIMITS): Uint8Array {
   const mask = new Uint8Array(pixels.length / channels);
-  for (let pixel = 0, at = 0; pixel < mask.length; pixel++, at += channels) {
-    const red = pixels[at]!;
-    const green = pixels[at + 1]!;
-    const blue = pixels[at + 2]!;
-    const most = red > green ? (red > blue ? red : blue) : green > blue ? green : blue;
-    const least = red < green ? (red < blue ? red : blue) : green < blue ? green : blue;
-    if (most < high && least > low) continue;
-    mask[pixel] =
-      (most >= high ? CLIPPED.anyHigh : 0) |
-      (least >= high ? CLIPPED.allHigh : 0) |
-      (least <= low ? CLIPPED.anyLow : 0) |
-      (most <= low ? CLIPPED.allLow : 0);
-  }
+  for (let pixel = 0, at = 0; pixel < mask.length; pixel++, at += channels)
+    mask[pixel] = clippedBits(pixels[at]!, pixels[at + 1]!, pixels[at + 2]!, limits);
   return mask;
 }
 

@@ -11,7 +11,7 @@ export interface Areas {
 /** Cells along the longer side. */
 const CELLS = 320;
 /** From this share of the picture on an area is large: a square of some 7 % of the sides, far more than a lamp or a lit window has. */
-const LARGE = 0.005;
+export const LARGE_AREA = 0.005;
 
 /** A cell counts where at least half of its pixels are marked. Gives each cell's marked pixels, 0 where it does not count. */
 function fillCells(mask: Uint8Array, width: number, height: number, bit: number): { marked: Uint32Array; across: number } {
@@ -55,7 +55,7 @@ export function findAreas(mask: Uint8Array, width: number, height: number, bit: 
   for (let cell = 0; cell < marked.length; cell++) {
     if (marked[cell] === 0) continue;
     const share = takeArea(marked, across, cell, stack) / mask.length;
-    if (share >= LARGE) areas.inLarge += share;
+    if (share >= LARGE_AREA) areas.inLarge += share;
     else areas.spots++;
     areas.largest = Math.max(areas.largest, share);
   }

@@ -1,15 +1,7 @@
-import { CLIPPED, markClipped, type Limits } from '../../domain/clipping.ts';
+import { CLIPPED, type Limits } from '../../domain/clipping.ts';
 import type { AtLimit } from '../../domain/frame-measures.ts';
-import type { RawPicture } from '../upright.ts';
-import { findAreas } from './areas.ts';
-import type { Counts } from './histogram.ts';
-
-/** How often each combination of the mask's bits occurs. */
-function countBits(mask: Uint8Array): Uint32Array {
-  const counts = new Uint32Array(16);
-  for (let pixel = 0; pixel < mask.length; pixel++) counts[mask[pixel]!]!++;
-  return counts;
-}
+import { type Areas, findAreas, LARGE_AREA } from './areas.ts';
+import type { Scan } from './scan.ts';
 
 function sumWhere(counts: Uint32Array, wanted: (at: number) => boolean): number {
   return counts.reduce((sum, count, at) => (wanted(at) ? sum + count : sum), 0);
@@ -23,35 +15,30 @@ interface End {
   to: number;
 }
 
-function measureEnd(
-  mask: Uint8Array,
-  bits: Uint32Array,
-  { width, height }: RawPicture,
-  codes: Counts,
-  { any, all, from, to }: End,
-): AtLimit {
-  const marked = (bit: number) => sumWhere(bits, (at) => (at & bit) > 0) / mask.length;
-  const channel = (counts: Uint32Array) => sumWhere(counts, (code) => code >= from && code <= to) / mask.length;
-  const areas = findAreas(mask, width, height, all);
+const NONE: Areas = { inLarge: 0, largest: 0, spots: 0 };
+
+function measureEnd({ counts, luma, mask, combinations }: Scan, { any, all, from, to }: End): AtLimit {
+  const { width, height } = luma;
+  const marked = (bit: number) => sumWhere(combinations, (at) => (at & bit) > 0) / mask.length;
+  const channel = (codes: Uint32Array) => sumWhere(codes, (code) => code >= from && code <= to) / mask.length;
+  const areas = marked(all) === 0 ? NONE : findAreas(mask, width, height, all);
   return {
     any: marked(any),
     all: marked(all),
-    red: channel(codes.red),
-    green: channel(codes.green),
-    blue: channel(codes.blue),
+    red: channel(counts.red),
+    green: channel(counts.green),
+    blue: channel(counts.blue),
     areas: areas.inLarge,
-    areasAny: marked(any) > marked(all) ? findAreas(mask, width, height, any).inLarge : areas.inLarge,
+    areasAny: marked(any) < LARGE_AREA ? 0 : findAreas(mask, width, height, any).inLarge,
     largest: areas.largest,
     spots: areas.spots,
   };
 }
 
 /** Measures what lies at either end of the scale, how much and in what pieces. */
-export function measureClipping(picture: RawPicture, codes: Counts, { high, low }: Limits): { highlights: AtLimit; shadows: AtLimit } {
-  const mask = markClipped(picture.data, picture.channels, { high, low });
-  const bits = countBits(mask);
+export function measureClipping(scan: Scan, { high, low }: Limits): { highlights: AtLimit; shadows: AtLimit } {
   return {
-    highlights: measureEnd(mask, bits, picture, codes, { any: CLIPPED.anyHigh, all: CLIPPED.allHigh, from: high, to: 255 }),
-    shadows: measureEnd(mask, bits, picture, codes, { any: CLIPPED.anyLow, all: CLIPPED.allLow, from: 0, to: low }),
+    highlights: measureEnd(scan, { any: CLIPPED.anyHigh, all: CLIPPED.allHigh, from: high, to: 255 }),
+    shadows: measureEnd(scan, { any: CLIPPED.anyLow, all: CLIPPED.allLow, from: 0, to: low }),
   };
 }

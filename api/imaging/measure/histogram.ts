@@ -1,39 +1,6 @@
 import { HISTOGRAM_BINS, HISTOGRAM_WHOLE, type Histogram } from '../../domain/frame-measures.ts';
 import { linearOf } from '../../domain/srgb.ts';
-import type { RawPicture } from '../upright.ts';
-
-/** How often each of the 256 codes occurs. */
-export interface Counts {
-  red: Uint32Array;
-  green: Uint32Array;
-  blue: Uint32Array;
-  luma: Uint32Array;
-  /** Of the largest of a pixel's three channels. */
-  largest: Uint32Array;
-}
-
-/** Counts every pixel; luma is Rec. 709 of the gamma-encoded channels, rounded. */
-export function countCodes({ data, width, height, channels }: RawPicture): Counts {
-  const [red, green, blue, luma, largest] = Array.from({ length: 5 }, () => new Uint32Array(256)) as [
-    Uint32Array,
-    Uint32Array,
-    Uint32Array,
-    Uint32Array,
-    Uint32Array,
-  ];
-  const end = width * height * channels;
-  for (let at = 0; at < end; at += channels) {
-    const r = data[at]!;
-    const g = data[at + 1]!;
-    const b = data[at + 2]!;
-    red[r]!++;
-    green[g]!++;
-    blue[b]!++;
-    luma[(0.2126 * r + 0.7152 * g + 0.0722 * b + 0.5) | 0]!++;
-    largest[r > g ? (r > b ? r : b) : g > b ? g : b]!++;
-  }
-  return { red, green, blue, luma, largest };
-}
+import type { Counts } from './scan.ts';
 
 function binned(counts: Uint32Array, pixels: number): number[] {
   const codes = 256 / HISTOGRAM_BINS;

@@ -3,10 +3,17 @@ import { MEASURES_RECIPE, type FrameMeasures } from '../../domain/frame-measures
 import type { RawPicture } from '../upright.ts';
 import { measureClipping } from './clipping.ts';
 import { hashOf, thumbOf } from './hash.ts';
-import { countCodes, headroomOf, histogramOf } from './histogram.ts';
-import { lumaOf, shrinkInside } from './plane.ts';
-import { SHARPNESS_SIDE, sharpnessOf } from './sharpness.ts';
-import { measureTilt, TILT_SIDE } from './tilt.ts';
+import { headroomOf, histogramOf } from './histogram.ts';
+import { shrinkInside } from './plane.ts';
+import { scanPicture } from './scan.ts';
+import { sharpnessOf } from './sharpness.ts';
+import { measureTilt } from './tilt.ts';
+
+/**
+ * Longer side that sharpness and tilt are measured at, so that files of all sizes compare: half the viewer's, where noise is averaged
+ * away and edges still tell a tenth of a degree.
+ */
+export const MEASURED_SIDE = 1280;
 
 /** Digits that mean something, and no more of them in the database. */
 function rounded<Value>(measures: Value): Value {
@@ -17,21 +24,19 @@ function rounded<Value>(measures: Value): Value {
 
 /** Measures a derivative: 8 bits a channel, sRGB, decoded from a JPEG, 2560 px along its longer side or less. */
 export function measurePicture(picture: RawPicture): FrameMeasures {
-  const pixels = picture.width * picture.height;
-  const counts = countCodes(picture);
-  const luma = lumaOf(picture);
-  // Each smaller picture is made from the next larger one: means of means of areas are the same means.
-  const medium = shrinkInside(luma, SHARPNESS_SIDE);
-  const small = shrinkInside(medium, TILT_SIDE);
+  const { width, height } = picture;
+  const scan = scanPicture(picture, DERIVATIVE_LIMITS);
+  const small = shrinkInside(scan.luma, MEASURED_SIDE);
+  // Means of means of areas are the same means: the thumb needs no look at the large picture.
   const thumb = thumbOf(small);
   return rounded({
     recipe: MEASURES_RECIPE,
-    width: picture.width,
-    height: picture.height,
-    histogram: histogramOf(counts, pixels),
-    ...measureClipping(picture, counts, DERIVATIVE_LIMITS),
-    headroom: headroomOf(counts, pixels, DERIVATIVE_LIMITS.high),
-    sharpness: sharpnessOf(medium),
+    width,
+    height,
+    histogram: histogramOf(scan.counts, width * height),
+    ...measureClipping(scan, DERIVATIVE_LIMITS),
+    headroom: headroomOf(scan.counts, width * height, DERIVATIVE_LIMITS.high),
+    sharpness: sharpnessOf(small),
     tilt: measureTilt(small),
     hash: hashOf(thumb),
     thumb: Buffer.from(thumb).toString('base64'),

@@ -1,18 +1,8 @@
-import type { RawPicture } from '../upright.ts';
-
 /** One number a pixel, row by row. */
 export interface Plane {
   width: number;
   height: number;
   values: Float32Array;
-}
-
-/** Luma of Rec. 709 over the gamma-encoded channels, 0 to 255. */
-export function lumaOf({ data, width, height, channels }: RawPicture): Plane {
-  const values = new Float32Array(width * height);
-  for (let pixel = 0, at = 0; pixel < values.length; pixel++, at += channels)
-    values[pixel] = 0.2126 * data[at]! + 0.7152 * data[at + 1]! + 0.0722 * data[at + 2]!;
-  return { width, height, values };
 }
 
 /** Which pixels of a longer row, and how much of each, go into each pixel of a shorter one. */
@@ -75,4 +65,11 @@ export function shrinkInside(plane: Plane, longSide: number): Plane {
   const scale = longSide / Math.max(plane.width, plane.height);
   if (scale >= 1) return plane;
   return resizePlane(plane, Math.max(1, Math.round(plane.width * scale)), Math.max(1, Math.round(plane.height * scale)));
+}
+
+/** Rows for columns: what walks along columns runs much faster along rows of memory. */
+export function transposed({ width, height, values }: Plane): Plane {
+  const out = new Float32Array(values.length);
+  for (let y = 0, at = 0; y < height; y++) for (let x = 0; x < width; x++, at++) out[x * height + y] = values[at]!;
+  return { width: height, height: width, values: out };
 }

@@ -1,7 +1,5 @@
-import { shrinkInside, type Plane } from './plane.ts';
+import type { Plane } from './plane.ts';
 
-/** Longer side that sharpness is measured at, so that files of all sizes compare. */
-export const SHARPNESS_SIDE = 1600;
 const TILE = 64;
 
 /** Variance of the luma and of its Laplacian in a tile. */
@@ -52,10 +50,10 @@ const KERNEL_SQUARES = 20;
 /**
  * Sharpness of a picture: the variance of the Laplacian over the variance of the luma, on the sharpest tenth of the tiles that have
  * something in them. Dividing takes contrast and exposure out; the noise, as the quietest tiles show it, is taken off before.
- * Null where no tile has anything in it.
+ * Sizes compare only at one width. Null where no tile has anything in it.
  */
 export function sharpnessOf(luma: Plane): number | null {
-  const tiles = tilesOf(shrinkInside(luma, SHARPNESS_SIDE));
+  const tiles = tilesOf(luma);
   const noise =
     quantile(
       tiles.map((tile) => tile.laplacian),

@@ -1,13 +1,13 @@
-import { followEdges, walkOf, type EdgeTrack } from './edge-tracks.ts';
+import { followEdges, type EdgeTrack } from './edge-tracks.ts';
 import type { Plane } from './plane.ts';
 
-/** A straight edge: it crosses line v at `offset + slope · v`, v counted from the picture's middle, offset likewise. Pixels. */
+/** A straight edge near upright: it crosses row y at `offset + slope · y`, both counted from the picture's middle. Pixels. */
 export interface StraightEdge {
   offset: number;
   slope: number;
-  /** Lines it runs over. */
+  /** Rows it runs over. */
   length: number;
-  /** Its middle. */
+  /** The row of its middle. */
   middle: number;
 }
 
@@ -24,23 +24,23 @@ interface Fit {
   stray: number;
 }
 
-/** Least squares through the points from `from` to before `to`: place = offset + slope · line. */
-function fitLine({ lines, places }: EdgeTrack, from: number, to: number): Fit {
+/** Least squares through the points from `from` to before `to`: place = offset + slope · row. */
+function fitLine({ rows, places }: EdgeTrack, from: number, to: number): Fit {
   const count = to - from;
   let [sumV, sumU, sumVV, sumUV] = [0, 0, 0, 0];
   for (let i = from; i < to; i++) {
-    sumV += lines[i]!;
+    sumV += rows[i]!;
     sumU += places[i]!;
   }
   const [meanV, meanU] = [sumV / count, sumU / count];
   for (let i = from; i < to; i++) {
-    sumVV += (lines[i]! - meanV) ** 2;
-    sumUV += (lines[i]! - meanV) * (places[i]! - meanU);
+    sumVV += (rows[i]! - meanV) ** 2;
+    sumUV += (rows[i]! - meanV) * (places[i]! - meanU);
   }
   const slope = sumUV / sumVV;
   const fit = { offset: meanU - slope * meanV, slope, worst: from, stray: 0 };
   for (let i = from; i < to; i++) {
-    const stray = Math.abs(places[i]! - fit.offset - slope * lines[i]!);
+    const stray = Math.abs(places[i]! - fit.offset - slope * rows[i]!);
     if (stray > fit.stray) [fit.worst, fit.stray] = [i, stray];
   }
   return fit;
@@ -51,7 +51,7 @@ function straightPieces(track: EdgeTrack, from: number, to: number, found: [Fit,
   if (to - from < LEAST_LENGTH) return;
   const fit = fitLine(track, from, to);
   if (fit.stray <= STRAY) {
-    found.push([fit, track.lines[from]!, track.lines[to - 1]!]);
+    found.push([fit, track.rows[from]!, track.rows[to - 1]!]);
     return;
   }
   // At an end the bend is that point alone.
@@ -60,16 +60,15 @@ function straightPieces(track: EdgeTrack, from: number, to: number, found: [Fit,
   straightPieces(track, cut, to, found);
 }
 
-/** The straight edges of a picture that run within 45° of upright, or of level. */
-export function straightEdges(plane: Plane, direction: 'upright' | 'level', least: number): StraightEdge[] {
-  const walk = walkOf(plane, direction);
+/** The straight edges of a picture that run within 45° of upright; of the transposed picture, those near level. */
+export function straightEdges(plane: Plane, least: number): StraightEdge[] {
   const found: [Fit, number, number][] = [];
-  for (const track of followEdges(plane, walk, least, LEAST_LENGTH)) straightPieces(track, 0, track.lines.length, found);
-  const [middleLine, middlePixel] = [(walk.lines - 1) / 2, (walk.pixels - 1) / 2];
+  for (const track of followEdges(plane, least, LEAST_LENGTH)) straightPieces(track, 0, track.rows.length, found);
+  const [middleRow, middleColumn] = [(plane.height - 1) / 2, (plane.width - 1) / 2];
   return found.map(([{ offset, slope }, first, last]) => ({
-    offset: offset + slope * middleLine - middlePixel,
+    offset: offset + slope * middleRow - middleColumn,
     slope,
     length: last - first + 1,
-    middle: (first + last) / 2 - middleLine,
+    middle: (first + last) / 2 - middleRow,
   }));
 }

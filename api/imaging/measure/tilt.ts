@@ -1,10 +1,8 @@
 import type { Direction, TiltMeasure, Uprights } from '../../domain/frame-measures.ts';
-import { shrinkInside, type Plane } from './plane.ts';
+import { transposed, type Plane } from './plane.ts';
 import { straightEdges } from './straight-edges.ts';
 import { findFamily, samplesOf, type Support } from './vanishing.ts';
 
-/** Longer side that edges are looked for at: fine enough for a tenth of a degree, and noise is averaged away. */
-export const TILT_SIDE = 1280;
 /** Grey levels over two pixels that an edge has at least. */
 const LEAST_CHANGE = 8;
 /** A camera is not turned farther by mistake; uprights may lean farther at the edge where it looks up. Degrees. */
@@ -22,7 +20,7 @@ function certaintyOf({ agreeing, against, error }: Support, enough: number): num
 }
 
 function measureUprights(picture: Plane): Uprights | null {
-  const samples = samplesOf(straightEdges(picture, 'upright', LEAST_CHANGE), picture.width / 2);
+  const samples = samplesOf(straightEdges(picture, LEAST_CHANGE), picture.width / 2);
   if (samples.length === 0) return null;
   const { family, support } = findFamily(samples, REACH);
   // Going down an upright that leans to the right, its place moves to the left.
@@ -30,14 +28,13 @@ function measureUprights(picture: Plane): Uprights | null {
 }
 
 function measureHorizon(picture: Plane): Direction | null {
-  const samples = samplesOf(straightEdges(picture, 'level', LEAST_CHANGE), picture.height / 2);
+  const samples = samplesOf(straightEdges(transposed(picture), LEAST_CHANGE), picture.height / 2);
   if (samples.length === 0) return null;
   const { family, support } = findFamily(samples, { ...REACH, spread: 0 });
   return { angle: degrees(family.turn), certainty: certaintyOf(support, picture.width) };
 }
 
 /** Finds how the horizon and the uprights of a picture lie, from the directions of its straight edges. */
-export function measureTilt(luma: Plane): TiltMeasure {
-  const picture = shrinkInside(luma, TILT_SIDE);
+export function measureTilt(picture: Plane): TiltMeasure {
   return { horizon: measureHorizon(picture), uprights: measureUprights(picture) };
 }
