@@ -1,5 +1,6 @@
 import { createHash } from 'node:crypto';
 import fs from 'node:fs/promises';
+import { groupFrames } from '../../api/features/brackets/group-frames.job.ts';
 import { beginUpload } from '../../api/features/uploads/begin-upload.ts';
 import { completeUpload } from '../../api/features/uploads/complete-upload.ts';
 import { noteFrames } from '../../api/features/uploads/note-frames.job.ts';
@@ -27,9 +28,14 @@ export async function bringFiles(
     return done === ids.length ? true : undefined;
   });
   if (purpose === 'final') return;
-  // The note waits for two minutes without a new frame; here it is known that none comes.
+  // Note and grouping wait for more frames; here it is known that none comes.
   const tools = { signal: new AbortController().signal, attempt: 1, lastAttempt: false };
   await noteFrames.run(stage.ctx, { commissionId, accountId: actor.accountId }, tools);
+  await until(stage, `${files.length} frames to be measured`, async () => {
+    const waiting = await Frame.query().where({ commissionId }).whereNull('measuresRecipe').resultSize();
+    return waiting === 0 ? true : undefined;
+  });
+  await groupFrames.run(stage.ctx, { commissionId }, tools);
 }
 
 async function bringFile(

@@ -6,6 +6,7 @@ const moments: readonly { table: string; columns: readonly string[]; of: string 
   { table: 'views', columns: ['created_at'], of: 'commission_id = :id' },
   { table: 'uploads', columns: ['created_at', 'updated_at'], of: 'commission_id = :id' },
   { table: 'frames', columns: ['created_at'], of: 'commission_id = :id' },
+  { table: 'brackets', columns: ['created_at'], of: 'commission_id = :id' },
   { table: 'sheets', columns: ['created_at', 'issued_at', 'sent_at'], of: 'commission_id = :id' },
   { table: 'sheet_guests', columns: ['invited_at', 'first_opened_at', 'last_seen_at'], of: 'sheet_id in (select id from sheets where commission_id = :id)' },
   { table: 'marks', columns: ['marked_at'], of: 'sheet_id in (select id from sheets where commission_id = :id)' },

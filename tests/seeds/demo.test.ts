@@ -70,6 +70,16 @@ describe('The demo', () => {
     expect(await knex('downloads').whereNull('finishedAt')).toHaveLength(1);
   });
 
+  it('has its brackets found and merged, and each of them is one proof of its merged picture', async () => {
+    const { knex } = house.ctx;
+    const sizes = await knex('frames').whereNotNull('bracketId').groupBy('bracketId').select(knex.raw('count(*)::int as size'));
+    expect(sizes.map(({ size }: { size: number }) => size).sort()).toEqual([3, 3, 3, 3, 3, 3, 5, 5, 5]);
+    expect(await knex('brackets').whereRaw('made_of is distinct from wanted')).toEqual([]);
+    const proofs = await knex('proofs').whereNotNull('bracketId').select('pictured');
+    expect(proofs).toHaveLength(9);
+    for (const { pictured } of proofs) expect(pictured).toMatch(/^m[0-9a-f]{16}$/);
+  });
+
   it('keeps its past in order: what came later has a later moment, and nothing lies ahead', async () => {
     const entries = await house.ctx.knex('recordEntries').whereNotNull('commissionId').orderBy('id').select('commissionId', 'at', 'did');
     const last = new Map<string, Date>();
