@@ -1,4 +1,4 @@
-import { useCallback, useEffect, useMemo, useRef } from 'react';
+import { memo, useCallback, useEffect, useMemo, useRef } from 'react';
 import { useTranslation } from 'react-i18next';
 import type { GuestProof, GuestSheet } from '../../../../api/contract/guest-sheets.ts';
 import { joinClasses } from '../../ui/join-classes.ts';
@@ -89,7 +89,9 @@ interface RowProps extends Omit<SheetBodyProps, 'storeys' | 'comingFrom'> {
   ends: boolean;
 }
 
-function SheetRowView({ row, index, measures, ends, marks, places, role, onMark, addressOf, onPictureFailed }: RowProps) {
+/** Drawn anew only when the sheet is: scrolling draws the rows that come and leaves the others alone. */
+const SheetRowView = memo(function SheetRowView(props: RowProps) {
+  const { row, index, measures, ends, marks, places, role, onMark, addressOf, onPictureFailed } = props;
   const { stacked, gutter, gap } = measures;
   return (
     <div
@@ -119,7 +121,7 @@ function SheetRowView({ row, index, measures, ends, marks, places, role, onMark,
       </div>
     </div>
   );
-}
+});
 
 function WordsOf({ storey, places }: { storey: Storey; places: SheetBodyProps['places'] }) {
   const { t } = useTranslation();
