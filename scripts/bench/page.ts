@@ -67,6 +67,8 @@ export async function page(rounds: number): Promise<Figure[]> {
           .then((sizes) => (script += sizes.responseBodySize))
           .catch(() => undefined);
       });
+      // The loader of TypeScript names functions by a helper that the page does not have.
+      await tab.addInitScript('globalThis.__name = (named) => named;');
       await tab.addInitScript(watch);
       await tab.goto(`${house.address}/sheets/${sheet.id}`);
       await tab.waitForFunction(() => (window as unknown as { benchNotes: { firstRow: number } }).benchNotes.firstRow > 0);
