@@ -89,11 +89,11 @@ export function fitForUse(picture: PictureSize, use: Use): Fit {
   return { sharp: false, kind: 'print', ppi: (part.width / size.width) * MM_PER_INCH, largest };
 }
 
-/** Sizes are rounded down, so that nothing is promised: "42 × 28 cm", "8.4 × 5.6 cm", "4.2 × 2.8 m". */
+/** Sizes are rounded down, half a pixel aside, so that nothing is promised: "42 × 28 cm", "8.4 × 5.6 cm", "4.2 × 2.8 m". */
 function saySize({ widthMm, heightMm }: { widthMm: number; heightMm: number }): string {
   const longer = Math.max(widthMm, heightMm);
   const [unit, mm, digits] = longer >= 3000 ? ['m', 1000, 1] : ['cm', 10, longer < 200 ? 1 : 0];
-  const say = (length: number) => String(Math.floor((length / mm) * 10 ** digits + 1e-9) / 10 ** digits);
+  const say = (length: number) => String(Math.floor(((length + 0.05) / mm) * 10 ** digits) / 10 ** digits);
   return `${say(widthMm)} × ${say(heightMm)} ${unit}`;
 }
 

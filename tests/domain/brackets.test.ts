@@ -182,6 +182,16 @@ describe('No bracket are', () => {
     expect(sets([...pictures, ...raws]).sort()).toEqual(asSets(pictures, raws).sort());
   });
 
+  it('finished files beside the frames they were made of', () => {
+    const frames = inARow(THREE);
+    const finals = ['_final', '_final-v2'].map((suffix) => ({
+      ...(frames[0] as BracketCandidate),
+      id: suffix,
+      name: `${frames[0]?.name.slice(0, 7)}${suffix}.jpg`,
+    }));
+    expect(sets([...finals, ...frames])).toEqual(asSets(frames));
+  });
+
   it('frames of which the camera says that one was not of the bracket', () => {
     const modes = [0, 2, 2, 2];
     const frames = inARow([1 / 80, 1 / 60, 1 / 250, 1 / 15], (index) => ({ exposureMode: modes[index] as number }));

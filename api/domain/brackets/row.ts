@@ -44,9 +44,9 @@ function sameFocalLength(one: number | null, two: number | null): boolean {
   return one === null || two === null || Math.abs(one - two) <= 0.01 * one;
 }
 
-/** A picture and its raw file are two rows: a bracket lies in files of one kind. */
-function sameKind(one: Exposure, two: Exposure): boolean {
-  return one.file.extension === two.file.extension;
+/** A bracket lies in files of one kind: a picture and its raw file are two rows, and what somebody finished and named is none of the camera's row. */
+function sameKind({ file: one }: Exposure, { file: two }: Exposure): boolean {
+  return one.extension === two.extension && one.byCamera === two.byCamera;
 }
 
 function sameSetting(first: Exposure, second: Exposure): boolean {
