@@ -27,14 +27,15 @@ export interface CheckThresholds {
 
 /**
  * Common practice in photographing buildings, except: daylight, from the exposure values by scene of ANSI PH2.7-1986 (heavy
- * overcast and open shade 12, streets lit by neon 10 at most; a stop is left for exposure compensation), and the bits of the hash.
+ * overcast and open shade 12, streets lit by neon 10 at most; a stop is left for exposure compensation); sharpness and the bits of the
+ * hash, which were tried on pictures.
  */
 export const DEFAULT_THRESHOLDS: CheckThresholds = {
   clippedPercent: 1,
   blockedPercent: 5,
   handSpeed: 100,
   tripodFrom: 0.25,
-  sharpFrom: 0.1,
+  sharpFrom: 0.75,
   tiltDegrees: 0.5,
   convergingDegrees: 1.5,
   apertureFrom: 8,
