@@ -1,0 +1,112 @@
+import { type ChildProcess, spawn } from 'node:child_process';
+import { setTimeout as pause } from 'node:timers/promises';
+import { afterAll, beforeAll, expect, it } from 'vitest';
+import { groupFrames } from '../../api/features/brackets/group-frames.job.ts';
+import { mergeBracket } from '../../api/features/brackets/merge-bracket.job.ts';
+import { makeSheet } from '../../api/features/sheets/make-sheet.ts';
+import { Bracket } from '../../api/models/Bracket.ts';
+import { Frame } from '../../api/models/Frame.ts';
+import { Proof } from '../../api/models/Proof.ts';
+import { makeExposures } from '../support/factories/bracket.ts';
+import { makeCommission } from '../support/factories/commission.ts';
+import { makeStudio, type MadeStudio } from '../support/factories/studio.ts';
+import { type House, startHouse } from '../support/house.ts';
+import { runAllJobs } from '../support/run-all-jobs.ts';
+
+let house: House;
+let made: MadeStudio;
+const workers: ChildProcess[] = [];
+
+beforeAll(async () => {
+  house = await startHouse();
+  made = await makeStudio(house);
+});
+afterAll(async () => {
+  for (const worker of workers) worker.kill('SIGKILL');
+  await house.stop();
+});
+
+const tools = { signal: new AbortController().signal, attempt: 1, lastAttempt: false };
+
+function startWorker(): ChildProcess {
+  const env = { ...process.env, ...house.env, ORIEL_LOG_LEVEL: 'silent', AWS_SDK_JS_NODE_VERSION_SUPPORT_WARNING_DISABLED: 'true' };
+  const worker = spawn(process.execPath, ['--import', 'tsx', 'api/worker.ts'], { env, stdio: 'ignore' });
+  workers.push(worker);
+  return worker;
+}
+
+async function kill(worker: ChildProcess): Promise<void> {
+  const gone = new Promise((resolve) => worker.once('exit', resolve));
+  worker.kill('SIGKILL');
+  await gone;
+}
+
+async function until(holds: () => Promise<boolean>): Promise<void> {
+  while (!(await holds())) await pause(50);
+}
+
+/** Frames of so many brackets of two, measured and not grouped yet. */
+async function measuredBrackets(count: number) {
+  const commission = await makeCommission(made.studio);
+  const frames: Frame[] = [];
+  for (let minute = 1; minute <= count; minute += 1) {
+    frames.push(...(await makeExposures(house, commission, { stops: [0, 2], minute, seed: minute })));
+  }
+  await house.runJobs();
+  return { commission, frames };
+}
+
+it('a worker killed while it groups and merges leaves nothing half done: another goes on', { timeout: 600_000 }, async () => {
+  const { commission, frames } = await measuredBrackets(12);
+  const rows = () => Bracket.query().where({ commissionId: commission.id });
+  const merged = async () => (await rows()).filter(({ madeOf, wanted }) => madeOf === wanted).length;
+  const first = startWorker();
+  await until(async () => (await merged()) > 0);
+  await kill(first);
+  expect(await merged()).toBeLessThan(12);
+  const before = (await rows()).map(({ id }) => id).sort();
+  const second = startWorker();
+  await until(async () => (await merged()) === 12);
+  expect((await rows()).map(({ id }) => id).sort()).toEqual(before);
+  const grouped = await Frame.query()
+    .findByIds(frames.map(({ id }) => id))
+    .whereNotNull('bracketId');
+  expect(grouped).toHaveLength(24);
+  await kill(second);
+});
+
+it('grouping at the same time, more than once and while frames are laid on a sheet, makes each bracket one proof', async () => {
+  const { commission, frames } = await measuredBrackets(3);
+  const group = () => groupFrames.run(house.ctx, { commissionId: commission.id }, tools);
+  const ids = frames.map(({ id }) => id);
+  const lay = () => makeSheet(house.ctx, made.owner.actor, commission.id, ids);
+  const [, , sheet] = await Promise.all([group(), group(), lay(), group()]);
+  expect(await Bracket.query().where({ commissionId: commission.id }).resultSize()).toBe(3);
+  const proofs = await Proof.query().where({ sheetId: sheet.id }).orderBy('number');
+  expect(proofs.map(({ number }) => number)).toEqual([1, 2, 3]);
+  expect(new Set(proofs.map(({ bracketId }) => bracketId)).size).toBe(3);
+});
+
+it('a merge that comes too late throws away what it made', async () => {
+  const { commission } = await measuredBrackets(1);
+  await groupFrames.run(house.ctx, { commissionId: commission.id }, tools);
+  const { id, wanted } = await Bracket.query().findOne({ commissionId: commission.id }).throwIfNotFound();
+  const { pixels } = house.ctx;
+  const slow = {
+    ...pixels,
+    merge: async (...args: Parameters<typeof pixels.merge>) => {
+      const picture = await pixels.merge(...args);
+      await Bracket.query().findById(id).patch({ wanted: 'another' });
+      return picture;
+    },
+  };
+  await mergeBracket.run({ ...house.ctx, pixels: slow }, { bracketId: id }, tools);
+  expect(await Bracket.query().findById(id)).toMatchObject({ madeOf: null, wanted: 'another' });
+  const left: string[] = [];
+  for await (const { key } of house.ctx.store.list(`studios/${made.studio.id}/commissions/${commission.id}/pictures/brackets/`))
+    left.push(key);
+  expect(left).toEqual([]);
+  await Bracket.query().findById(id).patch({ wanted });
+  await runAllJobs(house);
+  expect(await Bracket.query().findById(id)).toMatchObject({ madeOf: wanted });
+});
