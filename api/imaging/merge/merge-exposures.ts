@@ -1,7 +1,6 @@
 import type { RawPicture } from '../upright.ts';
 import { PAPER, type FusionConventions } from './fusion/conventions.ts';
-import { fuse, workspaceLength } from './fusion/fuse.ts';
-import { ALONE } from './fusion/share.ts';
+import { fuse } from './fusion/fuse.ts';
 
 /** One frame of a bracket. */
 export interface Exposure {
@@ -30,15 +29,6 @@ export interface MergedExposures {
 /** Merges the frames of a bracket into one picture, as large as the lead frame and lying exactly over it. */
 export async function mergeExposures(exposures: Exposure[], lead: number, rule: FusionConventions = PAPER): Promise<MergedExposures> {
   const { width, height } = exposures[lead]!.picture;
-  const levels = rule.levels(Math.min(width, height));
-  const frames = exposures.map(({ picture }) => ({ pixels: new Uint8Array(picture.data), shift: { x: 0, y: 0 }, trust: null }));
-  const { levels: _, ...plain } = rule;
-  const result = new Uint8ClampedArray(width * height * 3);
-  const workspace = new Float32Array(workspaceLength({ width, height }, frames.length, levels));
-  fuse({ width, height, frames, rule: plain, levels, workspace, result }, ALONE);
-  return {
-    picture: { data: Buffer.from(result.buffer), width, height, channels: 3 },
-    shifts: frames.map(({ shift }) => shift),
-    leftOut: [],
-  };
+  const placed = exposures.map(({ picture }) => ({ picture, shift: { x: 0, y: 0 }, trust: null }));
+  return { picture: { data: fuse(placed, rule), width, height, channels: 3 }, shifts: placed.map(({ shift }) => shift), leftOut: [] };
 }

@@ -1,0 +1,47 @@
+import type { RawPicture } from '../../upright.ts';
+
+/** A frame as it lies over the result. */
+export interface PlacedFrame {
+  picture: RawPicture;
+  /** What lies at (x, y) of the result lies at (x + shift.x, y + shift.y) of the frame. */
+  shift: { x: number; y: number };
+  /** How far the frame is believed at each place; everywhere where there is none. */
+  trust: TrustMap | null;
+}
+
+/** Shares of 0 to 1 for squares of `cell` pixels, row after row. */
+export interface TrustMap {
+  cell: number;
+  columns: number;
+  shares: Float32Array;
+}
+
+/** Writes a frame's RGB as it lies over the result, the frame's edge repeated where it does not reach. */
+export function placeFrame({ picture, shift }: PlacedFrame, target: Uint8Array): void {
+  const { width, height, data, channels } = picture;
+  for (let y = 0; y < height; y++) {
+    const from = Math.min(height - 1, Math.max(0, y + shift.y)) * width;
+    const row = target.subarray(y * width * 3, (y + 1) * width * 3);
+    if (channels === 3 && shift.x === 0) row.set(data.subarray(from * 3, (from + width) * 3));
+    else placeRow(data.subarray(from * channels, (from + width) * channels), channels, shift.x, row);
+  }
+}
+
+function placeRow(source: Uint8Array, channels: number, shift: number, row: Uint8Array): void {
+  const width = row.length / 3;
+  for (let x = 0, at = 0; x < width; x++) {
+    const from = Math.min(width - 1, Math.max(0, x + shift)) * channels;
+    for (let colour = 0; colour < 3; colour++) row[at++] = source[from + colour] ?? 0;
+  }
+}
+
+/** Takes away a row's weights where the frame does not reach or is not believed. */
+export function withdraw(weights: Float32Array, { picture, shift, trust }: PlacedFrame, y: number): void {
+  const width = weights.length;
+  if (y + shift.y < 0 || y + shift.y >= picture.height) weights.fill(0);
+  if (shift.x < 0) weights.fill(0, 0, -shift.x);
+  if (shift.x > 0) weights.fill(0, Math.max(0, width - shift.x));
+  if (!trust) return;
+  const first = Math.floor(y / trust.cell) * trust.columns;
+  for (let x = 0; x < width; x++) weights[x] = (weights[x] ?? 0) * (trust.shares[first + Math.floor(x / trust.cell)] ?? 1);
+}
