@@ -5,9 +5,9 @@ import { defineConfig } from 'vitest/config';
 const api = `http://127.0.0.1:${process.env.ORIEL_PORT ?? '4400'}`;
 
 function inPackages(names: string[]): RegExp {
-  // What pages itself through long lists is no part of a guest's sheet.
+  // What pages itself through long lists, or asks many questions at once, is no part of a guest's sheet.
   return new RegExp(
-    `node_modules/(?!@tanstack/[\\w-]+/build/modern/(?:useInfinite|infinite))(${names.join('|')}|@tanstack/(react-query|query-core)|use-sync-external-store|thumbhash)/`,
+    `node_modules/(?!@tanstack/[\\w-]+/build/modern/(?:useInfinite|infinite|useQueries|queriesObserver))(${names.join('|')}|@tanstack/(react-query|query-core)|use-sync-external-store|thumbhash)/`,
   );
 }
 
@@ -15,7 +15,10 @@ const STUDIO_PARTS =
   /web\/src\/(?:ui|lib)\/(changed-meanwhile|more-button|search-field|bytes|data-table|step-bar|studio-shell|checkbox|select|field|text-input|confirm-dialog|progress-bar|dialog|justified-rows)/;
 
 function isGuestPart(id: string): boolean {
-  return /web\/src\/(ui|lib|messages|features\/(sheets-guest|marks))\/[\w-]+\.(tsx?|json)$/.test(id) && !STUDIO_PARTS.test(id);
+  return (
+    /web\/src\/(ui|lib|messages|features\/(sheets-guest|marks))\/(?!\w*-?beyond-sheet)[\w-]+\.(tsx?|json)$/.test(id) &&
+    !STUDIO_PARTS.test(id)
+  );
 }
 
 /**

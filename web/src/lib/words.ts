@@ -2,7 +2,7 @@ import i18next from 'i18next';
 import { initReactI18next } from 'react-i18next';
 import english from '../messages/en.json' with { type: 'json' };
 
-/** Starts the words of the page. English ships with the page; another language is one more file beside en.json. */
+/** Starts the words of the page with those that every page needs; messages/beyond-sheet.ts adds the others. Another language is files beside these. */
 export async function startWords(): Promise<void> {
   await i18next.use(initReactI18next).init({
     lng: 'en',

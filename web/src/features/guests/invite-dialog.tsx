@@ -9,6 +9,7 @@ import { Field } from '../../ui/field.tsx';
 import { showNotice } from '../../ui/notices.tsx';
 import { TextArea, TextInput } from '../../ui/text-input.tsx';
 import { guestsAddress, sheetKeys } from '../sheets-guest/queries.ts';
+import '../../messages/beyond-sheet.ts';
 
 interface Props {
   sheet: GuestSheet;
@@ -24,7 +25,7 @@ export default function InviteDialog({ sheet, onClose }: Props) {
     mutationFn: (who: InviteReviewer) => api.post<GuestSheet>(guestsAddress(sheet.id), who),
     onSuccess: (_answer, who) => {
       void queryClient.invalidateQueries({ queryKey: sheetKeys.sheet(sheet.id) });
-      showNotice(t('people.invited', { name: who.name, email: who.email }));
+      showNotice(t('invite.invited', { name: who.name, email: who.email }));
       onClose();
     },
   });
@@ -43,25 +44,25 @@ export default function InviteDialog({ sheet, onClose }: Props) {
     <Dialog
       open
       onClose={onClose}
-      title={t('people.title')}
+      title={t('invite.title')}
       actions={
         <>
           <Button onClick={onClose}>{t('ui.cancel')}</Button>
           <Button tone="first" type="submit" form={form} busy={invite.isPending}>
-            {t('people.send')}
+            {t('invite.send')}
           </Button>
         </>
       }
     >
       <form id={form} noValidate onSubmit={onSubmit} className="grid gap-4">
-        <p>{t('people.words')}</p>
-        <Field label={t('people.name')} error={wrong('name')}>
+        <p>{t('invite.words')}</p>
+        <Field label={t('invite.name')} error={wrong('name')}>
           {(control) => <TextInput {...control} name="name" autoComplete="off" maxLength={120} />}
         </Field>
-        <Field label={t('people.email')} error={wrong('email')}>
+        <Field label={t('invite.email')} error={wrong('email')}>
           {(control) => <TextInput {...control} name="email" type="email" autoComplete="off" />}
         </Field>
-        <Field label={t('people.message')} optional={t('ui.optional')} error={wrong('words')}>
+        <Field label={t('invite.message')} optional={t('ui.optional')} error={wrong('words')}>
           {(control) => <TextArea {...control} name="words" maxLength={4000} />}
         </Field>
         {general ? (

@@ -13,6 +13,7 @@ import { formatTimeWithZone } from '../../lib/dates.ts';
 import { GuestShell } from '../../ui/guest-shell.tsx';
 import { JustifiedRows } from '../../ui/justified-rows.tsx';
 import { Pending } from '../../ui/pending.tsx';
+import '../../messages/beyond-sheet.ts';
 
 /** A delivery as its recipient sees it: the pictures without watermark, and everything to download. */
 export function Component() {

@@ -12,6 +12,7 @@ import { GuestShell } from '../../ui/guest-shell.tsx';
 import { PageTitle } from '../../ui/page-title.tsx';
 import { Pending } from '../../ui/pending.tsx';
 import { Failure } from '../../ui/query-view.tsx';
+import '../../messages/beyond-sheet.ts';
 
 /** Everything this guest was ever invited to, of every studio. */
 export function Component() {

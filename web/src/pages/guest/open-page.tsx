@@ -10,6 +10,7 @@ import { LinkButton } from '../../ui/link-button.tsx';
 import { PageTitle } from '../../ui/page-title.tsx';
 import { Pending } from '../../ui/pending.tsx';
 import { Failure } from '../../ui/query-view.tsx';
+import '../../messages/beyond-sheet.ts';
 
 /**
  * Where the link of an e-mail leads. The token is handed over by POST: mail scanners that follow links only fetch this page

@@ -5,6 +5,7 @@ import { ProofViewer } from '../../features/viewer/proof-viewer.tsx';
 import { GuestShell } from '../../ui/guest-shell.tsx';
 import { LinkButton } from '../../ui/link-button.tsx';
 import { PageTitle } from '../../ui/page-title.tsx';
+import '../../messages/beyond-sheet.ts';
 
 /** One proof by itself, on a neutral surround. */
 export function Component() {

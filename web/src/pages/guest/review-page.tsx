@@ -11,6 +11,7 @@ import { GuestShell } from '../../ui/guest-shell.tsx';
 import { LinkButton } from '../../ui/link-button.tsx';
 import { showNotice } from '../../ui/notices.tsx';
 import { PageTitle } from '../../ui/page-title.tsx';
+import '../../messages/beyond-sheet.ts';
 
 /** The lead's last look before the picks go to the studio, and afterwards what was sent. */
 export function Component() {
