@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest';
 import type { FrameItem } from '../../api/contract/frames.ts';
 import { arrange, type FrameWish } from '../../web/src/features/frames/frame-order.ts';
 
-const WISH: FrameWish = { sort: 'taken', descending: false, shown: 'visible', view: '', text: '' };
+const WISH: FrameWish = { sort: 'taken', descending: false, shown: 'visible', group: 'all', view: '', text: '' };
 
 function frame(name: string, more: Partial<FrameItem> = {}): FrameItem {
   return {
@@ -21,6 +21,9 @@ function frame(name: string, more: Partial<FrameItem> = {}): FrameItem {
     exposureTime: null,
     iso: null,
     focalLength: null,
+    bracketId: null,
+    checks: [],
+    alike: null,
     ...more,
   };
 }

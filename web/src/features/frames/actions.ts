@@ -7,7 +7,9 @@ import { showNotice } from '../../ui/notices.tsx';
 import { sheetKeys } from '../sheets/queries.ts';
 import { counted } from '../uploads/upload-words.ts';
 import { changeFrames, loadedFrames, removeFrames, writeFrames } from './frame-cache.ts';
+import { asProofsWords } from './bracket-words.ts';
 import { frameKeys, frameSummaryQuery } from './queries.ts';
+import { told } from './told.ts';
 
 /** The API takes at most so many at once. */
 const AT_ONCE = 1000;
@@ -125,7 +127,8 @@ function frameActions(queries: QueryClient, commissionId: string): FrameActions 
         const target = await putAll(commissionId, ids, sheet);
         void queries.invalidateQueries({ queryKey: sheetKeys.lists(commissionId) });
         void queries.invalidateQueries({ queryKey: sheetKeys.one(target.id) });
-        showNotice(`${counted(ids.length, NOUN)} put on sheet ${target.number}: it has ${counted(target.proofCount, PROOF)} now.`);
+        const what = asProofsWords(loadedFrames(queries, commissionId, ids));
+        showNotice(`${what} put on sheet ${target.number}: it has ${counted(target.proofCount, PROOF)} now.`);
       }),
   };
 }
@@ -153,15 +156,6 @@ async function inPortions<T>(ids: readonly string[], send: (ids: string[]) => Pr
   const answers: T[] = [];
   for (let at = 0; at < ids.length; at += AT_ONCE) answers.push(await send(ids.slice(at, at + AT_ONCE)));
   return answers;
-}
-
-/** Does it, and shows the reason where it was refused. */
-async function told(act: () => Promise<void>): Promise<void> {
-  try {
-    await act();
-  } catch (error) {
-    showNotice(error instanceof ApiProblem ? error.detail : 'That did not work. Please try again.', { tone: 'problem' });
-  }
 }
 
 function tellRefused(answers: readonly FramesChangedExcept[], what: string): void {

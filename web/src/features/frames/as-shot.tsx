@@ -3,6 +3,7 @@ import type { Frame } from '../../../../api/contract/frames.ts';
 import { formatAperture, formatBias, formatFocalLength, formatIso, formatShutter } from '../../../../api/domain/photo-notation.ts';
 import { formatBytes } from '../../lib/bytes.ts';
 import { formatTime } from '../../lib/dates.ts';
+import { stepWords } from './bracket-words.ts';
 import { formatLocalTime } from './local-time.ts';
 
 const MODES = ['Automatic', 'By hand', 'Automatic bracket'];
@@ -13,6 +14,10 @@ export function AsShot({ frame }: { frame: Frame }) {
   return (
     <div className="grid gap-x-8 md:grid-cols-2 lg:grid-cols-1">
       <Facts title="As shot">
+        <Fact
+          label="In its bracket"
+          value={frame.step === null ? null : `${stepWords(frame.step)} ${Math.abs(frame.step) === 1 ? 'stop' : 'stops'}`}
+        />
         <Fact always label="Aperture" value={formatAperture(frame.fNumber)} />
         <Fact always label="Shutter" value={formatShutter(frame.exposureTime)} />
         <Fact always label="ISO" value={formatIso(frame.iso)?.replace('ISO ', '')} />

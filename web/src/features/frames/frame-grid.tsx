@@ -1,15 +1,14 @@
-import { useCallback, useEffect, useImperativeHandle, useMemo, useRef, type MouseEvent, type Ref } from 'react';
+import { useCallback, useEffect, useImperativeHandle, useMemo, useRef, type MouseEvent, type ReactNode, type Ref } from 'react';
 import type { FrameItem } from '../../../../api/contract/frames.ts';
-import { justify, type JustifiedRow } from '../../ui/justify.ts';
 import { useWidth } from '../../ui/use-width.ts';
 import { VirtualRows, type VirtualRowsHandle } from '../../ui/virtual-rows.tsx';
-import { CAPTION, FrameTile } from './frame-tile.tsx';
+import { GAP, layGrid, type GridModel } from './grid-rows.ts';
+import { GridRowView, type TilesShared } from './grid-row-view.tsx';
 import { rowOf } from './row-places.ts';
+import type { Section } from './sections.ts';
 import { choose, type Manner, type Selection } from './selection.ts';
 import { pressInGrid } from './use-grid-keys.ts';
 
-const GAP = 12;
-const ROW_HEIGHT = 190;
 /** The selection bar that stands over the lower edge. */
 const FOOT = 72;
 
@@ -19,32 +18,34 @@ export interface FrameGridHandle {
 }
 
 interface Props {
-  frames: readonly FrameItem[];
+  sections: readonly Section[];
   selection: Selection;
   onSelection: (selection: Selection) => void;
   views: ReadonlyMap<string, { title: string; number: number }>;
-  /** Where a frame is shown large. */
-  addressOf: (id: string) => string;
-  onOpen: (id: string) => void;
+  /** Where a frame is shown large, or the merged picture of the bracket that it leads. */
+  addressOf: (id: string, merged?: boolean) => string;
+  onOpen: (id: string, merged?: boolean) => void;
   onDelete: () => void;
   onKeys: () => void;
+  /** The buttons in a section's heading. */
+  toolsOf: (section: Section) => ReactNode;
   /** Anything that moves the grid down or up the page when it changes. */
   above: string | number;
   ref?: Ref<FrameGridHandle>;
 }
 
-/** Any number of frames in justified rows, of which one is reached by Tab and the others by the arrows. */
-export function FrameGrid({ frames, selection, onSelection, views, addressOf, onOpen, onDelete, onKeys, above, ref }: Props) {
+/** Any number of frames in their sections, of which one is reached by Tab and the others by the arrows. */
+export function FrameGrid({ sections, selection, onSelection, views, addressOf, onOpen, onDelete, onKeys, toolsOf, above, ref }: Props) {
   const [columnRef, width] = useWidth();
-  const order = useMemo(() => frames.map((frame) => frame.id), [frames]);
-  const rows = useMemo(() => rowsOf(frames, width), [frames, width]);
+  const model = useMemo(() => layGrid(sections, width), [sections, width]);
+  const { order, rows, lines } = model;
   const virtual = useRef<VirtualRowsHandle>(null);
   const grid = useRef<HTMLDivElement>(null);
   const latest = useRef({ selection, order });
   useEffect(() => {
     latest.current = { selection, order };
   });
-  const focusSoon = useFocusOn(grid, virtual, rows, order);
+  const focusSoon = useFocusOn(grid, virtual, model);
   useImperativeHandle(ref, () => ({ focusFrame: focusSoon }), [focusSoon]);
 
   const pick = useCallback(
@@ -53,7 +54,16 @@ export function FrameGrid({ frames, selection, onSelection, views, addressOf, on
   );
   const onPress = useCallback((id: string, event: MouseEvent) => pick(id, mannerOf(event)), [pick]);
   const onMark = useCallback((id: string) => pick(id, 'also'), [pick]);
+  const onChooseAll = useCallback(
+    (frames: readonly FrameItem[], event: MouseEvent) => {
+      const ids = frames.map((frame) => frame.id);
+      const before = mannerOf(event) === 'alone' ? [] : latest.current.selection.chosen;
+      onSelection({ chosen: new Set([...before, ...ids]), focus: ids[0] ?? null, anchor: ids[0] ?? null });
+    },
+    [onSelection],
+  );
   const reachable = selection.focus ?? order[0];
+  const shared: TilesShared = { model, selection, reachable, views, addressOf, onPress, onMark, onOpen, onChooseAll, toolsOf };
 
   return (
     <div ref={columnRef}>
@@ -69,10 +79,12 @@ export function FrameGrid({ frames, selection, onSelection, views, addressOf, on
             // However the focus came here, the keys start from where it is.
             if (id !== undefined && id !== selection.focus) onSelection({ ...selection, focus: id });
           }}
-          onKeyDown={(event) =>
+          onKeyDown={(event) => {
+            // The buttons of a heading have keys of their own.
+            if (!(event.target as Element).matches('[data-frame]')) return;
             pressInGrid(event, {
               order,
-              rows,
+              rows: lines,
               gap: GAP,
               selection,
               change: (next) => {
@@ -82,51 +94,26 @@ export function FrameGrid({ frames, selection, onSelection, views, addressOf, on
               open: onOpen,
               remove: onDelete,
               showKeys: onKeys,
-            })
-          }
+            });
+          }}
         >
           <VirtualRows
             ref={virtual}
             count={rows.length}
-            layoutKey={`${width}/${frames.length}/${above}`}
-            heightOf={(at) => (rows[at]?.height ?? 0) + CAPTION + GAP}
-            keyOf={(at) => order[rows[at]?.first ?? 0] ?? String(at)}
+            layoutKey={`${width}/${rows.length}/${order.length}/${above}`}
+            heightOf={(at) => rows[at]?.height ?? 0}
+            keyOf={(at) => rows[at]?.key ?? String(at)}
             footHeight={FOOT}
           >
             {(at) => {
               const row = rows[at];
-              if (!row) return null;
-              return (
-                <div role="row" aria-rowindex={at + 1} className="flex" style={{ gap: GAP, height: row.height + CAPTION + GAP }}>
-                  {frames.slice(row.first, row.first + row.widths.length).map((frame, place) => (
-                    <FrameTile
-                      key={frame.id}
-                      frame={frame}
-                      width={row.widths[place] ?? 0}
-                      height={row.height}
-                      chosen={selection.chosen.has(frame.id)}
-                      reachable={frame.id === reachable}
-                      view={frame.viewId === null ? undefined : views.get(frame.viewId)}
-                      address={addressOf(frame.id)}
-                      onPress={onPress}
-                      onMark={onMark}
-                      onOpen={onOpen}
-                    />
-                  ))}
-                </div>
-              );
+              return row ? <GridRowView row={row} at={at} shared={shared} /> : null;
             }}
           </VirtualRows>
         </div>
       ) : null}
     </div>
   );
-}
-
-function rowsOf(frames: readonly FrameItem[], width: number): JustifiedRow[] {
-  // Without a size (a frame that could not be read) a tile takes the commonest proportion, not a square hole.
-  const pictures = frames.map((frame) => (frame.width > 0 && frame.height > 0 ? frame : { width: 3, height: 2 }));
-  return width === 0 ? [] : justify(pictures, { width, rowHeight: ROW_HEIGHT, gap: GAP });
 }
 
 /** A finger has no modifier keys, so each tap adds or takes away; a screen reader's press does the same. */
@@ -140,14 +127,13 @@ function mannerOf(event: MouseEvent): Manner {
 function useFocusOn(
   grid: React.RefObject<HTMLDivElement | null>,
   virtual: React.RefObject<VirtualRowsHandle | null>,
-  rows: readonly JustifiedRow[],
-  order: readonly string[],
+  { lines, order }: GridModel,
 ): (id: string) => void {
   const wanted = useRef<string | null>(null);
   return useCallback(
     (id: string) => {
       wanted.current = id;
-      virtual.current?.scrollToRow(rowOf(rows, order.indexOf(id)));
+      virtual.current?.scrollToRow(lines[rowOf(lines, order.indexOf(id))]?.row ?? 0);
       const look = (tries: number) => {
         if (wanted.current !== id) return;
         const tile = grid.current?.querySelector<HTMLElement>(`[data-frame="${id}"]`);
@@ -157,6 +143,6 @@ function useFocusOn(
       };
       requestAnimationFrame(() => look(30));
     },
-    [grid, virtual, rows, order],
+    [grid, virtual, lines, order],
   );
 }

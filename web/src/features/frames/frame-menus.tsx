@@ -9,13 +9,18 @@ interface Props {
   actions: FrameActions;
 }
 
+interface HangProps extends Props {
+  views: ReadonlyMap<string, { title: string; number: number }>;
+  label?: string;
+}
+
 /** Hangs frames under a view of the brief, or takes them down. */
-export function HangMenu({ ids, actions, views }: Props & { views: ReadonlyMap<string, { title: string; number: number }> }) {
+export function HangMenu({ ids, actions, views, label = 'Hang under' }: HangProps) {
   const entries = [...views].map(([id, { title, number }]) => ({
     words: `View ${number} · ${title}`,
     onChoose: () => void actions.hang(ids, { id, title }),
   }));
-  return <Menu label="Hang under" entries={[...entries, { words: 'Under no view', onChoose: () => void actions.hang(ids, null) }]} />;
+  return <Menu label={label} entries={[...entries, { words: 'Under no view', onChoose: () => void actions.hang(ids, null) }]} />;
 }
 
 /** Puts frames on a sheet that is still being made or open, or on a new one. */

@@ -1,6 +1,7 @@
 import type { FrameItem } from '../../../../api/contract/frames.ts';
 import { formatAperture, formatFocalLength, formatIso, formatShutter } from '../../../../api/domain/photo-notation.ts';
 import { formatLocalDay } from './local-time.ts';
+import type { Group } from './sections.ts';
 
 export type SortBy = 'taken' | 'name' | 'f-number' | 'exposure-time' | 'iso' | 'focal-length';
 /** Which frames are shown: those that are not hidden, the hidden ones, those that could not be read, or those that were deleted. */
@@ -11,6 +12,8 @@ export interface FrameWish {
   sort: SortBy;
   descending: boolean;
   shown: Shown;
+  /** Which of the visible frames. */
+  group: Group;
   /** A view's id, `none` for frames under no view, or empty for all. */
   view: string;
   text: string;

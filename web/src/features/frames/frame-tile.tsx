@@ -2,10 +2,8 @@ import { memo, type MouseEvent } from 'react';
 import { Link } from 'react-router-dom';
 import type { FrameItem } from '../../../../api/contract/frames.ts';
 import { Picture } from '../../ui/picture.tsx';
-import { captionSettings, stem } from './frame-words.ts';
-
-/** Height below the picture in CSS pixels: a line of words that is also a target of 24 px. */
-export const CAPTION = 28;
+import { captionSettings, captionShutter, stem } from './frame-words.ts';
+import { CAPTION } from './grid-rows.ts';
 
 interface Props {
   frame: FrameItem;
@@ -16,6 +14,11 @@ interface Props {
   reachable: boolean;
   /** The title of the view it hangs under, and that view's number in the brief. */
   view: { title: string; number: number } | undefined;
+  /** In a bracket: how many stops it is brighter than the lead, in words, and whether the merged picture is made without it. */
+  step?: string | undefined;
+  leftOut?: boolean;
+  /** Below the picture: everything that somebody should look at. */
+  sentences?: boolean;
   /** Where the frame is shown large. */
   address: string;
   onPress: (id: string, event: MouseEvent) => void;
@@ -25,7 +28,7 @@ interface Props {
 
 /** One frame in the grid: its picture, its name and settings, and a box that chooses it without the keyboard. */
 export const FrameTile = memo(function FrameTile(props: Props) {
-  const { frame, width, height, chosen, reachable, view, address } = props;
+  const { frame, width, height, chosen, reachable, step, address } = props;
   return (
     <div
       role="gridcell"
@@ -42,14 +45,16 @@ export const FrameTile = memo(function FrameTile(props: Props) {
         <Box chosen={chosen} onMark={() => props.onMark(frame.id)} />
       </div>
       <p className="flex items-center gap-2 text-13 text-mute" style={{ height: CAPTION }}>
-        <span className="min-w-0 flex-1 truncate">
+        <span className="min-w-0 flex-1 truncate" title={frame.name}>
           <Link to={address} tabIndex={-1} className="font-bold text-ink hover:underline" onClick={(event) => event.stopPropagation()}>
-            {stem(frame.name)}
+            {step === undefined ? stem(frame.name) : step}
+            {step === undefined ? null : <span className="sr-only"> {stem(frame.name)}</span>}
           </Link>{' '}
-          {captionSettings(frame)}
+          {step === undefined ? captionSettings(frame) : null}
         </span>
-        <Remark frame={frame} view={view} />
+        {step === undefined ? <Remark {...props} /> : <BracketRemark {...props} />}
       </p>
+      {props.sentences ? <Sentences frame={frame} /> : null}
     </div>
   );
 });
@@ -98,13 +103,42 @@ function Box({ chosen, onMark }: { chosen: boolean; onMark: () => void }) {
   );
 }
 
-function Remark({ frame, view }: { frame: FrameItem; view: { title: string; number: number } | undefined }) {
+function Remark({ frame, view, sentences }: Props) {
   if (frame.hidden) return <span className="font-bold">hidden</span>;
-  if (!view) return null;
+  const check = sentences ? undefined : frame.checks.find((one) => one.toCheck);
   return (
-    <span title={view.title}>
-      View {view.number}
-      <span className="sr-only">, {view.title}</span>
-    </span>
+    <>
+      {check ? <b className="shrink-0 text-copper">{check.short}</b> : null}
+      {view ? (
+        <span className="shrink-0" title={view.title}>
+          View {view.number}
+          <span className="sr-only">, {view.title}</span>
+        </span>
+      ) : null}
+    </>
+  );
+}
+
+const AT_THE_LIMIT = ['highlights', 'shadows'];
+
+/** What is beside a frame's step: a frame of a bracket is clipped on purpose, which is worth reading and no alarm. */
+function BracketRemark({ frame, leftOut }: Props) {
+  if (leftOut) return <b className="text-copper">left out</b>;
+  const check = frame.checks.find((one) => one.toCheck || AT_THE_LIMIT.includes(one.check));
+  if (check) return <b className="truncate text-copper">{check.short}</b>;
+  return <span>{captionShutter(frame)}</span>;
+}
+
+function Sentences({ frame }: { frame: FrameItem }) {
+  return (
+    <ul className="pb-3 text-13">
+      {frame.checks
+        .filter((check) => check.toCheck)
+        .map((check) => (
+          <li key={check.check} className="list-none">
+            {check.says}
+          </li>
+        ))}
+    </ul>
   );
 }

@@ -2,7 +2,7 @@ import type { FrameSummary } from '../../../../api/contract/frames.ts';
 import { Button } from '../../ui/button.tsx';
 import { Select } from '../../ui/select.tsx';
 import { TextInput } from '../../ui/text-input.tsx';
-import type { FrameWish, Shown, SortBy } from './frame-order.ts';
+import type { FrameWish, SortBy } from './frame-order.ts';
 
 const SORTS: { value: SortBy; words: string }[] = [
   { value: 'taken', words: 'Sort: time taken' },
@@ -27,9 +27,11 @@ interface Props {
 /** Above the grid: which frames, in which order. */
 export function FrameToolbar({ summary, wish, onWish, views, shown, chosen, onAll }: Props) {
   return (
-    <div className="flex flex-wrap items-center justify-between gap-x-4 gap-y-2">
+    <div className="grid gap-2">
+      <div role="group" aria-label="Which frames" className="flex flex-wrap items-center gap-2">
+        <GroupButtons summary={summary} wish={wish} onWish={onWish} />
+      </div>
       <div className="flex flex-wrap items-center gap-2">
-        <ShownButtons summary={summary} shown={wish.shown} onShown={(value) => onWish({ shown: value })} />
         <Select
           aria-label="View"
           scale="small"
@@ -46,11 +48,10 @@ export function FrameToolbar({ summary, wish, onWish, views, shown, chosen, onAl
           value={wish.text}
           onChange={(event) => onWish({ text: event.target.value })}
         />
-      </div>
-      <div className="flex flex-wrap items-center gap-2">
         <Select
           aria-label="Sort by"
           scale="small"
+          className="ml-auto"
           value={wish.sort}
           choices={SORTS}
           onChange={(event) => onWish({ sort: event.target.value as SortBy })}
@@ -66,21 +67,34 @@ export function FrameToolbar({ summary, wish, onWish, views, shown, chosen, onAl
   );
 }
 
-/** An entry appears with what it shows; the one in use stays. */
-function ShownButtons({ summary, shown, onShown }: { summary: FrameSummary | undefined; shown: Shown; onShown: (shown: Shown) => void }) {
-  const counts: Record<Shown, number> = {
-    visible: (summary?.total ?? 0) - (summary?.hidden ?? 0),
-    hidden: summary?.hidden ?? 0,
-    failed: summary?.failed ?? 0,
-    deleted: summary?.deleted ?? 0,
-  };
-  const words: Record<Shown, string> = { visible: 'Frames', hidden: 'Hidden', failed: 'Failed', deleted: 'Deleted' };
-  const entries = (Object.keys(words) as Shown[]).filter((one) => one === 'visible' || one === shown || counts[one] > 0);
-  return entries.map((one) => (
-    <Button key={one} size="small" tone={one === shown ? 'first' : 'plain'} aria-pressed={one === shown} onClick={() => onShown(one)}>
-      {words[one]} {summary ? counts[one] : ''}
-    </Button>
-  ));
+interface Entry extends Pick<FrameWish, 'shown' | 'group'> {
+  words: string;
+  count: (summary: FrameSummary) => number;
+}
+
+const ENTRIES: Entry[] = [
+  { shown: 'visible', group: 'all', words: 'Frames', count: ({ total, hidden }) => total - hidden },
+  { shown: 'visible', group: 'brackets', words: 'Brackets', count: ({ brackets }) => brackets },
+  { shown: 'visible', group: 'single', words: 'Single frames', count: ({ brackets, single }) => (brackets > 0 ? single : 0) },
+  { shown: 'visible', group: 'to-check', words: 'To check', count: ({ toCheck }) => toCheck },
+  { shown: 'visible', group: 'alike', words: 'Alike', count: ({ alike }) => alike },
+  { shown: 'hidden', group: 'all', words: 'Hidden', count: ({ hidden }) => hidden },
+  { shown: 'failed', group: 'all', words: 'Failed', count: ({ failed }) => failed },
+  { shown: 'deleted', group: 'all', words: 'Deleted', count: ({ deleted }) => deleted },
+];
+
+/** An entry appears with what it shows; the first one and the one in use stay. */
+function GroupButtons({ summary, wish, onWish }: Pick<Props, 'summary' | 'wish' | 'onWish'>) {
+  return ENTRIES.map(({ shown, group, words, count }, at) => {
+    const inUse = shown === wish.shown && group === wish.group;
+    const many = summary ? count(summary) : 0;
+    if (at > 0 && !inUse && many === 0) return null;
+    return (
+      <Button key={words} size="small" tone={inUse ? 'first' : 'plain'} aria-pressed={inUse} onClick={() => onWish({ shown, group })}>
+        {words} {summary ? many : ''}
+      </Button>
+    );
+  });
 }
 
 function viewChoices(views: Props['views']) {

@@ -3,13 +3,13 @@ import { formatAperture, formatFocalLength, formatIso, formatShutter } from '../
 
 /** The settings below a frame, as short as they can be: "f/8 · 1/125 · ISO 100"; without an ISO the focal length. */
 export function captionSettings(frame: FrameItem): string {
-  const parts = [
-    formatAperture(frame.fNumber),
-    // A fraction is a time in any case; "2 s" needs its unit.
-    formatShutter(frame.exposureTime)?.replace(/^(1\/\d+) s$/, '$1'),
-    formatIso(frame.iso) ?? formatFocalLength(frame.focalLength),
-  ];
+  const parts = [formatAperture(frame.fNumber), captionShutter(frame), formatIso(frame.iso) ?? formatFocalLength(frame.focalLength)];
   return parts.filter(Boolean).join(' · ');
+}
+
+/** The shutter time as short as it can be. A fraction is a time in any case; "2 s" needs its unit. */
+export function captionShutter({ exposureTime }: Pick<FrameItem, 'exposureTime'>): string | undefined {
+  return formatShutter(exposureTime)?.replace(/^(1\/\d+) s$/, '$1');
 }
 
 /** The name without its extension, as captions have it; the whole name where there is none. */

@@ -1,4 +1,5 @@
 import { infiniteQueryOptions, queryOptions } from '@tanstack/react-query';
+import type { BracketList } from '../../../../api/contract/brackets.ts';
 import type { Frame, FrameList, FrameQuery, FrameSummary } from '../../../../api/contract/frames.ts';
 import { api } from '../../lib/api.ts';
 
@@ -11,6 +12,7 @@ export const frameKeys = {
   list: (commissionId: string) => ['commissions', commissionId, 'frames', 'list'] as const,
   deleted: (commissionId: string) => ['commissions', commissionId, 'frames', 'deleted'] as const,
   one: (frameId: string) => ['frames', frameId] as const,
+  brackets: (commissionId: string) => ['commissions', commissionId, 'brackets'] as const,
 };
 
 /**
@@ -53,5 +55,13 @@ export function frameQuery(frameId: string) {
   return queryOptions({
     queryKey: frameKeys.one(frameId),
     queryFn: ({ signal }) => api.get<Frame>(`/api/frames/${frameId}`, { signal }),
+  });
+}
+
+/** The brackets of a commission, all at once, in the order they were taken. */
+export function bracketsQuery(commissionId: string) {
+  return queryOptions({
+    queryKey: frameKeys.brackets(commissionId),
+    queryFn: ({ signal }) => api.get<BracketList>(`/api/commissions/${commissionId}/brackets`, { signal }),
   });
 }

@@ -1,7 +1,10 @@
+import { FEWEST_EXPOSURES, MOST_EXPOSURES, type Bracket } from '../../../../api/contract/brackets.ts';
 import type { FrameItem } from '../../../../api/contract/frames.ts';
 import { Button } from '../../ui/button.tsx';
 import { counted } from '../uploads/upload-words.ts';
 import type { FrameActions } from './actions.ts';
+import type { BracketActions } from './bracket-actions.ts';
+import { asProofsWords } from './bracket-words.ts';
 import { HangMenu, SheetMenu } from './frame-menus.tsx';
 
 interface Props {
@@ -10,6 +13,8 @@ interface Props {
   frames: readonly FrameItem[];
   views: ReadonlyMap<string, { title: string; number: number }>;
   actions: FrameActions;
+  brackets: ReadonlyMap<string, Bracket>;
+  bracketActions: BracketActions;
   /** They were deleted: they can be brought back and nothing else. */
   deleted: boolean;
   onDelete: () => void;
@@ -17,7 +22,8 @@ interface Props {
 }
 
 /** Over the lower edge while frames are chosen: how many, and what can be done with them. */
-export function SelectionBar({ commissionId, frames, views, actions, deleted, onDelete, onNone }: Props) {
+export function SelectionBar(props: Props) {
+  const { commissionId, frames, views, actions, deleted, onDelete, onNone } = props;
   const ids = frames.map((frame) => frame.id);
   const ready = frames.filter((frame) => frame.state === 'ready').map((frame) => frame.id);
   const someHidden = frames.some((frame) => frame.hidden);
@@ -27,6 +33,7 @@ export function SelectionBar({ commissionId, frames, views, actions, deleted, on
       <p role="status" className="font-bold">
         {counted(frames.length, { one: 'chosen', many: 'chosen' })}
       </p>
+      {frames.some((frame) => frame.bracketId !== null) ? <p className="text-13 text-mute">{asProofsWords(frames)}</p> : null}
       <Button size="small" tone="quiet" className="mr-auto" onClick={onNone}>
         None
       </Button>
@@ -37,6 +44,7 @@ export function SelectionBar({ commissionId, frames, views, actions, deleted, on
       ) : (
         <>
           {ready.length > 0 ? <SheetMenu ids={ready} actions={actions} commissionId={commissionId} /> : null}
+          <Regrouping {...props} />
           <HangMenu ids={ids} actions={actions} views={views} />
           {someVisible ? (
             <Button size="small" onClick={() => void actions.hide(ids, true)}>
@@ -54,5 +62,42 @@ export function SelectionBar({ commissionId, frames, views, actions, deleted, on
         </>
       )}
     </div>
+  );
+}
+
+/** Joins the chosen frames to one bracket, or takes them out of theirs. */
+function Regrouping({ frames, brackets, bracketActions }: Props) {
+  const [first] = frames;
+  const together = first?.bracketId && frames.every((frame) => frame.bracketId === first.bracketId);
+  const bracket = together ? brackets.get(first.bracketId ?? '') : undefined;
+  const some = bracket !== undefined && frames.length < bracket.frameIds.length;
+  const enough = frames.length >= FEWEST_EXPOSURES && frames.length <= MOST_EXPOSURES;
+  const joinable = enough && !together && frames.every((frame) => frame.state === 'ready' && !frame.hidden);
+  return (
+    <>
+      {joinable ? (
+        <Button size="small" onClick={() => void bracketActions.join(frames)}>
+          Join
+        </Button>
+      ) : null}
+      {bracket && some && bracket.can.regroup ? (
+        <Button
+          size="small"
+          onClick={() =>
+            void bracketActions.takeOut(
+              bracket,
+              frames.map((frame) => frame.id),
+            )
+          }
+        >
+          Take out
+        </Button>
+      ) : null}
+      {bracket && frames.length === 1 && first && first.id !== bracket.leadFrameId && bracket.can.change ? (
+        <Button size="small" onClick={() => void bracketActions.change(bracket, { leadFrameId: first.id })}>
+          Make it the lead
+        </Button>
+      ) : null}
+    </>
   );
 }

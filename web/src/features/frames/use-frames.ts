@@ -15,8 +15,8 @@ export function useFrames(commissionId: string, wish: FrameWish) {
   const all = useMemo<FrameItem[]>(() => query.data?.pages.flatMap((page) => page.items) ?? [], [query.data]);
   // Typing stays fluent over ten thousand frames: the grid may follow a moment later.
   const calm = useDeferredValue(wish);
-  const shown = useMemo(() => arrange(all, calm), [all, calm]);
-  return { query, all, shown };
+  const found = useMemo(() => arrange(all, calm), [all, calm]);
+  return { query, all, found };
 }
 
 /** The views of the brief by their ids, with their numbers, in order. */

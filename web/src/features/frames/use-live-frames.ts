@@ -21,7 +21,7 @@ export function useLiveFrames(commissionId: string): void {
     if (change.type === 'lost') return gatherer.everything();
     if (!('what' in change)) return;
     if (typeof change.frameId === 'string' && /^frame-/.test(String(change.what))) gatherer.frame(change.frameId);
-    else if (change.what === 'frames-changed' || change.what === 'missed') gatherer.everything();
+    else if (['frames-changed', 'brackets-changed', 'missed'].includes(String(change.what))) gatherer.everything();
   });
 }
 
@@ -78,6 +78,7 @@ class Gatherer {
     void this.queries.invalidateQueries({ queryKey: frameSummaryQuery(this.commissionId).queryKey });
     if (all) {
       void this.queries.invalidateQueries({ queryKey: frameKeys.deleted(this.commissionId) });
+      void this.queries.invalidateQueries({ queryKey: frameKeys.brackets(this.commissionId) });
       return this.queries.invalidateQueries({ queryKey: frameKeys.list(this.commissionId) });
     }
     const missing = ids.length > FEW ? await this.#newest(ids) : ids;

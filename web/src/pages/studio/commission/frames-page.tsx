@@ -1,25 +1,32 @@
-import { useCallback, useMemo, useRef, useState } from 'react';
-import { Outlet, useNavigate } from 'react-router-dom';
+import { useRef, useState } from 'react';
+import { Outlet } from 'react-router-dom';
 import { useQuery } from '@tanstack/react-query';
+import type { Bracket } from '../../../../../api/contract/brackets.ts';
 import type { FrameItem } from '../../../../../api/contract/frames.ts';
 import { useFrameActions, type FrameActions } from '../../../features/frames/actions.ts';
+import { useBracketActions } from '../../../features/frames/bracket-actions.ts';
 import { DeleteDialog } from '../../../features/frames/delete-dialog.tsx';
 import { FrameGrid, type FrameGridHandle } from '../../../features/frames/frame-grid.tsx';
 import { FrameToolbar } from '../../../features/frames/frame-toolbar.tsx';
-import { KeysDialog } from '../../../features/frames/keys-dialog.tsx';
+import { GRID_KEYS, KeysDialog } from '../../../features/frames/keys-dialog.tsx';
 import { NoFrames, NoneFound } from '../../../features/frames/no-frames.tsx';
 import { frameSummaryQuery } from '../../../features/frames/queries.ts';
-import { chooseAll, chooseNone, keepShown, NOTHING, type Selection } from '../../../features/frames/selection.ts';
+import { SectionTools } from '../../../features/frames/section-tools.tsx';
+import { chooseAll, chooseNone } from '../../../features/frames/selection.ts';
 import { SelectionBar } from '../../../features/frames/selection-bar.tsx';
 import { useFrameWish } from '../../../features/frames/use-frame-wish.ts';
+import { useFrameWays } from '../../../features/frames/use-frame-ways.ts';
 import { useFrames, useViewTitles } from '../../../features/frames/use-frames.ts';
 import { useHeight } from '../../../features/frames/use-height.ts';
 import { useLiveFrames } from '../../../features/frames/use-live-frames.ts';
+import { useBrackets, useSections } from '../../../features/frames/use-sections.ts';
+import { useShownSelection } from '../../../features/frames/use-shown-selection.ts';
 import { UploadPanel } from '../../../features/uploads/upload-panel.tsx';
 import { useCommissionUploads } from '../../../features/uploads/use-commission-uploads.ts';
 import { useUploadTotals } from '../../../features/uploads/use-uploads.ts';
 import { Button } from '../../../ui/button.tsx';
 import { PageTitle } from '../../../ui/page-title.tsx';
+import { Pending } from '../../../ui/pending.tsx';
 import { QueryView } from '../../../ui/query-view.tsx';
 import { useCommission } from './layout.tsx';
 
@@ -27,17 +34,18 @@ import { useCommission } from './layout.tsx';
 export interface FramesOutlet {
   all: readonly FrameItem[];
   shown: readonly FrameItem[];
+  brackets: ReadonlyMap<string, Bracket>;
   views: ReadonlyMap<string, { title: string; number: number }>;
   actions: FrameActions;
   /** Whether frames may be changed, and whether those shown were deleted. */
   can: boolean;
   deleted: boolean;
-  /** Opens another frame, or goes back to all of them with the focus on the one that was looked at. */
-  go: (id: string) => void;
+  /** Opens another frame (or the merged picture of the bracket it leads), or goes back to all of them with the focus on the one that was looked at. */
+  go: (id: string, merged?: boolean) => void;
   close: (id: string) => void;
 }
 
-const NO_WISH = { view: '', text: '', shown: 'visible' } as const;
+const NO_WISH = { view: '', text: '', shown: 'visible', group: 'all' } as const;
 
 /** /commissions/:commissionId/frames */
 export function Component() {
@@ -47,15 +55,18 @@ export function Component() {
   const uploading = useUploadTotals(queue).running;
   useLiveFrames(id);
   const [wish, setWish, search] = useFrameWish();
-  const { query, all, shown } = useFrames(id, wish);
+  const { query, all, found } = useFrames(id, wish);
+  const { brackets, pending } = useBrackets(id);
+  const { sections, shown } = useSections(found, brackets, wish);
   const summary = useQuery(frameSummaryQuery(id)).data;
   const views = useViewTitles(id);
   const actions = useFrameActions(id);
+  const bracketActions = useBracketActions(id);
   const [selection, setSelection, chosen] = useShownSelection(shown);
   const [asking, setAsking] = useState<'delete' | 'keys' | null>(null);
   const [aboveRef, aboveHeight] = useHeight();
   const grid = useRef<FrameGridHandle>(null);
-  const { addressOf, open, outlet } = useWays(id, search, grid, setSelection);
+  const { addressOf, open, outlet } = useFrameWays(id, search, grid, setSelection);
   const deleted = wish.shown === 'deleted';
   const can = commission.closedAt === null;
   const askToDelete = () => can && !deleted && chosen.length > 0 && setAsking('delete');
@@ -99,10 +110,11 @@ export function Component() {
                 Keys
               </Button>
             </p>
-            {shown.length === 0 && !query.hasNextPage ? <NoneFound onAll={() => setWish(NO_WISH)} /> : null}
+            {pending ? <Pending /> : null}
+            {!pending && shown.length === 0 && !query.hasNextPage ? <NoneFound onAll={() => setWish(NO_WISH)} /> : null}
             <FrameGrid
               ref={grid}
-              frames={shown}
+              sections={pending ? [] : sections}
               selection={selection}
               onSelection={setSelection}
               views={views}
@@ -110,6 +122,9 @@ export function Component() {
               onOpen={open}
               onDelete={askToDelete}
               onKeys={() => setAsking('keys')}
+              toolsOf={(section) =>
+                can ? <SectionTools section={section} views={views} actions={actions} bracketActions={bracketActions} /> : null
+              }
               above={aboveHeight}
             />
           </section>
@@ -121,6 +136,8 @@ export function Component() {
           frames={chosen}
           views={views}
           actions={actions}
+          brackets={brackets}
+          bracketActions={bracketActions}
           deleted={deleted}
           onDelete={askToDelete}
           onNone={() => setSelection(chooseNone(selection))}
@@ -132,36 +149,8 @@ export function Component() {
         onDelete={async () => void (await actions.remove(chosen.map((frame) => frame.id)))}
         onClose={() => setAsking(null)}
       />
-      <KeysDialog open={asking === 'keys'} onClose={() => setAsking(null)} />
-      <Outlet context={{ all, shown, views, actions, can, deleted, ...outlet } satisfies FramesOutlet} />
+      <KeysDialog title="Keys on this page" keys={GRID_KEYS} open={asking === 'keys'} onClose={() => setAsking(null)} />
+      <Outlet context={{ all, shown, brackets, views, actions, can, deleted, ...outlet } satisfies FramesOutlet} />
     </>
   );
-}
-
-/** The selection among what is shown now, and the chosen frames in their order. */
-function useShownSelection(shown: readonly FrameItem[]): [Selection, (next: Selection) => void, FrameItem[]] {
-  const [kept, setKept] = useState(NOTHING);
-  const order = useMemo(() => shown.map((frame) => frame.id), [shown]);
-  const selection = useMemo(() => keepShown(kept, order), [kept, order]);
-  const chosen = useMemo(() => shown.filter((frame) => selection.chosen.has(frame.id)), [shown, selection.chosen]);
-  return [selection, setKept, chosen];
-}
-
-/** The ways between the grid and one frame; the wish in the address comes along. */
-function useWays(id: string, search: string, grid: React.RefObject<FrameGridHandle | null>, focus: (selection: Selection) => void) {
-  const navigate = useNavigate();
-  const query = search === '' ? '' : `?${search}`;
-  const addressOf = useCallback((frameId: string) => `/commissions/${id}/frames/${frameId}${query}`, [id, query]);
-  const open = useCallback((frameId: string) => void navigate(addressOf(frameId)), [navigate, addressOf]);
-  const go = useCallback((frameId: string) => void navigate(addressOf(frameId), { replace: true }), [navigate, addressOf]);
-  const close = useCallback(
-    (frameId: string) => {
-      void navigate(`/commissions/${id}/frames${query}`);
-      focus({ ...NOTHING, focus: frameId, anchor: frameId });
-      // The large view must be gone before a tile below it can take the focus.
-      requestAnimationFrame(() => grid.current?.focusFrame(frameId));
-    },
-    [navigate, id, query, focus, grid],
-  );
-  return { addressOf, open, outlet: { go, close } };
 }

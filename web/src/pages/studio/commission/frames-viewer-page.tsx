@@ -1,11 +1,13 @@
 import { useQuery } from '@tanstack/react-query';
 import { useState } from 'react';
-import { useOutletContext, useParams } from 'react-router-dom';
+import { useLocation, useOutletContext, useParams } from 'react-router-dom';
 import type { FrameItem } from '../../../../../api/contract/frames.ts';
+import { bracketSetOf } from '../../../features/frames/bracket-places.ts';
 import { DeleteDialog } from '../../../features/frames/delete-dialog.tsx';
 import { HangMenu, SheetMenu } from '../../../features/frames/frame-menus.tsx';
 import { FrameViewer } from '../../../features/frames/frame-viewer.tsx';
 import { frameQuery } from '../../../features/frames/queries.ts';
+import { MERGED } from '../../../features/frames/use-frame-ways.ts';
 import { Button } from '../../../ui/button.tsx';
 import { Dialog } from '../../../ui/dialog.tsx';
 import { QueryView } from '../../../ui/query-view.tsx';
@@ -14,11 +16,13 @@ import type { FramesOutlet } from './frames-page.tsx';
 /** /commissions/:commissionId/frames/:frameId, above the page of all frames. */
 export function Component() {
   const { frameId = '' } = useParams();
-  const { all, shown, can, go, close } = useOutletContext<FramesOutlet>();
+  const { hash } = useLocation();
+  const { all, shown, brackets, can, go, close } = useOutletContext<FramesOutlet>();
   const list = shown.some((one) => one.id === frameId) ? shown : all;
   const at = list.findIndex((one) => one.id === frameId);
   const frame = list[at];
   if (!frame) return <NotLoaded frameId={frameId} onClose={() => close(frameId)} />;
+  const set = bracketSetOf(frame, all, brackets);
   const [before, after] = [list[at - 1], list[at + 1]];
   const leave = () => {
     const next = after ?? before;
@@ -31,6 +35,8 @@ export function Component() {
       place={{ at: at + 1, of: list.length }}
       before={before}
       after={after}
+      set={set}
+      merged={hash === MERGED && set?.bracket.merged.state === 'ready'}
       onGo={go}
       onClose={() => close(frame.id)}
     >
