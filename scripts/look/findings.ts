@@ -8,6 +8,11 @@ export interface UseFinding {
   says: string;
 }
 
+/** Another file shows nearly the same. */
+export interface AlikeCheck extends Omit<FrameCheck, 'check'> {
+  check: 'alike';
+}
+
 /** What was found in one file. Units as in the columns of a frame: seconds, millimetres, EV, degrees. */
 export interface FileFinding {
   file: string;
@@ -32,7 +37,9 @@ export interface FileFinding {
   /** Photographer's notation: "f/11 · 1/125 s · ISO 100 · 35 mm". */
   says: string;
   ev100: number | null;
-  checks: FrameCheck[];
+  /** Stops that the brightest parts of the developed picture are below the limit. */
+  headroom: number;
+  checks: (FrameCheck | AlikeCheck)[];
   uses: UseFinding[];
 }
 

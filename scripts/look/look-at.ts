@@ -2,6 +2,7 @@ import fs from 'node:fs/promises';
 import os from 'node:os';
 import { groupBrackets, type FoundBracket } from '../../api/domain/brackets.ts';
 import { Refusal } from '../../api/imaging/refusal.ts';
+import { alikeChecks } from './alike-checks.ts';
 import { candidateOf, examineFile, type Examined } from './examine-file.ts';
 import type { BracketFinding, Findings, Problem } from './findings.ts';
 import { mergeBracket } from './merge-bracket.ts';
@@ -69,6 +70,7 @@ export async function lookAt(names: readonly string[], mergeInto: string | null)
     const picture = merged?.get(one);
     return { files: one.frameIds, lead: one.leadId, says: one.says, ...(picture && { merged: picture }) };
   });
-  const answered = examined.map((one) => presentFile(one, bracketed.has(one.file)));
+  const alike = alikeChecks(examined, found);
+  const answered = examined.map((one) => presentFile(one, bracketed.has(one.file), alike.get(one.file)));
   return { files: answered, brackets, ...(problems.length > 0 && { problems }) };
 }

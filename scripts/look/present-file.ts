@@ -6,7 +6,7 @@ import { checkFrame } from '../../api/domain/frame-checks.ts';
 import { formatShot } from '../../api/domain/photo-notation.ts';
 import type { ShootingSettings } from '../../api/imaging/read-settings.ts';
 import type { Examined } from './examine-file.ts';
-import type { FileFinding, UseFinding } from './findings.ts';
+import type { AlikeCheck, FileFinding, UseFinding } from './findings.ts';
 
 /** "+01:00". */
 function sayOffset(minutes: number): string {
@@ -35,14 +35,18 @@ function settingsOf(read: ShootingSettings): FileFinding['settings'] {
 }
 
 /** Everything that is said about one file. A frame of a bracket is not blamed for what a bracket is for. */
-export function presentFile({ file, settings, width, height, measures }: Examined, inBracket: boolean): FileFinding {
+export function presentFile({ file, settings, width, height, measures }: Examined, inBracket: boolean, alike?: AlikeCheck): FileFinding {
   const { fNumber, exposureTime, iso, focalLength, focalLength35 } = settings;
   const ev100 = exposureValue100({ fNumber, seconds: exposureTime, iso });
   return {
     ...{ file, width, height, settings: settingsOf(settings) },
     says: formatShot({ fNumber, seconds: exposureTime, iso, focalLength }),
     ev100: ev100 === null ? null : Number(ev100.toFixed(4)),
-    checks: checkFrame({ fNumber, exposureTime, iso, focalLength, focalLength35, inBracket }, measures, DEFAULT_THRESHOLDS),
+    headroom: Number(measures.headroom.toFixed(2)),
+    checks: [
+      ...checkFrame({ fNumber, exposureTime, iso, focalLength, focalLength35, inBracket }, measures, DEFAULT_THRESHOLDS),
+      ...(alike ? [alike] : []),
+    ],
     uses: usesOf({ width, height }),
   };
 }

@@ -1,4 +1,5 @@
 import path from 'node:path';
+import { headroomWords } from '../../api/domain/frame-checks.ts';
 import type { BracketFinding, FileFinding, Findings, UseFinding } from './findings.ts';
 
 function sayUses(uses: readonly UseFinding[]): string[] {
@@ -13,6 +14,7 @@ function sayFile(finding: FileFinding): string {
   const lines = [
     shot === '' ? 'No settings in this file' : shot,
     ...(ev100 === null ? [] : [`EV ${ev100.toFixed(1)} at ISO 100`]),
+    headroomWords(finding.headroom),
     ...finding.checks.map(({ says, toCheck }) => `${toCheck ? 'To check' : 'Good to know'}: ${says}`),
     ...sayUses(finding.uses),
   ];

@@ -59,13 +59,10 @@ function comparable(one: Uint8Array, two: Uint8Array): Uint8Array {
  * the same wherever one turns, the houses do not.
  */
 function detail(thumb: Uint8Array, mask: Uint8Array): Float64Array {
-  const stops = Float64Array.from(thumb, (value) => STOPS[value] as number);
-  for (let pass = 0; pass < 2; pass++) {
-    for (let line = 0; line < SIDE; line++) {
-      centre(stops, mask, line * SIDE, 1);
-      centre(stops, mask, line, SIDE);
-    }
-  }
+  const stops = new Float64Array(thumb.length);
+  for (let at = 0; at < stops.length; at++) stops[at] = STOPS[thumb[at] as number] as number;
+  for (let row = 0; row < SIDE; row++) centre(stops, mask, row * SIDE, 1);
+  for (let column = 0; column < SIDE; column++) centre(stops, mask, column, SIDE);
   return stops;
 }
 

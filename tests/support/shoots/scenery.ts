@@ -1,8 +1,8 @@
 import type { Chance } from './chance.ts';
 
-/** Light of a place, all around it: 4 squares of 64 × 64 beside each other, row by row; 1 is what a metered frame shows in the middle tones. */
+/** Light of a place, all around it: 4 squares of 64 × 64 beside each other, row by row, in stops; 0 just fills a straight curve. */
 export interface Place {
-  light: Float32Array;
+  stops: Float32Array;
 }
 
 export const HIGH = 64;
@@ -21,7 +21,7 @@ export function drawPlace(chance: Chance): Place {
     drawTower(light, chance, x, wide, night);
     x += wide + chance.whole(0, 7);
   }
-  return { light: soften(light) };
+  return { stops: soften(light).map(Math.log2) };
 }
 
 /** Windows are smaller than a column, so that most of them fall into two. */
@@ -67,8 +67,8 @@ export function thumbOf(place: Place, direction: number, stops: number, curve: C
   const bytes = Buffer.alloc(32 * 32);
   const grain = chance.between(0.3, 1.5);
   const value = (x: number, y: number) => {
-    const light = place.light[y * AROUND + ((x + direction) % AROUND)] as number;
-    const step = Math.round((Math.log2(light) + stops + 14) * 64);
+    const seen = place.stops[y * AROUND + ((x + direction) % AROUND)] as number;
+    const step = Math.round((seen + stops + 14) * 64);
     return TABLES[curve][Math.max(0, Math.min(TABLES[curve].length - 1, step))] as number;
   };
   for (let y = 0; y < 32; y++) {
