@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import type { Operation } from './operation.ts';
 import { EmailAddress, NameLine } from './person.ts';
+import { Uses } from './uses.ts';
 
 export const DeliveryState = z.enum(['Preparing', 'Failed', 'Sent', 'Ended', 'Withdrawn']);
 export type DeliveryState = z.infer<typeof DeliveryState>;
@@ -141,6 +142,8 @@ export const GuestDelivery = z.object({
   sentAt: z.iso.datetime(),
   fetchBy: z.iso.date(),
   endsAt: z.iso.datetime(),
+  /** What a picture may be wanted for; whether it is good for it is worked out in the browser. */
+  uses: Uses,
   files: z.array(
     DeliveryFileItem.omit({ finalId: true, finalVersionId: true, versionNumber: true, picture: true }).extend({
       pictures: z.object({ '480': z.string(), '960': z.string(), '2560': z.string() }).nullable(),

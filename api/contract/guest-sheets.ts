@@ -59,6 +59,8 @@ export const GuestProof = z.object({
     takenLocal: z.string().nullable(),
     /** The shortest and the longest time of a bracket, in seconds; null for a single frame. */
     shutterRange: z.object({ fastest: z.number(), slowest: z.number() }).nullable(),
+    /** "2 stops apart"; null for a single frame, or where the settings of one are not known. */
+    apart: z.string().nullable(),
   }),
   /** Null for a single frame. */
   exposures: Exposures.nullable(),

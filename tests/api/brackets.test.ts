@@ -278,7 +278,7 @@ describe('on a proof sheet', () => {
     const [seen] = (body.proofs as GuestProofs).proofs;
     expect(seen).toMatchObject({
       exposures: { count: 3, merged: true, says: '3 exposures merged' },
-      asShot: { shutterRange: { fastest: 1 / 64, slowest: 1 / 4 } },
+      asShot: { shutterRange: { fastest: 1 / 64, slowest: 1 / 4 }, apart: '2 stops apart' },
     });
     expect(JSON.stringify(body)).not.toContain('HL_06');
     await house.request.get(seen?.pictures?.large ?? '').expect(200);

@@ -8,6 +8,7 @@ import { DeliveryRecipient } from '../../models/DeliveryRecipient.ts';
 import { Studio } from '../../models/Studio.ts';
 import { fetchedOf, type Fetched } from '../downloads/fetched.ts';
 import { versionPictures } from '../finals/presenter.ts';
+import { usesOf } from '../studios/studio-uses.ts';
 import { fileFacts, loadFiles, type LoadedDelivery, type LoadedFile } from './presenter.ts';
 
 /** The delivery of a recipient; the gate has seen that it was sent and not withdrawn. @throws Problem 404 */
@@ -50,6 +51,7 @@ export async function readGuestDelivery(ctx: Context, recipient: DeliveryRecipie
     sentAt: (delivery.sentAt ?? delivery.createdAt).toISOString(),
     fetchBy: delivery.fetchBy,
     endsAt: delivery.endsAt.toISOString(),
+    uses: usesOf(studio),
     ...content,
   };
 }

@@ -84,6 +84,7 @@ async function presentProof(
       focalLength: frame.focalLength,
       takenLocal: frame.takenLocal,
       shutterRange: exposed?.shutterRange ?? null,
+      apart: exposed?.apart ?? null,
     },
     exposures: exposuresOf(bracket, exposed?.count ?? 0, shown),
   };
