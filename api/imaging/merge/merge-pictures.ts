@@ -38,6 +38,6 @@ async function decode(jpeg: Buffer): Promise<RawPicture> {
 export async function mergePictures(frames: BracketFrame[], lead: number): Promise<Merged> {
   const pictures = await Promise.all(frames.map(({ jpeg }) => decode(jpeg)));
   const exposures = frames.map(({ ev }, index) => ({ ev, picture: pictures[index] as RawPicture }));
-  const { picture, leftOut, shifts } = await mergeExposures(exposures, lead);
+  const { picture, leftOut, shifts } = mergeExposures(exposures, lead);
   return { ...(await derivativesOf(picture)), width: picture.width, height: picture.height, leftOut, shifts };
 }

@@ -1,0 +1,48 @@
+import { alignPair } from './align-pair.ts';
+import type { Grey } from './grey-pyramid.ts';
+import type { Shift } from './threshold-bitmaps.ts';
+
+/** A frame's grey copy, and where it stands among the exposures. */
+export interface GreyExposure {
+  index: number;
+  ev: number;
+  grey: Grey;
+}
+
+/** Frames already laid over the lead frame, the last one next in exposure. */
+interface Laid {
+  grey: Grey;
+  shift: Shift;
+}
+
+/** Lays a frame over the nearest one that has something to say about it. */
+function layOver(laid: Laid[], grey: Grey): Shift | null {
+  for (const reference of [...laid].reverse()) {
+    const verdict = alignPair(reference.grey, grey);
+    if (verdict.is === 'moved') return null;
+    if (verdict.is === 'aligned') return { x: reference.shift.x + verdict.shift.x, y: reference.shift.y + verdict.shift.y };
+  }
+  // Nothing shows that it moved, so it did as its neighbour did.
+  return laid.at(-1)?.shift ?? null;
+}
+
+/**
+ * Aligns exposures by translation: from the lead frame outwards each is laid over its neighbour in exposure and the shifts are added up, as frames next
+ * to each other show most in common.
+ * @returns Shifts against the lead frame in pixels of the greys, by index; none for a frame that cannot be laid over the others.
+ */
+export function alignExposures(exposures: GreyExposure[], lead: GreyExposure): Map<number, Shift | null> {
+  const shifts = new Map<number, Shift | null>([[lead.index, { x: 0, y: 0 }]]);
+  const others = exposures.filter(({ index }) => index !== lead.index);
+  const darker = others.filter(({ ev }) => ev <= lead.ev).sort((a, b) => b.ev - a.ev);
+  const brighter = others.filter(({ ev }) => ev > lead.ev).sort((a, b) => a.ev - b.ev);
+  for (const side of [darker, brighter]) {
+    const laid: Laid[] = [{ grey: lead.grey, shift: { x: 0, y: 0 } }];
+    for (const { index, grey } of side) {
+      const shift = layOver(laid, grey);
+      if (shift) laid.push({ grey, shift });
+      shifts.set(index, shift);
+    }
+  }
+  return shifts;
+}

@@ -1,0 +1,81 @@
+import type { Grey } from './grey-pyramid.ts';
+import { halfOf } from './grey-pyramid.ts';
+import { correlation, texturedTiles, type Tile } from './tiles.ts';
+import { bitmapShift, type Shift } from './threshold-bitmaps.ts';
+
+/** What two pictures of one scene say of each other: how far the second is moved, that it cannot be laid over the first, or nothing. */
+export type Verdict = { is: 'aligned'; shift: Shift } | { is: 'moved' } | { is: 'unknown' };
+
+/** A tile is looked for so far around the place where it should be. */
+const REACH = 5;
+/** Below this a tile was not found again. */
+const ALIKE = 0.6;
+/** A tile that shows so much must be found again; a fainter one may drown in noise. */
+const STRONG_TEXTURE = 6;
+/** Tiles agree that lie so near to their median. */
+const AGREEING = 0.8;
+/** So many tiles say something about a picture. */
+const LEAST_TILES = 4;
+/** So many of them must agree; people, trees and water may move in the others. */
+const MAJORITY = 0.5;
+
+/** Where a correlation of three places in a row is highest, from the middle one: a parabola through them. */
+function peak(before: number, middle: number, after: number): number {
+  const bend = before - 2 * middle + after;
+  return bend >= 0 ? 0 : Math.max(-0.5, Math.min(0.5, (0.5 * (before - after)) / bend));
+}
+
+/** Climbs to where a tile is most alike; nothing where it is nowhere near, `lost` where it should have been. */
+function findTile(first: Grey, second: Grey, tile: Tile, { x, y }: Shift): Shift | 'lost' | null {
+  const known = new Map<string, number>();
+  const at = (dx: number, dy: number): number => {
+    const key = `${dx} ${dy}`;
+    const value = known.get(key) ?? correlation(first, second, tile, dx, dy);
+    known.set(key, value);
+    return value;
+  };
+  let [dx, dy] = [x, y];
+  for (;;) {
+    const around = [-1, 0, 1].flatMap((row) => [-1, 0, 1].map((column) => [dx + column, dy + row] as const));
+    const [bestX, bestY] = around.reduce((best, place) => (at(...place) > at(...best) ? place : best), [dx, dy] as const);
+    if (bestX === dx && bestY === dy) break;
+    [dx, dy] = [bestX, bestY];
+    if (Math.abs(dx - x) >= REACH || Math.abs(dy - y) >= REACH) return 'lost';
+  }
+  if (at(dx, dy) < ALIKE) return tile.texture >= STRONG_TEXTURE ? 'lost' : null;
+  return { x: dx + peak(at(dx - 1, dy), at(dx, dy), at(dx + 1, dy)), y: dy + peak(at(dx, dy - 1), at(dx, dy), at(dx, dy + 1)) };
+}
+
+const median = (values: number[]) => [...values].sort((a, b) => a - b)[values.length >> 1] ?? 0;
+
+interface Vote {
+  tiles: number;
+  agreeing: number;
+  shift: Shift;
+}
+
+/** Has the tiles of two pictures vote on a shift. */
+function vote(first: Grey, second: Grey, near: Shift): Vote {
+  const found = texturedTiles(first, second, near, REACH)
+    .map((tile) => findTile(first, second, tile, near))
+    .filter((place) => place !== null);
+  const places = found.filter((place) => place !== 'lost');
+  const shift = { x: median(places.map(({ x }) => x)), y: median(places.map(({ y }) => y)) };
+  const agreeing = places.filter(({ x, y }) => Math.abs(x - shift.x) <= AGREEING && Math.abs(y - shift.y) <= AGREEING).length;
+  return { tiles: found.length, agreeing, shift };
+}
+
+/**
+ * Says how two exposures of one scene lie to each other, in pixels of the greys and parts of them. Threshold bitmaps propose a shift; a camera on a
+ * tripod proposes none; the tiles that show something in both decide, over pixels that are neither black nor white in either. Where hardly any tile
+ * does, nothing is known: a frame that is nearly white is no evidence that it moved.
+ */
+export function alignPair(first: Grey, second: Grey): Verdict {
+  const proposed = bitmapShift(halfOf(first), halfOf(second));
+  const votes = [{ x: 0, y: 0 }];
+  if (proposed && (proposed.x !== 0 || proposed.y !== 0)) votes.push({ x: 2 * proposed.x, y: 2 * proposed.y });
+  const counted = votes.map((near) => vote(first, second, near));
+  const best = counted.reduce((one, other) => (other.agreeing > one.agreeing ? other : one));
+  if (best.tiles < LEAST_TILES) return { is: 'unknown' };
+  return best.agreeing >= MAJORITY * best.tiles ? { is: 'aligned', shift: best.shift } : { is: 'moved' };
+}
