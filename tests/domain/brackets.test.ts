@@ -116,6 +116,13 @@ describe('A bracket', () => {
     expect(groupBrackets(frames).map(({ says }) => says)).toEqual([`3 frames, ${words}, f/8, ISO 100`]);
   });
 
+  it('may miss a setting, of one frame or of all', () => {
+    const one = inARow(THREE, (index) => (index === 1 ? { fNumber: null, lens: null, focalLength: null, serial: null } : {}));
+    expect(groupBrackets(one).map(({ says }) => says)).toEqual(['3 frames, 2 stops apart, f/8, ISO 100']);
+    const all = inARow(THREE, () => ({ fNumber: null, iso: null }));
+    expect(groupBrackets(all).map(({ says }) => says)).toEqual(['3 frames, 2 stops apart']);
+  });
+
   it('that lost a frame says how uneven it is', () => {
     const frames = inARow([1 / 250, 1 / 60, 1 / 15, 1.0], () => ({ exposureMode: 2 }));
     expect(groupBrackets(frames)[0]?.says).toBe('4 frames, 2 to 4 stops apart, f/8, ISO 100');

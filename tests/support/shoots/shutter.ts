@@ -10,7 +10,6 @@ export interface Press {
   /** Seconds, as the camera writes them. */
   seconds: number;
   iso?: number;
-  fNumber?: number | null;
   bias: number;
   mode: 0 | 1 | 2;
   place: Place;
@@ -47,8 +46,8 @@ export function press(camera: Camera, what: Press, zone: number, chance: Chance)
     takenLocal,
     takenAt: camera.zone === null ? null : Date.parse(`${takenLocal}Z`) - zone * 60_000,
     exposureTime: what.seconds,
-    fNumber: what.fNumber === undefined ? camera.fNumber : what.fNumber,
-    iso: what.iso ?? camera.iso,
+    fNumber: lost(chance, camera.fNumber),
+    iso: lost(chance, what.iso ?? camera.iso),
     exposureBias: camera.writesBias ? lost(chance, what.bias) : null,
     exposureMode: camera.writesMode ? lost(chance, what.mode) : null,
     make: camera.make,
