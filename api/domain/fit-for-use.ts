@@ -89,6 +89,11 @@ export function fitForUse(picture: PictureSize, use: Use): Fit {
   return { sharp: false, kind: 'print', ppi: (part.width / size.width) * MM_PER_INCH, largest };
 }
 
+/** Rounded down, so that nothing is promised: "215", below ten "8.4". */
+export function sayPpi(ppi: number): string {
+  return String(ppi < 10 ? Math.floor(ppi * 10) / 10 : Math.floor(ppi));
+}
+
 /** Sizes are rounded down, half a pixel aside, so that nothing is promised: "42 × 28 cm", "8.4 × 5.6 cm", "4.2 × 2.8 m". */
 function saySize({ widthMm, heightMm }: { widthMm: number; heightMm: number }): string {
   const longer = Math.max(widthMm, heightMm);
@@ -97,10 +102,14 @@ function saySize({ widthMm, heightMm }: { widthMm: number; heightMm: number }): 
   return `${say(widthMm)} × ${say(heightMm)} ${unit}`;
 }
 
+/** The largest size that is sharp: "42 × 28 cm", "1600 × 900 px". */
+export function sayLargest(fit: Fit & { sharp: false }): string {
+  return fit.kind === 'screen' ? `${fit.largest.widthPx} × ${fit.largest.heightPx} px` : saySize(fit.largest);
+}
+
 /** The answer in words: "sharp", "215 ppi, sharp up to 42 × 28 cm", "sharp up to 1600 × 900 px". */
 export function sayFit(fit: Fit): string {
   if (fit.sharp) return 'sharp';
-  if (fit.kind === 'screen') return `sharp up to ${fit.largest.widthPx} × ${fit.largest.heightPx} px`;
-  const ppi = fit.ppi < 10 ? Math.floor(fit.ppi * 10) / 10 : Math.floor(fit.ppi);
-  return `${ppi} ppi, sharp up to ${saySize(fit.largest)}`;
+  const upTo = `sharp up to ${sayLargest(fit)}`;
+  return fit.kind === 'screen' ? upTo : `${sayPpi(fit.ppi)} ppi, ${upTo}`;
 }

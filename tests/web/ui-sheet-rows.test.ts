@@ -4,8 +4,8 @@ import { layRows, measureSheet, readStoreys, stepOnSheet } from '../../web/src/f
 import { drawAllowance } from '../../web/src/ui/dimension-line.tsx';
 
 function proof(number: number, viewId: string | null, width = 6000, height = 4000): GuestProof {
-  const asShot = { fNumber: 11, exposureTime: 1 / 125, iso: 100, focalLength: 35, takenLocal: null };
-  return { id: `p${number}`, number, viewId, width, height, placeholder: null, pictures: null, asShot };
+  const asShot = { fNumber: 11, exposureTime: 1 / 125, iso: 100, focalLength: 35, takenLocal: null, shutterRange: null, apart: null };
+  return { id: `p${number}`, number, viewId, width, height, placeholder: null, pictures: null, asShot, exposures: null };
 }
 
 const views = [

@@ -58,8 +58,15 @@ export function ProofCard(props: Props) {
         {proof.pictures ? null : <p className="absolute bottom-0 left-0 bg-sheet px-2 text-13">{t('proof.beingMade')}</p>}
       </div>
       <figcaption className={joinClasses('flex items-center justify-between gap-2 py-1.5', stacked && 'px-4 py-2')}>
-        <b>{writeNumber(proof.number)}</b>
-        <span className="flex items-center gap-2">
+        <span className="flex min-w-0 items-center gap-2">
+          <b>{writeNumber(proof.number)}</b>
+          {proof.exposures ? (
+            <span title={proof.exposures.says} className="truncate border border-line px-1.5 text-13 text-mute">
+              {proof.exposures.says}
+            </span>
+          ) : null}
+        </span>
+        <span className="flex shrink-0 items-center gap-2">
           <Initials people={marks.others} most={width < 200 ? 1 : width < 280 ? 2 : 5} />
           {onMark ? (
             <MarkButton

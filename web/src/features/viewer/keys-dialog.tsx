@@ -12,7 +12,7 @@ interface Props {
   onClose: () => void;
 }
 
-const KEYS = ['arrows', 'space', 'escape', 'plus', 'minus', 's', 'help'] as const;
+const KEYS = ['arrows', 'space', 'escape', 'plus', 'minus', 's', 'g', 'help'] as const;
 
 /** Lists the keys of the viewer, and switches those that are single characters off (WCAG 2.1.4); kept with the account. */
 export function KeysDialog({ sheet, open, onClose }: Props) {

@@ -9,8 +9,10 @@ import { nameOfProof } from '../sheets-guest/name-of-proof.ts';
 import { MarkButton } from '../sheets-guest/mark-button.tsx';
 import type { SheetData } from '../sheets-guest/sheet-door.tsx';
 import { nextSurround, useSurround } from '../sheets-guest/surround.ts';
+import { GuideLines } from './guide-lines.tsx';
+import { nextGuides, useGuides, type Guides } from './guides.ts';
 import { KeysDialog } from './keys-dialog.tsx';
-import { ShotPanel } from './shot-panel.tsx';
+import { ProofPanel } from './proof-panel.tsx';
 import { Stage, type StageHandle } from './stage.tsx';
 import { useViewerKeys } from './use-viewer-keys.ts';
 import { StepButton, ViewerBar } from './viewer-bar.tsx';
@@ -34,6 +36,8 @@ export function ProofViewer({ data, at }: Props) {
   const said = marksOf(marks, proof.id);
   const place = places.get(proof.id);
   const [surround, setSurround] = useSurround('viewer');
+  const [guides, setGuides] = useGuides();
+  const [told, setTold] = useState('');
   const [isFull, setFull] = useState(false);
   const [asking, setAsking] = useState(false);
   const stage = useRef<StageHandle>(null);
@@ -41,6 +45,10 @@ export function ProofViewer({ data, at }: Props) {
 
   useEffect(() => noteLookedAt(sheet.id, proof.number), [sheet.id, proof.number]);
 
+  const changeGuides = (next: Guides) => {
+    setGuides(next);
+    setTold(t('guides.now', { guides: t(`guides.${next}`) }));
+  };
   const toggleMark = mark ? () => mark(proof, !said.mine) : undefined;
   useViewerKeys(
     {
@@ -51,6 +59,7 @@ export function ProofViewer({ data, at }: Props) {
       full: () => !isFull && stage.current?.toggle(),
       fit: () => stage.current?.fit(),
       surround: () => setSurround(nextSurround(surround)),
+      guides: () => changeGuides(nextGuides(guides)),
       help: () => setAsking(true),
       pan: (x, y) => stage.current?.pan(x, y),
       isFull,
@@ -70,6 +79,8 @@ export function ProofViewer({ data, at }: Props) {
         place={place}
         surround={surround}
         onSurround={setSurround}
+        guides={guides}
+        onGuides={changeGuides}
         isFull={isFull}
         onFull={() => stage.current?.toggle()}
         onKeys={() => setAsking(true)}
@@ -81,6 +92,9 @@ export function ProofViewer({ data, at }: Props) {
           <p role="status" className="sr-only">
             {name}
           </p>
+          <p role="status" className="sr-only">
+            {told}
+          </p>
           <div className="relative min-h-0 flex-1 md:mx-16 md:mb-5">
             <Stage
               key={proof.id}
@@ -88,6 +102,7 @@ export function ProofViewer({ data, at }: Props) {
               picture={{ ...proof, medium: proof.pictures?.medium ?? null, large: proof.pictures?.large ?? null }}
               alt={name}
               mark={place ? <Keystone number={place.number} extra={place.extra} size="large" silent /> : undefined}
+              over={<GuideLines guides={guides} />}
               onSwipe={(to) => step(to === 'next' ? 1 : -1)}
               onFull={setFull}
               onFailed={data.renewPictures}
@@ -114,7 +129,7 @@ export function ProofViewer({ data, at }: Props) {
           className="flex-1 bg-paper px-5 py-4 lg:overflow-y-auto lg:border-l lg:border-ink"
           data-surround="paper"
         >
-          <ShotPanel proof={proof} askedFor={storey?.askedFor ?? ''} people={people} me={sheet.me.accountId} />
+          <ProofPanel proof={proof} uses={sheet.uses} askedFor={storey?.askedFor ?? ''} people={people} me={sheet.me.accountId} />
         </aside>
       </main>
       <KeysDialog sheet={sheet} open={asking} onClose={() => setAsking(false)} />

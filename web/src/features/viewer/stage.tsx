@@ -27,6 +27,8 @@ interface Props {
   alt: string;
   /** Hung from the picture's top edge while it is fitted. */
   mark?: ReactNode;
+  /** Drawn over the picture, at any scale. */
+  over?: ReactNode;
   onSwipe: (to: 'next' | 'previous') => void;
   onFull: (isFull: boolean) => void;
   onFailed: () => void;
@@ -52,7 +54,7 @@ function useSize(element: { current: HTMLElement | null }): Size {
 }
 
 /** One picture on its surround: fitted, or at 100 % with panning; swiping leads to its neighbours. Give it a `key` a picture. */
-export function Stage({ picture, alt, mark, onSwipe, onFull, onFailed, onShown, ref }: Props) {
+export function Stage({ picture, alt, mark, over, onSwipe, onFull, onFailed, onShown, ref }: Props) {
   const stage = useRef<HTMLDivElement>(null);
   const size = useSize(stage);
   const large = derivativeSize(picture);
@@ -96,6 +98,7 @@ export function Stage({ picture, alt, mark, onSwipe, onFull, onFailed, onShown, 
             onError={onFailed}
           />
         ) : null}
+        {over}
         {mark && !isFull ? <div className="pointer-events-none absolute top-0 left-1/2 -translate-x-1/2">{mark}</div> : null}
       </div>
     </div>

@@ -8,6 +8,7 @@ export interface ViewerActions {
   full: () => void;
   fit: () => void;
   surround: () => void;
+  guides: () => void;
   help: () => void;
   /** Moves a zoomed picture; the direction in which one wants to look. */
   pan: (x: number, y: number) => void;
@@ -38,6 +39,7 @@ function actionOf(event: KeyboardEvent, actions: ViewerActions, characters: bool
     '=': actions.full,
     '-': actions.fit,
     s: actions.surround,
+    g: actions.guides,
     '?': actions.help,
   };
   return always[event.key] ?? (characters ? single[event.key.toLowerCase()] : undefined);

@@ -8,6 +8,8 @@ import { MarkButton } from '../sheets-guest/mark-button.tsx';
 import { writeNumber } from '../sheets-guest/name-of-proof.ts';
 import { SurroundMenu } from '../sheets-guest/surround-menu.tsx';
 import type { Surround } from '../sheets-guest/surround.ts';
+import { GuidesMenu } from './guides-menu.tsx';
+import type { Guides } from './guides.ts';
 
 interface Props {
   sheet: GuestSheet;
@@ -17,6 +19,8 @@ interface Props {
   place: PlaceOfPick | undefined;
   surround: Surround;
   onSurround: (surround: Surround) => void;
+  guides: Guides;
+  onGuides: (guides: Guides) => void;
   isFull: boolean;
   onFull: () => void;
   onKeys: () => void;
@@ -26,7 +30,7 @@ interface Props {
 
 /** Above the picture: the way back, which proof this is, and what can be done with it. */
 export function ViewerBar(props: Props) {
-  const { sheet, proof, view, marks, place, surround, onSurround, isFull, onFull, onKeys, onClose, onMark } = props;
+  const { sheet, proof, view, marks, place, surround, onSurround, guides, onGuides, isFull, onFull, onKeys, onClose, onMark } = props;
   const { t } = useTranslation();
   return (
     <header className="flex flex-wrap items-center justify-between gap-x-4 gap-y-2 px-4 py-3 md:flex-nowrap">
@@ -42,6 +46,7 @@ export function ViewerBar(props: Props) {
       </div>
       <div className="flex shrink-0 items-center gap-2">
         <SurroundMenu surround={surround} onChoose={onSurround} />
+        <GuidesMenu guides={guides} onChoose={onGuides} />
         <Button size="small" aria-pressed={isFull} onClick={onFull}>
           {t(isFull ? 'viewer.fit' : 'viewer.full')}
         </Button>
