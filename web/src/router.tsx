@@ -33,6 +33,8 @@ const studioPages: RouteObject[] = [
       { path: 'account', lazy: () => import('./pages/studio/settings/account-page.tsx') },
       { path: 'team', lazy: () => import('./pages/studio/settings/team-page.tsx') },
       { path: 'watermark', lazy: () => import('./pages/studio/settings/watermark-page.tsx') },
+      { path: 'checks', lazy: () => import('./pages/studio/settings/checks-page.tsx') },
+      { path: 'uses', lazy: () => import('./pages/studio/settings/uses-page.tsx') },
       { path: 'mail', lazy: () => import('./pages/studio/settings/mail-page.tsx') },
       { path: 'storage', lazy: () => import('./pages/studio/settings/storage-page.tsx') },
     ],

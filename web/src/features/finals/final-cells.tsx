@@ -1,9 +1,12 @@
+import { useQuery } from '@tanstack/react-query';
 import { useState } from 'react';
 import type { FinalItem, FinalList, FinalVersionItem } from '../../../../api/contract/finals.ts';
 import { formatTime } from '../../lib/dates.ts';
 import { Button } from '../../ui/button.tsx';
 import { Dialog } from '../../ui/dialog.tsx';
 import { Menu } from '../../ui/menu.tsx';
+import { fitLine } from '../uses/fit-words.ts';
+import { usesQuery } from '../uses/queries.ts';
 import { ChangeFinalDialog } from './change-final-dialog.tsx';
 import { sizeWords } from './final-words.ts';
 import { useFinalDeed } from './mutations.ts';
@@ -26,9 +29,17 @@ export function FinalCell({ final, besideProof = false }: { final: FinalItem; be
           {formatTime(newest.createdAt)}
           {newest.pictures ? '' : ' · pictures being made'}
         </span>
+        <Fit {...newest} />
       </span>
     </span>
   );
+}
+
+/** What its pixels are enough for. */
+function Fit({ width, height }: FinalVersionItem) {
+  const uses = useQuery(usesQuery).data?.uses ?? [];
+  const words = width > 0 ? fitLine({ width, height }, uses) : '';
+  return words ? <span className="block text-13 text-mute">{words}</span> : null;
 }
 
 /** Whether the newest version went out, and with which delivery. */

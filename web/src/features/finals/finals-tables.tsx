@@ -49,7 +49,10 @@ function ViewCell({ pick, title }: { pick: PickForFinal; title: FinalItem | unde
   return (
     <>
       <span className="block min-w-28">{title?.ownTitle ? title.title : (pick.viewTitle ?? 'Also made')}</span>
-      <span className="block text-13 break-all text-mute">{pick.frameName}</span>
+      <span className="block text-13 break-all text-mute">
+        {pick.frameName}
+        {pick.exposures > 1 ? ` · ${pick.exposures} exposures` : ''}
+      </span>
     </>
   );
 }

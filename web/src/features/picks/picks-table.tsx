@@ -37,9 +37,16 @@ function columnsOf(commissionId: string, changed: boolean): Column<PickRow>[] {
       key: 'frame',
       words: 'Frame',
       cell: (pick) => (
-        <Link to={`/commissions/${commissionId}/frames/${pick.frameId}`} className="break-all underline-offset-4 hover:underline">
-          {pick.frameName}
-        </Link>
+        <>
+          <Link to={`/commissions/${commissionId}/frames/${pick.frameId}`} className="break-all underline-offset-4 hover:underline">
+            {pick.frameName}
+          </Link>
+          {pick.frames.length > 1 ? (
+            <span className="block text-13 text-mute" title={pick.frames.map((frame) => frame.name).join(', ')}>
+              {pick.frames.length} exposures
+            </span>
+          ) : null}
+        </>
       ),
     },
     {

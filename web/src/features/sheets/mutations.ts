@@ -4,6 +4,7 @@ import type { ChangeSheet, InviteGuests, ReopenSheet, StudioSheet } from '../../
 import { api } from '../../lib/api.ts';
 import { showNotice } from '../../ui/notices.tsx';
 import { commissionKeys } from '../commissions/queries.ts';
+import { frameKeys } from '../frames/queries.ts';
 import { sheetKeys } from './queries.ts';
 
 /** What can be done to a sheet, each with the request that does it. Every answer is the sheet as it then is. */
@@ -17,10 +18,11 @@ export type SheetDeed =
   | { what: 'remind'; words: string }
   | { what: 'send-again'; guestId: string; words: string }
   | { what: 'withdraw-guest' | 'restore-guest'; guestId: string }
+  | { what: 'show-bracket'; bracketId: string; shows: 'merged' | 'lead' }
   | { what: 'withdraw' | 'restore' }
   | { what: 'reopen'; input: ReopenSheet };
 
-function request(sheetId: string, deed: SheetDeed): Promise<StudioSheet> {
+async function request(sheetId: string, deed: SheetDeed): Promise<StudioSheet> {
   const at = `/api/sheets/${sheetId}`;
   switch (deed.what) {
     case 'change':
@@ -43,6 +45,9 @@ function request(sheetId: string, deed: SheetDeed): Promise<StudioSheet> {
       return api.post(`${at}/guests/${deed.guestId}/send-again`, { words: deed.words });
     case 'withdraw-guest':
       return api.post(`${at}/guests/${deed.guestId}/withdraw`);
+    case 'show-bracket':
+      await api.patch(`/api/brackets/${deed.bracketId}`, { shows: deed.shows });
+      return api.get(at);
     case 'restore-guest':
       return api.post(`${at}/guests/${deed.guestId}/restore`);
     default:
@@ -55,11 +60,12 @@ export function useSheetDeed(sheet: { id: string; commissionId: string }) {
   const client = useQueryClient();
   return useMutation({
     mutationFn: (deed: SheetDeed) => request(sheet.id, deed),
-    onSuccess: (changed) => {
+    onSuccess: (changed, deed) => {
       client.setQueryData(sheetKeys.one(sheet.id), changed);
       void client.invalidateQueries({ queryKey: sheetKeys.lists(sheet.commissionId) });
       void client.invalidateQueries({ queryKey: sheetKeys.preview(sheet.id) });
       void client.invalidateQueries({ queryKey: commissionKeys.one(sheet.commissionId) });
+      if (deed.what === 'show-bracket') void client.invalidateQueries({ queryKey: frameKeys.brackets(sheet.commissionId) });
     },
     // Somebody changed it meanwhile: show the newer state below what was typed.
     onError: () => void client.invalidateQueries({ queryKey: sheetKeys.one(sheet.id) }),

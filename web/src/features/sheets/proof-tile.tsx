@@ -14,13 +14,15 @@ interface Props {
   onEarlier: (() => void) | undefined;
   onLater: (() => void) | undefined;
   onDropBefore: (proofId: string) => void;
+  /** Shows a bracket's merged picture or its lead frame; undefined where that cannot be changed. */
+  onShow: ((shows: 'merged' | 'lead') => void) | undefined;
 }
 
 const HEIGHT = 148;
 const DRAGGED = 'application/x-oriel-proof';
 
 /** One proof on the studio's board. It is moved by its two buttons, or by dragging it onto another. */
-export function ProofTile({ proof, view, editable, chosen, onChoose, onEarlier, onLater, onDropBefore }: Props) {
+export function ProofTile({ proof, view, editable, chosen, onChoose, onEarlier, onLater, onDropBefore, onShow }: Props) {
   const [over, setOver] = useState(false);
   const width = Math.round((HEIGHT * proof.width) / proof.height);
   const name = `Proof ${proof.number}, ${view}, ${proof.frameName}`;
@@ -59,6 +61,7 @@ export function ProofTile({ proof, view, editable, chosen, onChoose, onEarlier, 
       <div className="flex items-start justify-between gap-1 pt-1 text-13">
         <p className="min-w-0 py-1">
           <b>{String(proof.number).padStart(2, '0')}</b> <span className="break-all text-mute">{proof.frameName}</span>
+          {proof.exposures ? <Exposures proof={proof} onShow={onShow} /> : null}
           {proof.ready ? null : <span className="block text-mute">watermark being laid</span>}
           {proof.markedBy.length > 0 ? (
             <span className="block text-mute">
@@ -74,6 +77,26 @@ export function ProofTile({ proof, view, editable, chosen, onChoose, onEarlier, 
         ) : null}
       </div>
     </li>
+  );
+}
+
+/** What a bracket's proof is made of, and the way to show its other picture. */
+function Exposures({ proof, onShow }: Pick<Props, 'proof' | 'onShow'>) {
+  const merged = proof.exposures?.merged;
+  return (
+    <span className="block">
+      {proof.exposures?.says}
+      {onShow ? (
+        <button
+          type="button"
+          className="target block text-left underline underline-offset-4 hover:no-underline"
+          aria-label={`Show ${merged ? 'the lead frame' : 'the merged picture'} as proof ${proof.number}`}
+          onClick={() => onShow(merged ? 'lead' : 'merged')}
+        >
+          {merged ? 'Show the lead frame' : 'Show it merged'}
+        </button>
+      ) : null}
+    </span>
   );
 }
 

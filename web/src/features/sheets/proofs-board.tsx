@@ -80,6 +80,7 @@ export function ProofsBoard({ sheet, views }: { sheet: StudioSheet; views: Views
                 onLater={
                   at < storey.proofs.length - 1 ? () => move(proof.id, storey.proofs[at + 2]?.id ?? nextStorey(storeys, storey)) : undefined
                 }
+                onShow={showerOf(proof, (bracketId, shows) => deed.mutate({ what: 'show-bracket', bracketId, shows }), sheet.can.edit)}
                 onDropBefore={(id) => {
                   if (storey.proofs.some((each) => each.id === id)) move(id, proof.id);
                 }}
@@ -90,6 +91,11 @@ export function ProofsBoard({ sheet, views }: { sheet: StudioSheet; views: Views
       ))}
     </section>
   );
+}
+
+/** Changes what a bracket's proof shows; undefined for a single frame, and where the sheet cannot be changed. */
+function showerOf({ bracketId }: StudioProof, show: (bracketId: string, shows: 'merged' | 'lead') => void, editable: boolean) {
+  return bracketId !== null && editable ? (shows: 'merged' | 'lead') => show(bracketId, shows) : undefined;
 }
 
 /** The proof behind the last one of a storey, which the last one must come before. */

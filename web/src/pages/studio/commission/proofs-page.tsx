@@ -23,7 +23,7 @@ export function Component() {
   const client = useQueryClient();
   useCommissionChanges(commission.id, (change) => {
     const what = 'what' in change ? change.what : 'missed';
-    if (['sheet', 'picks', 'missed'].includes(String(what))) void client.invalidateQueries({ queryKey: ['sheets'] });
+    if (['sheet', 'picks', 'brackets-changed', 'missed'].includes(String(what))) void client.invalidateQueries({ queryKey: ['sheets'] });
   });
   return (
     <>

@@ -7,6 +7,8 @@ const TABS = [
   { to: 'account', words: 'Your account' },
   { to: 'team', words: 'Team', owner: true },
   { to: 'watermark', words: 'Watermark' },
+  { to: 'checks', words: 'Frame checks' },
+  { to: 'uses', words: 'Uses' },
   { to: 'mail', words: 'Mail' },
   { to: 'storage', words: 'Storage' },
 ];
