@@ -16,6 +16,12 @@ const LEAST_LENGTH = 24;
 /** How far a point may lie off a straight edge. Pixels. */
 const STRAY = 0.8;
 
+/**
+ * An arc looks straight in short pieces, and many of them would speak for a turn. What bends by more than this many pixels between its
+ * middle and its ends, on a circle smaller than this, is dropped; what a lens bends lies on far larger circles.
+ */
+const BEND = { pixels: 0.08, radius: 3000 };
+
 interface Fit {
   offset: number;
   slope: number;
@@ -46,12 +52,26 @@ function fitLine({ rows, places }: EdgeTrack, from: number, to: number): Fit {
   return fit;
 }
 
+/** Whether the points bend to one side: the mean of the middle third against the outer two. */
+function bends({ rows, places }: EdgeTrack, from: number, to: number, { offset, slope }: Fit): boolean {
+  const third = Math.floor((to - from) / 3);
+  let [middle, outer] = [0, 0];
+  for (let i = from; i < to; i++) {
+    const off = places[i]! - offset - slope * rows[i]!;
+    if (i >= from + third && i < to - third) middle += off / (to - from - 2 * third);
+    else outer += off / (2 * third);
+  }
+  // For an arc of rise s the two differ by 4/9 s.
+  const rise = (Math.abs(middle - outer) * 9) / 4;
+  return Math.abs(middle - outer) > BEND.pixels && (to - from) ** 2 < 8 * rise * BEND.radius;
+}
+
 /** Cuts a track where it bends until every piece is straight; pieces that become too short are dropped. */
 function straightPieces(track: EdgeTrack, from: number, to: number, found: [Fit, number, number][]): void {
   if (to - from < LEAST_LENGTH) return;
   const fit = fitLine(track, from, to);
   if (fit.stray <= STRAY) {
-    found.push([fit, track.rows[from]!, track.rows[to - 1]!]);
+    if (!bends(track, from, to, fit)) found.push([fit, track.rows[from]!, track.rows[to - 1]!]);
     return;
   }
   // At an end the bend is that point alone.

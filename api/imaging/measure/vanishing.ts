@@ -118,7 +118,7 @@ function supportOf(samples: readonly Sample[], family: Family): Support {
   const mean = w > 0 ? x / w : 0;
   const variance = w > 0 ? xx / w - mean ** 2 : 0;
   // An edge of 60 px is known to about a tenth of a degree; the middle of edges far from the picture's middle says less about it.
-  const error = w > 0 ? 0.1 * Math.sqrt(60 / w) * Math.sqrt(1 + mean ** 2 / (variance + ONE_PLACE)) : Infinity;
+  const error = w > 0 ? 0.1 * Math.sqrt(60 / w) * Math.sqrt(1 + mean ** 2 / (variance + 1e-4)) : Infinity;
   return { agreeing, against: rivals - agreeing, error };
 }
 
