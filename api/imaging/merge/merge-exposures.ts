@@ -1,6 +1,6 @@
 import type { RawPicture } from '../upright.ts';
-import { alignExposures } from './align/align-exposures.ts';
-import { greyOf, greyScale } from './align/grey-pyramid.ts';
+import { alignExposures, type GreyExposure } from './align/align-exposures.ts';
+import { greyOf, greyScale, type Grey } from './align/grey-pyramid.ts';
 import { referenceOf, trustMap } from './align/trust-map.ts';
 import { PAPER, type FusionConventions } from './fusion/conventions.ts';
 import { fuse } from './fusion/fuse.ts';
@@ -45,9 +45,14 @@ function isGrey({ picture: { data, channels } }: Exposure): boolean {
 
 const sameSize = (one: RawPicture, other: RawPicture) => one.width === other.width && one.height === other.height;
 
+function findable({ picture, ev }: Exposure, index: number): GreyExposure {
+  let fine: Grey | undefined;
+  return { index, ev, scale: greyScale(picture), grey: greyOf(picture), fine: () => (fine ??= greyOf(picture, 1)) };
+}
+
 /** How the frames of one size lie over the lead frame, and how far each is believed; none for one that cannot be laid over it. */
 function place(exposures: Exposure[], indexes: number[], lead: number, { align = true, deghost = true }: MergeOptions) {
-  const greys = indexes.map((index) => ({ index, ev: exposures[index]!.ev, grey: greyOf(exposures[index]!.picture) }));
+  const greys = indexes.map((index) => findable(exposures[index]!, index));
   const first = greys.find(({ index }) => index === lead)!;
   const scale = greyScale(exposures[lead]!.picture);
   const shifts = align ? alignExposures(greys, first) : new Map(indexes.map((index) => [index, { x: 0, y: 0 }]));

@@ -1,24 +1,22 @@
-import { alignPair } from './align-pair.ts';
-import type { Grey } from './grey-pyramid.ts';
+import { alignPair, type Findable } from './align-pair.ts';
 import type { Shift } from './threshold-bitmaps.ts';
 
-/** A frame's grey copy, and where it stands among the exposures. */
-export interface GreyExposure {
+/** A frame, and where it stands among the exposures. */
+export interface GreyExposure extends Findable {
   index: number;
   ev: number;
-  grey: Grey;
 }
 
 /** Frames already laid over the lead frame, the last one next in exposure. */
 interface Laid {
-  grey: Grey;
+  frame: Findable;
   shift: Shift;
 }
 
 /** Lays a frame over the nearest one that has something to say about it. */
-function layOver(laid: Laid[], grey: Grey): Shift | null {
+function layOver(laid: Laid[], frame: Findable): Shift | null {
   for (const reference of [...laid].reverse()) {
-    const verdict = alignPair(reference.grey, grey);
+    const verdict = alignPair(reference.frame, frame);
     if (verdict.is === 'moved') return null;
     if (verdict.is === 'aligned') return { x: reference.shift.x + verdict.shift.x, y: reference.shift.y + verdict.shift.y };
   }
@@ -37,11 +35,11 @@ export function alignExposures(exposures: GreyExposure[], lead: GreyExposure): M
   const darker = others.filter(({ ev }) => ev <= lead.ev).sort((a, b) => b.ev - a.ev);
   const brighter = others.filter(({ ev }) => ev > lead.ev).sort((a, b) => a.ev - b.ev);
   for (const side of [darker, brighter]) {
-    const laid: Laid[] = [{ grey: lead.grey, shift: { x: 0, y: 0 } }];
-    for (const { index, grey } of side) {
-      const shift = layOver(laid, grey);
-      if (shift) laid.push({ grey, shift });
-      shifts.set(index, shift);
+    const laid: Laid[] = [{ frame: lead, shift: { x: 0, y: 0 } }];
+    for (const frame of side) {
+      const shift = layOver(laid, frame);
+      if (shift) laid.push({ frame, shift });
+      shifts.set(frame.index, shift);
     }
   }
   return shifts;

@@ -7,13 +7,13 @@ import { bitmapShift, type Shift } from './threshold-bitmaps.ts';
 export type Verdict = { is: 'aligned'; shift: Shift } | { is: 'moved' } | { is: 'unknown' };
 
 /** A tile is looked for so far around the place where it should be. */
-const REACH = 5;
+const REACH = 8;
 /** Below this a tile was not found again. */
 const ALIKE = 0.6;
 /** A tile that shows so much must be found again; a fainter one may drown in noise. */
 const STRONG_TEXTURE = 6;
 /** Tiles agree that lie so near to their median. */
-const AGREEING = 0.8;
+const AGREEING = 1.2;
 /** So many tiles say something about a picture. */
 const LEAST_TILES = 4;
 /** So many of them must agree; people, trees and water may move in the others. */
@@ -65,17 +65,41 @@ function vote(first: Grey, second: Grey, near: Shift): Vote {
   return { tiles: found.length, agreeing, shift };
 }
 
+/** Once more from where the first vote led: tiles that lay beyond reach may come into it. */
+function voteAgain(first: Grey, second: Grey, before: Vote): Vote {
+  const after = vote(first, second, { x: Math.round(before.shift.x), y: Math.round(before.shift.y) });
+  return after.agreeing > before.agreeing ? after : before;
+}
+
+/** A frame as movement is looked for in it. */
+export interface Findable {
+  grey: Grey;
+  /** The same, pixel for pixel, and how many of its pixels make one of `grey`. */
+  fine: () => Grey;
+  scale: number;
+}
+
+/** Halves of pixels are lost in a grey copy, so what is moved at all is measured again on the pixels themselves. */
+function refined(first: Findable, second: Findable, found: Shift): Shift {
+  const still = Math.abs(found.x) < 0.2 && Math.abs(found.y) < 0.2;
+  if (first.scale === 1 || still) return found;
+  const near = { x: Math.round(found.x * first.scale), y: Math.round(found.y * first.scale) };
+  const { tiles, agreeing, shift } = vote(first.fine(), second.fine(), near);
+  return tiles >= LEAST_TILES && agreeing >= MAJORITY * tiles ? { x: shift.x / first.scale, y: shift.y / first.scale } : found;
+}
+
 /**
  * Says how two exposures of one scene lie to each other, in pixels of the greys and parts of them. Threshold bitmaps propose a shift; a camera on a
  * tripod proposes none; the tiles that show something in both decide, over pixels that are neither black nor white in either. Where hardly any tile
  * does, nothing is known: a frame that is nearly white is no evidence that it moved.
  */
-export function alignPair(first: Grey, second: Grey): Verdict {
-  const proposed = bitmapShift(halfOf(first), halfOf(second));
+export function alignPair(first: Findable, second: Findable): Verdict {
+  const [one, two] = [first.grey, second.grey];
+  const proposed = bitmapShift(halfOf(one), halfOf(two));
   const votes = [{ x: 0, y: 0 }];
   if (proposed && (proposed.x !== 0 || proposed.y !== 0)) votes.push({ x: 2 * proposed.x, y: 2 * proposed.y });
-  const counted = votes.map((near) => vote(first, second, near));
-  const best = counted.reduce((one, other) => (other.agreeing > one.agreeing ? other : one));
+  const counted = votes.map((near) => voteAgain(one, two, vote(one, two, near)));
+  const best = counted.reduce((before, after) => (after.agreeing > before.agreeing ? after : before));
   if (best.tiles < LEAST_TILES) return { is: 'unknown' };
-  return best.agreeing >= MAJORITY * best.tiles ? { is: 'aligned', shift: best.shift } : { is: 'moved' };
+  return best.agreeing >= MAJORITY * best.tiles ? { is: 'aligned', shift: refined(first, second, best.shift) } : { is: 'moved' };
 }

@@ -15,8 +15,7 @@ export const greyScale = ({ width, height }: { width: number; height: number }) 
   Math.max(1, Math.ceil(Math.max(width, height) / LONGEST));
 
 /** A grey copy for looking for movement: red + 2 green + blue over whole squares of pixels. */
-export function greyOf({ data, width, height, channels }: RawPicture): Grey {
-  const scale = greyScale({ width, height });
+export function greyOf({ data, width, height, channels }: RawPicture, scale = greyScale({ width, height })): Grey {
   const small: Grey = { width: Math.floor(width / scale), height: Math.floor(height / scale), values: new Uint8Array() };
   small.values = new Uint8Array(small.width * small.height);
   const sums = new Uint32Array(small.width);

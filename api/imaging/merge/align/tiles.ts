@@ -7,7 +7,7 @@ import type { Shift } from './threshold-bitmaps.ts';
 export interface Tile {
   x: number;
   y: number;
-  /** Mean difference of neighbours, the lesser of both ways, in both pictures at least. */
+  /** Difference of neighbours in the direction that shows least, in both pictures at least. */
   texture: number;
 }
 
@@ -18,24 +18,31 @@ const [BLACK, WHITE] = [6, 249];
 /** So much of a tile must be neither in either picture. */
 const USABLE = 0.6;
 /** Less than this may be noise. */
-const LEAST_TEXTURE = 2.5;
+const LEAST_TEXTURE = 1.2;
 
 const usable = (value: number) => value > BLACK && value < WHITE;
 
-/** Differences of neighbours within a tile, along and down; none where too much is black or white. */
+/**
+ * Differences of neighbours in the direction in which a tile shows least, so that one edge alone, whatever its slope, is nothing: the lesser eigenvalue
+ * of the structure tensor, as Shi and Tomasi choose what to track (Good Features to Track, CVPR 1994). None where too much is black or white.
+ */
 function textureOf({ values, width }: Grey, left: number, top: number): number {
-  let [along, down, pixels] = [0, 0, 0];
+  let [along, down, both, pixels] = [0, 0, 0, 0];
   // Every other pixel is enough to tell.
   for (let y = top; y < top + TILE - 1; y += 2) {
     for (let x = left, at = y * width + left; x < left + TILE - 1; x += 2, at += 2) {
       const value = values[at]!;
       if (!usable(value)) continue;
       pixels++;
-      along += Math.abs(values[at + 1]! - value);
-      down += Math.abs(values[at + width]! - value);
+      const [right, below] = [values[at + 1]! - value, values[at + width]! - value];
+      along += right * right;
+      down += below * below;
+      both += right * below;
     }
   }
-  return pixels < (USABLE * TILE * TILE) / 4 ? 0 : Math.min(along, down) / pixels;
+  if (pixels < (USABLE * TILE * TILE) / 4) return 0;
+  const weakest = (along + down - Math.sqrt((along - down) ** 2 + 4 * both ** 2)) / 2;
+  return Math.sqrt(Math.max(0, weakest) / pixels);
 }
 
 /** The tile of each part of the picture that shows most in both pictures, the second moved by `shift`. */
