@@ -3,6 +3,7 @@ import { parseArgs } from 'node:util';
 import { archive } from './archive.ts';
 import type { Bench } from './figures.ts';
 import { printTable } from './figures.ts';
+import { fuse } from './fuse.ts';
 import { ingest } from './ingest.ts';
 import { marks } from './marks.ts';
 import { page } from './page.ts';
@@ -10,7 +11,7 @@ import { sheet } from './sheet.ts';
 
 process.env.AWS_SDK_JS_NODE_VERSION_SUPPORT_WARNING_DISABLED = 'true';
 
-const benches: Record<string, Bench> = { ingest, archive, sheet, marks, page };
+const benches: Record<string, Bench> = { ingest, archive, sheet, marks, page, fuse };
 
 const { values, positionals } = parseArgs({
   allowPositionals: true,
