@@ -5,17 +5,19 @@ import { Button } from '../../ui/button.tsx';
 import { Dialog } from '../../ui/dialog.tsx';
 import { AnchorButton } from '../../ui/link-button.tsx';
 import { sizeWords } from '../finals/final-words.ts';
+import { FitForUse } from '../viewer/fit-for-use.tsx';
 
 interface Props {
   files: GuestDelivery['files'];
+  uses: GuestDelivery['uses'];
   /** Index of the picture that is looked at. */
   at: number;
   onMove: (at: number) => void;
   onClose: () => void;
 }
 
-/** One picture large, on mid grey, with its checksum; arrows lead to the others. */
-export function GuestLook({ files, at, onMove, onClose }: Props) {
+/** One picture large, on mid grey, with its checksum and what it is good for; arrows lead to the others. */
+export function GuestLook({ files, uses, at, onMove, onClose }: Props) {
   const { t } = useTranslation();
   const file = files[at];
   const step = (by: number) => onMove((at + by + files.length) % files.length);
@@ -50,6 +52,9 @@ export function GuestLook({ files, at, onMove, onClose }: Props) {
         <dt className="text-mute">SHA-256</dt>
         <dd className="break-all">{file.sha256}</dd>
       </dl>
+      <div className="mt-4 text-13">
+        <FitForUse picture={file} uses={uses} />
+      </div>
       <p className="sr-only" aria-live="polite">
         {t('delivery.place', { at: at + 1, of: files.length, title: file.title })}
       </p>

@@ -93,7 +93,9 @@ function Content({ delivery, onPictureFailed }: { delivery: GuestDelivery; onPic
           )}
         </JustifiedRows>
       </section>
-      {looking === null ? null : <GuestLook files={delivery.files} at={looking} onMove={setLooking} onClose={() => setLooking(null)} />}
+      {looking === null ? null : (
+        <GuestLook files={delivery.files} uses={delivery.uses} at={looking} onMove={setLooking} onClose={() => setLooking(null)} />
+      )}
     </div>
   );
 }
