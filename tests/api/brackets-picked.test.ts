@@ -76,9 +76,11 @@ it('a pick of a bracket brings all its frames, written down once and for all', a
   await expect(house.ctx.knex('picks').update({ frameIds: [] })).rejects.toThrow(/never changed/);
   const { body } = await get('');
   expect(body).toMatchObject({ pickCount: 2, originals: 4 });
-  const rows = body.picks as { frameId: string; frames: { name: string }[]; sizeBytes: number }[];
+  const rows = body.picks as { frameId: string; frames: { name: string }[]; sizeBytes: number; picture: string }[];
   const row = rows.find(({ frameId }) => frameId === exposures[0]?.id);
   expect(row?.frames.map(({ name }) => name)).toEqual(darkestFirst());
+  // What the client saw: the merged picture, not a frame.
+  expect(row?.picture).toContain('/pictures/brackets/');
   expect(row?.sizeBytes).toBe(exposures.reduce((sum, { sizeBytes }) => sum + sizeBytes, 0));
   expect(body.originalsBytes).toBe(rows.reduce((sum, { sizeBytes }) => sum + sizeBytes, 0));
 });

@@ -5,8 +5,10 @@ import { problem } from '../../middleware/problem.ts';
 import { Commission } from '../../models/Commission.ts';
 import type { Frame } from '../../models/Frame.ts';
 import { PickList } from '../../models/PickList.ts';
+import { Proof } from '../../models/Proof.ts';
 import { pictureAddress } from '../../services/picture-address.ts';
-import { frameKey } from '../../services/storage-keys.ts';
+import { type ShownPicture, shownPicture } from '../brackets/shown-picture.ts';
+import type { ProofWithPicture } from '../sheets/presenter.ts';
 import { framesOfPick, framesOfPicks } from './picked-frames.ts';
 
 type ListRow = PickList & { sheetNumber: number; latest: boolean; originalsBytes: number; originals: number };
@@ -62,12 +64,16 @@ export async function loadPickList(ctx: Context, scope: StudioScope, pickListId:
   const before = list.number > 1 ? await picksOf(ctx, scope, { sheetId: list.sheetId, number: list.number - 1 }) : null;
   const picks = await picksOf(ctx, scope, { sheetId: list.sheetId, number: list.number });
   const frames = await framesOfPicks(scope, picks);
+  const pictures = await picturesOf(scope, picks);
   const had = before && new Set(before.map((pick) => pick.proofId));
   const has = new Set(picks.map((pick) => pick.proofId));
   return {
     ...presentLine(list),
     picks: await Promise.all(
-      picks.map(async (pick) => ({ ...(await presentPick(ctx, pick, frames)), change: had && (had.has(pick.proofId) ? 'kept' : 'added') })),
+      picks.map(async (pick) => ({
+        ...(await presentPick(ctx, pick, frames, pictures)),
+        change: had && (had.has(pick.proofId) ? 'kept' : 'added'),
+      })),
     ),
     dropped: (before ?? [])
       .filter((pick) => !has.has(pick.proofId))
@@ -78,7 +84,6 @@ export async function loadPickList(ctx: Context, scope: StudioScope, pickListId:
 interface FullPick {
   id: string;
   studioId: string;
-  commissionId: string;
   number: number;
   proofId: string;
   proofNumber: number;
@@ -88,10 +93,6 @@ interface FullPick {
   viewTitle: string | null;
   extra: boolean;
   markedBy: PickRow['markedBy'];
-  width: number;
-  height: number;
-  placeholder: string | null;
-  recipe: number | null;
   finalId: string | null;
   versions: number;
 }
@@ -100,24 +101,33 @@ async function picksOf(ctx: Context, scope: StudioScope, list: { sheetId: string
   return ctx
     .knex('picks')
     .join('pickLists', 'pickLists.id', 'picks.pickListId')
-    .join('frames', 'frames.id', 'picks.frameId')
     .joinRaw('left join finals on finals.frame_id = picks.frame_id and finals.deleted_at is null')
     .where({ 'pickLists.sheetId': list.sheetId, 'pickLists.number': list.number, 'picks.studioId': scope.studioId })
     .orderBy('picks.number')
     .select(
       'picks.*',
-      'frames.commissionId',
-      'frames.width',
-      'frames.height',
-      'frames.placeholder',
-      'frames.recipe',
       'finals.id as finalId',
       ctx.knex.raw('(select count(*)::int from final_versions v where v.final_id = finals.id and v.deleted_at is null) as versions'),
     );
 }
 
-async function presentPick(ctx: Context, pick: FullPick, frames: Map<string, Frame>): Promise<Omit<PickRow, 'change'>> {
+/** What the client saw of each pick, by its proof. */
+async function picturesOf(scope: StudioScope, picks: readonly FullPick[]): Promise<Map<string, ShownPicture>> {
+  const proofs = (await Proof.within(scope)
+    .findByIds(picks.map(({ proofId }) => proofId))
+    .withGraphFetched('[frame, bracket]')) as ProofWithPicture[];
+  return new Map(proofs.map(({ id, frame, bracket }) => [id, shownPicture(frame, bracket)]));
+}
+
+async function presentPick(
+  ctx: Context,
+  pick: FullPick,
+  frames: Map<string, Frame>,
+  pictures: Map<string, ShownPicture>,
+): Promise<Omit<PickRow, 'change'>> {
   const picked = framesOfPick(pick, frames);
+  // The pick's row holds on to its proof, so that is there.
+  const shown = pictures.get(pick.proofId) as ShownPicture;
   return {
     id: pick.id,
     number: pick.number,
@@ -128,10 +138,10 @@ async function presentPick(ctx: Context, pick: FullPick, frames: Map<string, Fra
     viewTitle: pick.viewTitle,
     extra: pick.extra,
     markedBy: pick.markedBy,
-    width: pick.width,
-    height: pick.height,
-    placeholder: pick.placeholder,
-    picture: await pictureAddress(ctx, frameKey({ ...pick, id: pick.frameId }, 480)),
+    width: shown.width,
+    height: shown.height,
+    placeholder: shown.placeholder,
+    picture: await pictureAddress(ctx, shown.key(480)),
     sizeBytes: picked.reduce((sum, { sizeBytes }) => sum + sizeBytes, 0),
     final: pick.finalId ? { finalId: pick.finalId, versions: pick.versions } : null,
   };
