@@ -15,13 +15,14 @@ interface Laid {
 
 /** Lays a frame over the nearest one that has something to say about it. */
 function layOver(laid: Laid[], frame: Findable): Shift | null {
+  let moved = false;
   for (const reference of [...laid].reverse()) {
     const verdict = alignPair(reference.frame, frame);
-    if (verdict.is === 'moved') return null;
     if (verdict.is === 'aligned') return { x: reference.shift.x + verdict.shift.x, y: reference.shift.y + verdict.shift.y };
+    moved ||= verdict.is === 'moved';
   }
-  // Nothing shows that it moved, so it did as its neighbour did.
-  return laid.at(-1)?.shift ?? null;
+  // Where nothing shows that it moved, it did as its neighbour did.
+  return moved ? null : (laid.at(-1)?.shift ?? null);
 }
 
 /**

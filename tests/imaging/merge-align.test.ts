@@ -1,0 +1,129 @@
+import sharp from 'sharp';
+import { describe, expect, it } from 'vitest';
+import { mergeExposures } from '../../api/imaging/merge/merge-exposures.ts';
+import { fromRaw, toRaw } from '../../api/imaging/upright.ts';
+import { BRIDGE, expose, photographLight, SUNSET } from '../support/exposures.ts';
+
+/** The truth is how the exposures were cut out of one photograph. */
+const STOPS = [-4, -2, 0, 2, 4];
+/** Large enough that movement is looked for in a smaller copy first. */
+const size = { width: 1320, height: 880 };
+
+async function moved(file: string, shifts: [number, number][], stops = STOPS) {
+  return Promise.all(
+    stops.map(async (ev, index) => {
+      const [x, y] = shifts[index] ?? [0, 0];
+      return { ev, picture: expose(await photographLight(file, 1800, { left: 60 - x, top: 50 - y, ...size }), ev, index) };
+    }),
+  );
+}
+
+describe('frames that are moved against each other', () => {
+  it.each([
+    ['a bridge', BRIDGE],
+    ['a sunset', SUNSET],
+  ])('are found to the pixel up to 32 pixels: %s', async (_, file) => {
+    const truth: [number, number][] = [
+      [-32, 30],
+      [7, -5],
+      [0, 0],
+      [-13, 32],
+      [31, -32],
+    ];
+    // Further over, hardly anything of the bridge is not white.
+    const { shifts, leftOut } = mergeExposures(await moved(file, truth, [-4, -2, 0, 1, 2]), 2);
+    expect(leftOut).toEqual([]);
+    shifts.forEach(({ x, y }, index) => {
+      expect(Math.abs(x - (truth[index]?.[0] ?? NaN)), `x of ${index}: ${JSON.stringify(shifts)}`).toBeLessThanOrEqual(1);
+      expect(Math.abs(y - (truth[index]?.[1] ?? NaN)), `y of ${index}: ${JSON.stringify(shifts)}`).toBeLessThanOrEqual(1);
+    });
+  });
+
+  it('stay where they are on a tripod, however white or black they are', async () => {
+    const { shifts, leftOut } = mergeExposures(await moved(BRIDGE, [], [-8, -4, 0, 4, 8]), 2);
+    expect({ shifts, leftOut }).toEqual({ shifts: STOPS.map(() => ({ x: 0, y: 0 })), leftOut: [] });
+  });
+
+  it('leave no black edge', async () => {
+    const { picture } = mergeExposures(
+      await moved(
+        SUNSET,
+        [
+          [0, 0],
+          [30, 30],
+          [0, 0],
+          [-30, -30],
+        ],
+        [-2, -1, 0, 1],
+      ),
+      2,
+    );
+    const corner = await sharp(picture.data, { raw: { ...size, channels: 3 } })
+      .extract({ left: 0, top: 0, width: 30, height: 30 })
+      .stats();
+    const whole = mergeExposures(await moved(SUNSET, [], [-2, -1, 0, 1]), 2).picture;
+    const wanted = await sharp(whole.data, { raw: { ...size, channels: 3 } })
+      .extract({ left: 0, top: 0, width: 30, height: 30 })
+      .stats();
+    corner.channels.forEach(({ mean }, index) => expect(Math.abs(mean - (wanted.channels[index]?.mean ?? 0))).toBeLessThan(25));
+  });
+});
+
+describe('a frame that cannot be laid over the others', () => {
+  it('is left out and named: turned, another picture, another size', async () => {
+    const frames = await moved(BRIDGE, [], [-2, -1, 0, 1]);
+    const turned = fromRaw(frames[1]!.picture).rotate(1.2).resize(size.width, size.height, { fit: 'cover' });
+    const [other] = await moved(SUNSET, [], [1]);
+    const pictures = [frames[0]!, { ev: -1, picture: await toRaw(turned) }, frames[2]!, other!];
+    const small = { ev: 0, picture: await toRaw(fromRaw(frames[2]!.picture).resize(600)) };
+    expect(mergeExposures([...pictures, small], 2).leftOut).toEqual([
+      { index: 1, why: 'moved' },
+      { index: 3, why: 'moved' },
+      { index: 4, why: 'size' },
+    ]);
+  });
+});
+
+describe('somebody who walks through', () => {
+  /** A dark figure in front of a bright scene. */
+  function withFigure(frames: Awaited<ReturnType<typeof moved>>, index: number, left: number) {
+    const { picture } = frames[index]!;
+    for (let y = 430; y < 560; y++) picture.data.fill(12, (y * size.width + left) * 3, (y * size.width + left + 40) * 3);
+  }
+  const box = (left: number) => ({ left: left + 4, top: 434, width: 32, height: 122 });
+  async function difference(one: Buffer, two: Buffer, left: number) {
+    const cut = (data: Buffer) =>
+      sharp(data, { raw: { ...size, channels: 3 } })
+        .extract(box(left))
+        .raw()
+        .toBuffer();
+    const [first, second] = [await cut(one), await cut(two)];
+    return first.reduce((sum, value, at) => sum + Math.abs(value - (second[at] ?? 0)), 0) / first.length;
+  }
+
+  it('stands in the picture once, where the lead frame has them', async () => {
+    const clean = await moved(BRIDGE, [], [-1, 0, 1]);
+    const frames = await moved(BRIDGE, [], [-1, 0, 1]);
+    withFigure(frames, 0, 300);
+    withFigure(frames, 1, 560);
+    withFigure(frames, 2, 820);
+    const wanted = mergeExposures(clean, 1).picture.data;
+    const found = mergeExposures(frames, 1).picture.data;
+    const ghosts = mergeExposures(frames, 1, { deghost: false }).picture.data;
+    for (const left of [300, 820]) {
+      const [left_, before] = [await difference(found, wanted, left), await difference(ghosts, wanted, left)];
+      expect(before).toBeGreaterThan(15);
+      expect(left_).toBeLessThan(before / 3);
+    }
+    // The lead frame's own figure is dark throughout.
+    const own = await sharp(found, { raw: { ...size, channels: 3 } })
+      .extract(box(560))
+      .stats();
+    for (const { mean } of own.channels) expect(mean).toBeLessThan(45);
+  });
+
+  it('changes nothing where nothing moves', async () => {
+    const frames = await moved(BRIDGE, [], [-2, 0, 2]);
+    expect(mergeExposures(frames, 1).picture.data.equals(mergeExposures(frames, 1, { deghost: false }).picture.data)).toBe(true);
+  });
+});
