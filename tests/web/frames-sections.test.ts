@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { asProofsWords, bracketHeading, leftOutWords, stepWords } from '../../web/src/features/frames/bracket-words.ts';
-import { allBut, sectionsOf, type Section } from '../../web/src/features/frames/sections.ts';
+import { allBut, countGroups, sectionsOf, type Section } from '../../web/src/features/frames/sections.ts';
 import { bracket, frame, membersOf } from './frames-support.ts';
 
 const FIRST = membersOf('one', ['a0', 'a1', 'a2']);
@@ -44,6 +44,12 @@ describe('the sections of the Frames page', () => {
     const [group, ...others] = sectionsOf([...doubles, ...alone], BRACKETS, 'alike');
     expect(others).toEqual([]);
     expect(group).toMatchObject({ kind: 'alike', sharpest: { id: 'z' }, softest: { id: 'x' } });
+  });
+
+  it('are counted as they are shown: hidden frames, and of near-doubles the last one left, aside', () => {
+    const hidden = frame('h', { hidden: true, checks: [CHECK] });
+    const left = frame('l', { alike: { group: 'g', count: 2, is: null } });
+    expect(countGroups([...SHOWN, hidden, left])).toEqual({ brackets: 2, single: 3, 'to-check': 1, alike: 0 });
   });
 
   it('keep a bracket whole where one of its frames is the sharpest', () => {

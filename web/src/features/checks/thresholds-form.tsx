@@ -38,7 +38,7 @@ export function ThresholdsForm({ checks, onSave }: Props) {
         <fieldset key={title} className="border-t border-ink pt-3">
           <legend className="float-left w-full text-17 font-bold">{title}</legend>
           <p className="clear-both max-w-2xl text-mute">{words}</p>
-          <div className="grid gap-x-8 gap-y-4 pt-3 md:grid-cols-2">
+          <div className="grid items-end gap-x-8 gap-y-4 pt-3 md:grid-cols-2">
             {fields.map((field) => (
               <Threshold key={field.name} form={form} field={field} usual={checks.defaults[field.name]} fixed={fixed} />
             ))}

@@ -14,10 +14,7 @@ export function AsShot({ frame }: { frame: Frame }) {
   return (
     <div className="grid gap-x-8 md:grid-cols-2 lg:grid-cols-1">
       <Facts title="As shot">
-        <Fact
-          label="In its bracket"
-          value={frame.step === null ? null : `${stepWords(frame.step)} ${Math.abs(frame.step) === 1 ? 'stop' : 'stops'}`}
-        />
+        <Fact label="In its bracket" value={stepFact(frame.step)} />
         <Fact always label="Aperture" value={formatAperture(frame.fNumber)} />
         <Fact always label="Shutter" value={formatShutter(frame.exposureTime)} />
         <Fact always label="ISO" value={formatIso(frame.iso)?.replace('ISO ', '')} />
@@ -59,6 +56,11 @@ function Fact({ label, value, always }: { label: string; value: string | null | 
       <dd className={`min-w-0 text-right break-words ${value ? '' : 'text-mute'}`}>{value ?? UNKNOWN}</dd>
     </div>
   );
+}
+
+function stepFact(step: number | null): string | null {
+  if (step === null) return null;
+  return step === 0 ? 'the lead frame' : `${stepWords(step)} ${Math.abs(step) > 1 ? 'stops' : 'stop'}`;
 }
 
 /** The camera's wall clock, with its zone where the camera wrote one. */

@@ -1,4 +1,4 @@
-import { justify, type Proportioned } from '../../ui/justify.ts';
+import type { Proportioned } from '../../ui/justify.ts';
 
 /** How a bracket lies in a column: its proof, and its frames in lines. CSS pixels. */
 export interface BracketLayout {
@@ -19,6 +19,7 @@ export interface BracketSpace {
 
 /** Frames beside the proof are no lower than this: a caption such as "+4 31% clipped" has to fit below. */
 const LOWEST = 72;
+const LOWEST_BELOW = 64;
 const HIGHEST = 150;
 /** How much higher the proof is than its frames where these stand in one line. */
 const PROOF_TO_FRAME = 1.55;
@@ -29,7 +30,7 @@ const sum = (numbers: readonly number[]) => numbers.reduce((total, one) => total
 
 /**
  * Lays a bracket: the proof larger at the left and its frames beside it on the same foot, in one line or in two as high as the proof; where that
- * would make them too small, the frames in justified lines below. No picture is cropped.
+ * would make them too small, the frames in even lines below. No picture is cropped.
  */
 export function layBracket(proof: Proportioned, frames: readonly Proportioned[], space: BracketSpace): BracketLayout {
   const tries = [inOneLine(proof, frames, space), frames.length > 3 ? inTwoLines(proof, frames, space) : null];
@@ -61,7 +62,24 @@ function inTwoLines(proof: Proportioned, frames: readonly Proportioned[], { widt
 
 function below(proof: Proportioned, frames: readonly Proportioned[], { width, gap }: BracketSpace): BracketLayout {
   const height = Math.min(PROOF_BELOW, width / proportion(proof));
-  return { proof: sized(proof, height), beside: false, lines: justify(frames, { width, rowHeight: LOWEST * 1.3, gap }) };
+  const fits = (shapes: readonly number[]) => (width - gap * (shapes.length - 1)) / sum(shapes);
+  const shapes = frames.map(proportion);
+  // As few lines as leave the frames large enough, and as many frames in one as in the other.
+  let count = 1;
+  let parts = [shapes];
+  while (count < shapes.length && Math.min(...parts.map(fits)) < LOWEST_BELOW) parts = evenly(shapes, ++count);
+  const common = Math.min(HIGHEST, ...parts.map(fits));
+  const lines = parts.map((part, at) => ({
+    first: sum(parts.slice(0, at).map((one) => one.length)),
+    widths: part.map((shape) => shape * common),
+    height: common,
+  }));
+  return { proof: sized(proof, height), beside: false, lines };
+}
+
+function evenly(shapes: readonly number[], count: number): number[][] {
+  const size = Math.ceil(shapes.length / count);
+  return Array.from({ length: Math.ceil(shapes.length / size) }, (_, at) => shapes.slice(at * size, (at + 1) * size));
 }
 
 function sized(picture: Proportioned, height: number): { width: number; height: number } {

@@ -40,10 +40,21 @@ export function leftOutWords({ merged }: Bracket, frames: readonly FrameItem[]):
   });
 }
 
+function countPictures(frames: readonly FrameItem[]): { brackets: number; single: number } {
+  const brackets = new Set(frames.flatMap((frame) => frame.bracketId ?? [])).size;
+  return { brackets, single: frames.filter((frame) => frame.bracketId === null).length };
+}
+
+/** "1 bracket and 2 frames" */
+export function picturesWords(frames: readonly FrameItem[]): string {
+  const { brackets, single } = countPictures(frames);
+  const words = [brackets > 0 ? counted(brackets, BRACKET) : '', single > 0 ? counted(single, FRAME) : ''];
+  return words.filter(Boolean).join(' and ');
+}
+
 /** What goes onto a sheet: any frame of a bracket stands for the whole of it. "1 bracket as one proof and 2 frames". */
 export function asProofsWords(frames: readonly FrameItem[]): string {
-  const brackets = new Set(frames.flatMap((frame) => frame.bracketId ?? [])).size;
-  const single = frames.filter((frame) => frame.bracketId === null).length;
+  const { brackets, single } = countPictures(frames);
   const words = [
     brackets > 0 ? `${counted(brackets, BRACKET)} as one proof${brackets > 1 ? ' each' : ''}` : '',
     single > 0 || brackets === 0 ? counted(single, FRAME) : '',

@@ -1,14 +1,22 @@
-import { useEffect, useRef, useState } from 'react';
+import { useEffect, useRef, useState, type RefObject } from 'react';
 import { markClipped } from '../../../../api/domain/clipping.ts';
 import { clippedShares, hatchClipped, shareWords } from './clipping-hatch.ts';
 
 type Found = { address: string } & ({ highlights: number; shadows: number } | { failed: true });
 
-/** What is clipped in a picture, drawn over it, and said. The pixels are those of the picture that is looked at. */
-export function ClippingOverlay({ address }: { address: string }) {
+export interface Clipping {
+  /** To be drawn over the picture. */
+  canvas: RefObject<HTMLCanvasElement | null>;
+  /** Undefined while it is looked for. */
+  found: Found | undefined;
+}
+
+/** Looks for what is clipped in the picture at an address, in its own pixels; undefined looks for nothing. */
+export function useClipping(address: string | undefined): Clipping {
   const canvas = useRef<HTMLCanvasElement>(null);
   const [found, setFound] = useState<Found>();
   useEffect(() => {
+    if (address === undefined) return;
     const picture = new Image();
     picture.onload = () => setFound(draw(picture, canvas.current, address));
     picture.onerror = () => setFound({ address, failed: true });
@@ -18,27 +26,7 @@ export function ClippingOverlay({ address }: { address: string }) {
     };
   }, [address]);
   // What was found in another picture is neither drawn nor said.
-  const here = found?.address === address ? found : undefined;
-  return (
-    <>
-      <canvas ref={canvas} aria-hidden="true" className={`absolute inset-0 size-full ${here ? '' : 'invisible'}`} />
-      <p role="status" className="absolute right-2 bottom-2 left-2 mx-auto w-fit bg-sheet px-2 py-1 text-13 text-ink">
-        <Words found={here} />
-      </p>
-    </>
-  );
-}
-
-function Words({ found }: { found: Found | undefined }) {
-  if (!found) return 'Looking for what is clipped …';
-  if ('failed' in found) return 'The picture could not be read.';
-  if (found.highlights === 0 && found.shadows === 0) return 'Nothing is clipped.';
-  return (
-    <>
-      <b className="text-copper">Highlights</b> {shareWords(found.highlights)}, stripes rising · <b className="text-verdigris">Shadows</b>{' '}
-      {shareWords(found.shadows)}, stripes falling
-    </>
-  );
+  return { canvas, found: found?.address === address ? found : undefined };
 }
 
 function draw(picture: HTMLImageElement, canvas: HTMLCanvasElement | null, address: string): Found {
@@ -51,4 +39,30 @@ function draw(picture: HTMLImageElement, canvas: HTMLCanvasElement | null, addre
   const mask = markClipped(pen.getImageData(0, 0, width, height).data, 4);
   pen.putImageData(new ImageData(hatchClipped(mask, width), width, height), 0, 0);
   return { address, ...clippedShares(mask) };
+}
+
+/** Stripes over what is clipped. */
+export function ClippingStripes({ clipping: { canvas, found } }: { clipping: Clipping }) {
+  return <canvas ref={canvas} aria-hidden="true" className={`absolute inset-0 size-full ${found ? '' : 'invisible'}`} />;
+}
+
+/** What the stripes mean, and how much of the picture they cover. */
+export function ClippingWords({ clipping: { found } }: { clipping: Clipping }) {
+  return (
+    <p role="status" className="pointer-events-none absolute right-2 bottom-2 left-2 mx-auto w-fit bg-sheet px-2 py-1 text-13 text-ink">
+      <Said found={found} />
+    </p>
+  );
+}
+
+function Said({ found }: { found: Found | undefined }) {
+  if (!found) return 'Looking for what is clipped …';
+  if ('failed' in found) return 'The picture could not be read.';
+  if (found.highlights === 0 && found.shadows === 0) return 'Nothing is clipped.';
+  return (
+    <>
+      <b className="text-copper">Highlights</b> {shareWords(found.highlights)}, stripes rising · <b className="text-verdigris">Shadows</b>{' '}
+      {shareWords(found.shadows)}, stripes falling
+    </>
+  );
 }

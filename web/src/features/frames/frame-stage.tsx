@@ -3,7 +3,7 @@ import { derivativeWidth } from '../../ui/picture.tsx';
 import { thumbhashAddress } from '../../ui/thumbhash-address.ts';
 import { fitInto, fullScale, type Size } from '../viewer/stage-view.ts';
 import { useStage } from '../viewer/use-stage.ts';
-import { ClippingOverlay } from './clipping-overlay.tsx';
+import { ClippingStripes, ClippingWords, useClipping } from './clipping-overlay.tsx';
 
 const LARGE = 2560;
 
@@ -47,6 +47,7 @@ export function FrameStage({ size, shown, ready, clipping, onFull, onStep, ref }
   const { view, drift, isFull, toggle, pan, handlers } = useStage({ stage, fitted, full, onSwipe: onStep });
   useImperativeHandle(ref, () => ({ toggle: () => toggle(), pan }));
   useEffect(() => onFull(isFull), [isFull, onFull]);
+  const clipped = useClipping(clipping ? shown.large : undefined);
   const standIn = shown.medium ?? thumbhashAddress(shown.placeholder);
   return (
     <div
@@ -65,8 +66,9 @@ export function FrameStage({ size, shown, ready, clipping, onFull, onStep, ref }
         }}
       >
         <Layers shown={shown} ready={ready} />
-        {clipping && shown.large ? <ClippingOverlay address={shown.large} /> : null}
+        {clipping ? <ClippingStripes clipping={clipped} /> : null}
       </div>
+      {clipping ? <ClippingWords clipping={clipped} /> : null}
     </div>
   );
 }

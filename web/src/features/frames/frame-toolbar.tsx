@@ -3,6 +3,7 @@ import { Button } from '../../ui/button.tsx';
 import { Select } from '../../ui/select.tsx';
 import { TextInput } from '../../ui/text-input.tsx';
 import type { FrameWish, SortBy } from './frame-order.ts';
+import type { GroupCounts } from './sections.ts';
 
 const SORTS: { value: SortBy; words: string }[] = [
   { value: 'taken', words: 'Sort: time taken' },
@@ -15,6 +16,8 @@ const SORTS: { value: SortBy; words: string }[] = [
 
 interface Props {
   summary: FrameSummary | undefined;
+  /** Counted by what is loaded; null while more is on its way. */
+  counts: GroupCounts | null;
   wish: FrameWish;
   onWish: (wish: Partial<FrameWish>) => void;
   views: ReadonlyMap<string, { title: string; number: number }>;
@@ -25,11 +28,11 @@ interface Props {
 }
 
 /** Above the grid: which frames, in which order. */
-export function FrameToolbar({ summary, wish, onWish, views, shown, chosen, onAll }: Props) {
+export function FrameToolbar({ summary, counts, wish, onWish, views, shown, chosen, onAll }: Props) {
   return (
     <div className="grid gap-2">
       <div role="group" aria-label="Which frames" className="flex flex-wrap items-center gap-2">
-        <GroupButtons summary={summary} wish={wish} onWish={onWish} />
+        <GroupButtons summary={summary} counts={counts} wish={wish} onWish={onWish} />
       </div>
       <div className="flex flex-wrap items-center gap-2">
         <Select
@@ -48,20 +51,21 @@ export function FrameToolbar({ summary, wish, onWish, views, shown, chosen, onAl
           value={wish.text}
           onChange={(event) => onWish({ text: event.target.value })}
         />
-        <Select
-          aria-label="Sort by"
-          scale="small"
-          className="ml-auto"
-          value={wish.sort}
-          choices={SORTS}
-          onChange={(event) => onWish({ sort: event.target.value as SortBy })}
-        />
-        <Button size="small" aria-pressed={wish.descending} onClick={() => onWish({ descending: !wish.descending })}>
-          {wish.descending ? 'Descending' : 'Ascending'}
-        </Button>
-        <Button size="small" disabled={shown === 0 || chosen === shown} onClick={onAll}>
-          Choose all
-        </Button>
+        <div className="flex gap-2 lg:ml-auto">
+          <Select
+            aria-label="Sort by"
+            scale="small"
+            value={wish.sort}
+            choices={SORTS}
+            onChange={(event) => onWish({ sort: event.target.value as SortBy })}
+          />
+          <Button size="small" aria-pressed={wish.descending} onClick={() => onWish({ descending: !wish.descending })}>
+            {wish.descending ? 'Descending' : 'Ascending'}
+          </Button>
+          <Button size="small" disabled={shown === 0 || chosen === shown} onClick={onAll}>
+            Choose all
+          </Button>
+        </div>
       </div>
     </div>
   );
@@ -83,11 +87,16 @@ const ENTRIES: Entry[] = [
   { shown: 'deleted', group: 'all', words: 'Deleted', count: ({ deleted }) => deleted },
 ];
 
+/** Where nothing is grouped, single frames are all of them. */
+function countOf(counts: GroupCounts, group: keyof GroupCounts): number {
+  return group === 'single' && counts.brackets === 0 ? 0 : counts[group];
+}
+
 /** An entry appears with what it shows; the first one and the one in use stay. */
-function GroupButtons({ summary, wish, onWish }: Pick<Props, 'summary' | 'wish' | 'onWish'>) {
+function GroupButtons({ summary, counts, wish, onWish }: Pick<Props, 'summary' | 'counts' | 'wish' | 'onWish'>) {
   return ENTRIES.map(({ shown, group, words, count }, at) => {
     const inUse = shown === wish.shown && group === wish.group;
-    const many = summary ? count(summary) : 0;
+    const many = counts && group !== 'all' ? countOf(counts, group) : summary ? count(summary) : 0;
     if (at > 0 && !inUse && many === 0) return null;
     return (
       <Button key={words} size="small" tone={inUse ? 'first' : 'plain'} aria-pressed={inUse} onClick={() => onWish({ shown, group })}>

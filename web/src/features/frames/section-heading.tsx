@@ -1,5 +1,5 @@
 import type { ReactNode } from 'react';
-import { bracketHeading, leftOutWords } from './bracket-words.ts';
+import { bracketHeading, leftOutWords, picturesWords } from './bracket-words.ts';
 import { stem } from './frame-words.ts';
 import type { Section } from './sections.ts';
 
@@ -30,7 +30,7 @@ function wordsOf(section: Section): { title: string; more: string; notes: string
     const { title, settings } = bracketHeading(bracket, lead);
     return { title, more: [settings, bracket.byHand ? 'by hand' : ''].filter(Boolean).join(' · '), notes: leftOutWords(bracket, frames) };
   }
-  if (section.kind === 'alike') return { title: `${section.frames.length} frames alike`, more: sharpnessWords(section), notes: [] };
+  if (section.kind === 'alike') return { title: `${picturesWords(section.frames)} alike`, more: sharpnessWords(section), notes: [] };
   return { title: 'Single frames', more: String(section.frames.length), notes: [] };
 }
 

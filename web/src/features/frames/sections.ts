@@ -61,6 +61,20 @@ function alikeSections(shown: readonly FrameItem[]): Section[] {
   });
 }
 
+/** How many there are to be seen of each group; frames of brackets are counted by their brackets. */
+export type GroupCounts = Record<Exclude<Group, 'all'>, number>;
+
+/** Counts what the visible ones among frames come to. */
+export function countGroups(frames: readonly FrameItem[]): GroupCounts {
+  const visible = frames.filter((frame) => !frame.hidden);
+  return {
+    brackets: new Set(visible.flatMap((frame) => frame.bracketId ?? [])).size,
+    single: visible.filter((frame) => frame.bracketId === null).length,
+    'to-check': visible.filter(isToCheck).length,
+    alike: alikeSections(visible).reduce((sum, section) => sum + section.frames.length, 0),
+  };
+}
+
 /** Of near-doubles the frames that go where `kept` stays: a bracket stays whole. */
 export function allBut(frames: readonly FrameItem[], kept: FrameItem): FrameItem[] {
   return frames.filter((frame) => frame.id !== kept.id && (kept.bracketId === null || frame.bracketId !== kept.bracketId));

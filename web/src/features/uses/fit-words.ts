@@ -1,7 +1,10 @@
 import { fitForUse, type Fit, type PictureSize, type Use } from '../../../../api/domain/fit-for-use.ts';
 
+const NAMED = 3;
+
 /**
- * What a picture is good for, in one line: "Sharp for every use", "Sharp for 9 of 11 uses, not for A1 print (215 ppi), A0 print (152 ppi)".
+ * What a picture is good for, in one line: "Sharp for every use", "Sharp for 9 of 11 uses, not for A1 print (215 ppi), A0 print (152 ppi)";
+ * of many the first three are named.
  * Empty where there are no uses.
  */
 export function fitLine(picture: PictureSize, uses: readonly Use[]): string {
@@ -13,7 +16,8 @@ export function fitLine(picture: PictureSize, uses: readonly Use[]): string {
   if (missed.length === 0) return 'Sharp for every use';
   const sharp = uses.length - missed.length;
   if (sharp === 0) return 'Sharp for none of the uses';
-  return `Sharp for ${sharp} of ${uses.length} uses, not for ${missed.join(', ')}`;
+  const more = missed.length - NAMED;
+  return `Sharp for ${sharp} of ${uses.length} uses, not for ${missed.slice(0, NAMED).join(', ')}${more > 0 ? ` and ${more} more` : ''}`;
 }
 
 function shortly(fit: Fit & { sharp: false }): string {

@@ -33,7 +33,7 @@ export function UseDialog({ use, taken, onSave, onClose }: Props) {
         <FormError>{form.formState.errors.root?.message}</FormError>
         <fieldset>
           <legend className="font-bold">Kind</legend>
-          {KINDS.map(({ value, words, hint }) => (
+          {Object.entries(KINDS).map(([value, { words, hint }]) => (
             <Checkbox key={value} kind="radio" value={value} label={words} hint={hint} {...form.register('kind')} />
           ))}
         </fieldset>

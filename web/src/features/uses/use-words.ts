@@ -1,10 +1,10 @@
 import { neededPpi, type Use } from '../../../../api/domain/fit-for-use.ts';
 
-export const KINDS: { value: Use['kind']; words: string; hint: string }[] = [
-  { value: 'page', words: 'A page in the hand', hint: 'Printed, and read from nearby.' },
-  { value: 'screen', words: 'A screen', hint: 'Shown in so many pixels.' },
-  { value: 'seen-from', words: 'Seen from a distance', hint: 'A poster, a hoarding: the eye resolves one arc minute.' },
-];
+export const KINDS: Record<Use['kind'], { words: string; hint: string }> = {
+  page: { words: 'A page in the hand', hint: 'Printed, and read from nearby.' },
+  screen: { words: 'A screen', hint: 'Shown in so many pixels.' },
+  'seen-from': { words: 'Seen from a distance', hint: 'A poster, a hoarding: the eye resolves one arc minute.' },
+};
 
 /** Centimetres, from three metres on metres: "21", "0.5"; "6 m". */
 function length(mm: number): string {

@@ -1,4 +1,4 @@
-import { useState } from 'react';
+import { useState, type ReactNode } from 'react';
 import type { StudioUses } from '../../../../api/contract/studios.ts';
 import type { Use } from '../../../../api/domain/fit-for-use.ts';
 import { Button } from '../../ui/button.tsx';
@@ -26,10 +26,8 @@ export function UsesTable({ list: { uses, defaults, can }, busy, onChange }: Pro
           `${use.title} is changed.`,
         );
   const columns: Column<Use>[] = [
-    { key: 'title', words: 'Use', cell: (use) => <b>{use.title}</b> },
-    { key: 'kind', words: 'Kind', cell: (use) => KINDS.find(({ value }) => value === use.kind)?.words },
-    { key: 'size', words: 'Size', cell: (use) => <span className="whitespace-nowrap">{sizeOf(use)}</span> },
-    { key: 'needed', words: 'Needed to be sharp', cell: (use) => neededOf(use) },
+    { key: 'title', words: 'Use', cell: (use) => <TwoLines first={<b>{use.title}</b>} second={KINDS[use.kind].words} /> },
+    { key: 'size', words: 'Size, and needed to be sharp', cell: (use) => <TwoLines first={sizeOf(use)} second={neededOf(use)} /> },
   ];
   const change: Column<Use> = {
     key: 'change',
@@ -61,7 +59,13 @@ export function UsesTable({ list: { uses, defaults, can }, busy, onChange }: Pro
   return (
     <>
       {uses.length > 0 ? (
-        <DataTable caption="Uses" columns={can.change ? [...columns, change] : columns} rows={uses} rowKey={(use) => use.id} />
+        <DataTable
+          className="max-w-4xl"
+          caption="Uses"
+          columns={can.change ? [...columns, change] : columns}
+          rows={uses}
+          rowKey={(use) => use.id}
+        />
       ) : (
         <EmptyState title="No uses">Nothing is said about what a picture is good for.</EmptyState>
       )}
@@ -80,6 +84,15 @@ export function UsesTable({ list: { uses, defaults, can }, busy, onChange }: Pro
       {asking ? (
         <UseDialog use={asking === 'new' ? null : asking} taken={uses.map(({ id }) => id)} onSave={save} onClose={() => setAsking(null)} />
       ) : null}
+    </>
+  );
+}
+
+function TwoLines({ first, second }: { first: ReactNode; second: string }) {
+  return (
+    <>
+      {first}
+      <span className="block text-13 text-mute">{second}</span>
     </>
   );
 }

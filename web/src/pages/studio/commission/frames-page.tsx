@@ -1,4 +1,4 @@
-import { useRef, useState } from 'react';
+import { useMemo, useRef, useState } from 'react';
 import { Outlet } from 'react-router-dom';
 import { useQuery } from '@tanstack/react-query';
 import type { Bracket } from '../../../../../api/contract/brackets.ts';
@@ -12,6 +12,7 @@ import { GRID_KEYS, KeysDialog } from '../../../features/frames/keys-dialog.tsx'
 import { NoFrames, NoneFound } from '../../../features/frames/no-frames.tsx';
 import { frameSummaryQuery } from '../../../features/frames/queries.ts';
 import { SectionTools } from '../../../features/frames/section-tools.tsx';
+import { countGroups } from '../../../features/frames/sections.ts';
 import { chooseAll, chooseNone } from '../../../features/frames/selection.ts';
 import { SelectionBar } from '../../../features/frames/selection-bar.tsx';
 import { useFrameWish } from '../../../features/frames/use-frame-wish.ts';
@@ -68,6 +69,8 @@ export function Component() {
   const grid = useRef<FrameGridHandle>(null);
   const { addressOf, open, outlet } = useFrameWays(id, search, grid, setSelection);
   const deleted = wish.shown === 'deleted';
+  const complete = query.isSuccess && !query.hasNextPage && !deleted;
+  const counts = useMemo(() => (complete ? countGroups(all) : null), [complete, all]);
   const can = commission.closedAt === null;
   const askToDelete = () => can && !deleted && chosen.length > 0 && setAsking('delete');
 
@@ -79,6 +82,7 @@ export function Component() {
         {all.length > 0 || deleted || (summary?.deleted ?? 0) > 0 ? (
           <FrameToolbar
             summary={summary}
+            counts={counts}
             wish={wish}
             onWish={setWish}
             views={views}
