@@ -52,7 +52,7 @@ const issue = (id: string) =>
   Sheet.query().patchAndFetchById(id, { issuedAt: new Date(), endsAt: new Date(Date.now() + 1e9), chooseBy: '2027-01-10' });
 
 describe('frames that arrive', () => {
-  it('are measured, grouped and merged with nobody asking, whatever their order', async () => {
+  it('are measured, grouped and merged with nobody asking, whatever their order', { timeout: 120_000 }, async () => {
     const [zero, minus, plus] = await makeExposures(house, commission);
     const [single] = await makeExposures(house, commission, { stops: [0], minute: 30, seed: 2 });
     await runAllJobs(house);

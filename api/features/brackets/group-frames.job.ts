@@ -7,6 +7,7 @@ import { Frame } from '../../models/Frame.ts';
 import { announceBrackets } from './announce-brackets.ts';
 import { holdSheets } from './hold-commission.ts';
 import { findDoubles } from './find-doubles.ts';
+import { mergeName } from './merge-name.ts';
 import { matchBrackets } from './match-brackets.ts';
 import { dissolveBracket, settleBracket } from './settle-bracket.ts';
 import { shownFrames } from './shown-frames.ts';
@@ -41,11 +42,12 @@ async function regroup(trx: Transaction, commission: Commission): Promise<void> 
   const there = [...open.values()].filter(({ id }) => free.some(({ bracketId }) => bracketId === id));
   const found = groupBrackets(free.map(candidateOf));
   const { kept, gone } = matchBrackets(found, there, free);
+  const frameOf = new Map(free.map((frame) => [frame.id, frame]));
   for (const bracket of gone) {
     await Frame.within(bracket, trx).where({ bracketId: bracket.id }).patch({ bracketId: null });
     await dissolveBracket(trx, bracket);
   }
-  for (const [one, bracket] of kept) await bringAbout(trx, commission, one, bracket);
+  for (const [one, bracket] of kept) if (!isAsFound(one, bracket, frameOf)) await bringAbout(trx, commission, one, bracket);
 }
 
 /** Measured frames that neither a person nor a client's eyes have settled, held. */
@@ -75,6 +77,17 @@ function pickSettings(frame: MeasuredFrame) {
   };
 }
 
+const leadOf = (found: FoundBracket, there: Bracket | undefined) =>
+  there?.leadByHand && found.frameIds.includes(there.leadFrameId) ? there.leadFrameId : found.leadId;
+
+/** Whether a bracket is already what was found: of thousands only few are new each time. */
+function isAsFound(found: FoundBracket, there: Bracket | undefined, frameOf: ReadonlyMap<string, MeasuredFrame>): boolean {
+  if (!there || there.leadFrameId !== leadOf(found, there)) return false;
+  const frames = found.frameIds.flatMap((id) => frameOf.get(id) ?? []);
+  // The name tells a frame too many or too few as well.
+  return frames.every(({ bracketId }) => bracketId === there.id) && there.wanted === mergeName(frames, there.leadFrameId);
+}
+
 /** Makes the bracket that was found, or brings the one that is there in line with it. */
 async function bringAbout(trx: Transaction, commission: Commission, found: FoundBracket, there: Bracket | undefined): Promise<void> {
   const { studioId, id: commissionId } = commission;
@@ -82,6 +95,5 @@ async function bringAbout(trx: Transaction, commission: Commission, found: Found
   const mine = Frame.within(commission, trx);
   await mine.clone().where({ bracketId: bracket.id }).whereNotIn('id', found.frameIds).patch({ bracketId: null });
   await mine.clone().whereIn('id', found.frameIds).whereRaw('bracket_id is distinct from ?', [bracket.id]).patch({ bracketId: bracket.id });
-  const leadFrameId = bracket.leadByHand && found.frameIds.includes(bracket.leadFrameId) ? bracket.leadFrameId : found.leadId;
-  await settleBracket(trx, bracket, { leadFrameId, mayGrow: true });
+  await settleBracket(trx, bracket, { leadFrameId: leadOf(found, bracket), mayGrow: true });
 }

@@ -17,13 +17,15 @@ export function matchBrackets(
   there: readonly Bracket[],
   frames: readonly { id: string; bracketId: string | null }[],
 ): MatchedBrackets {
-  const bracketOf = new Map(frames.map(({ id, bracketId }) => [id, bracketId]));
-  const shared = found.flatMap((one) =>
-    there.map((bracket) => ({ one, bracket, count: one.frameIds.filter((id) => bracketOf.get(id) === bracket.id).length })),
-  );
+  const byId = new Map(there.map((bracket) => [bracket.id, bracket]));
+  const bracketOf = new Map(frames.map(({ id, bracketId }) => [id, byId.get(bracketId ?? '')]));
+  const shared = found.flatMap((one) => {
+    const theirs = one.frameIds.flatMap((id) => bracketOf.get(id) ?? []);
+    return [...new Set(theirs)].map((bracket) => ({ one, bracket, count: theirs.filter((each) => each === bracket).length }));
+  });
   const partner = new Map<FoundBracket, Bracket>();
   const used = new Set<Bracket>();
-  for (const { one, bracket } of shared.filter(({ count }) => count > 0).sort((a, b) => b.count - a.count)) {
+  for (const { one, bracket } of shared.sort((a, b) => b.count - a.count)) {
     if (partner.has(one) || used.has(bracket)) continue;
     partner.set(one, bracket);
     used.add(bracket);
