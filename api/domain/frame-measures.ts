@@ -75,7 +75,7 @@ export interface FrameMeasures {
    */
   headroom: number;
   /**
-   * Variance of the Laplacian over the variance of the picture itself, on the sharpest tiles, without the noise's part, at 1600 px
+   * Variance of the Laplacian over the variance of the picture itself, on the sharpest tiles, without the noise's part, at 1280 px
    * along the longer side: neither exposure nor contrast nor size decides. Compares pictures of like things; null where no
    * tile has anything in it.
    */

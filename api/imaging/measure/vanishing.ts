@@ -57,7 +57,7 @@ function agreement(samples: readonly Sample[], family: Family, width: number): n
   return sum;
 }
 
-/** Steps of the first search in degrees: of the turn to `turn`, of the spread to `spread` on either side. */
+/** How far a family is looked for, in degrees either way; a spread of 0 looks for edges that are parallel in the picture too. */
 export interface Reach {
   turn: number;
   spread: number;
@@ -122,7 +122,7 @@ function supportOf(samples: readonly Sample[], family: Family): Support {
   return { agreeing, against: rivals - agreeing, error };
 }
 
-/** The family that explains most of the edges, within reach. `flat` looks for edges that are parallel in the picture too. */
+/** The family that explains most of the edges, within reach. */
 export function findFamily(samples: readonly Sample[], reach: Reach): { family: Family; support: Support } {
   const family = refine(samples, search(samples, reach), reach.spread === 0);
   return { family, support: supportOf(samples, family) };
