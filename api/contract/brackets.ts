@@ -1,10 +1,9 @@
 import { z } from 'zod';
+import { FEWEST_EXPOSURES, MOST_EXPOSURES } from '../domain/brackets/candidate.ts';
 import { FramePictures, FramesChanged } from './frames.ts';
 import type { Operation } from './operation.ts';
 
-/** A bracket has as many exposures as this. */
-export const FEWEST_EXPOSURES = 2;
-export const MOST_EXPOSURES = 9;
+export { FEWEST_EXPOSURES, MOST_EXPOSURES };
 
 /** The fused picture of a bracket. `waiting` while it is being made; where it `failed` the lead frame is shown in its place. */
 export const MergedPicture = z.object({

@@ -1,7 +1,7 @@
 import type { BracketCandidate, FoundBracket } from './brackets/candidate.ts';
 import { completeRow } from './brackets/complete-row.ts';
 import { rowsOf } from './brackets/row.ts';
-import { presentBracket } from './brackets/say-bracket.ts';
+import { describeBracket } from './brackets/say-bracket.ts';
 import { splitRow } from './brackets/split-row.ts';
 
 export type { BracketCandidate, FoundBracket } from './brackets/candidate.ts';
@@ -12,5 +12,5 @@ export type { BracketCandidate, FoundBracket } from './brackets/candidate.ts';
  * depends on the set of frames alone, not on their order, and comes in the order the brackets were taken.
  */
 export function groupBrackets(frames: readonly BracketCandidate[]): FoundBracket[] {
-  return rowsOf(frames).map(completeRow).flatMap(splitRow).map(presentBracket);
+  return rowsOf(frames).map(completeRow).flatMap(splitRow).map(describeBracket);
 }

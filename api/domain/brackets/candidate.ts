@@ -1,3 +1,7 @@
+/** Frames of a bracket at least and at most: 3, 5, 7 and 9 are usual, and some may have been lost or deleted. */
+export const FEWEST_EXPOSURES = 2;
+export const MOST_EXPOSURES = 9;
+
 /** A frame as far as the search for brackets needs it. Null where the camera wrote nothing. */
 export interface BracketCandidate {
   id: string;

@@ -1,3 +1,4 @@
+import { linearOf } from '../srgb.ts';
 import type { Exposure } from './row.ts';
 
 /** What two thumbs say about each other. */
@@ -24,11 +25,8 @@ const FLAT = 0.06;
  */
 const [ALIKE, DIFFERENT] = [0.6, 0.3];
 
-/** Stops of each 8-bit value, through the inverse of the sRGB curve (IEC 61966-2-1). */
-const STOPS = Float64Array.from({ length: 256 }, (_, value) => {
-  const v = Math.max(value, 0.5) / 255;
-  return Math.log2(v <= 0.04045 ? v / 12.92 : ((v + 0.055) / 1.055) ** 2.4);
-});
+/** Stops of each 8-bit value in linear light; black, which has none, counts as half a value. */
+const STOPS = Float64Array.from({ length: 256 }, (_, value) => Math.log2(linearOf(Math.max(value, 0.5))));
 
 /** The values of a thumb; null for what is none. */
 export function decodeThumb(base64: string | null): Uint8Array | null {
@@ -96,7 +94,7 @@ function compare(one: Uint8Array | null, two: Uint8Array | null): Likeness {
   const mask = comparable(one, two);
   const count = mask.reduce((sum, value) => sum + value, 0);
   if (count < ENOUGH * mask.length) return { pictures: 'unknown', brighter: null };
-  return { pictures: pictures(one, two, mask, count), brighter: medianDifference(one, two, mask, count) };
+  return { pictures: judgePictures(one, two, mask, count), brighter: medianDifference(one, two, mask, count) };
 }
 
 export type Compare = (one: Exposure, two: Exposure) => Likeness;
@@ -119,7 +117,7 @@ function coarseness(thumb: Uint8Array, mask: Uint8Array, count: number): number 
   return sum / count;
 }
 
-function pictures(one: Uint8Array, two: Uint8Array, mask: Uint8Array, count: number): Likeness['pictures'] {
+function judgePictures(one: Uint8Array, two: Uint8Array, mask: Uint8Array, count: number): Likeness['pictures'] {
   const [oneDetail, twoDetail] = [detail(one, mask), detail(two, mask)];
   const [oneSpread, twoSpread] = [product(oneDetail, oneDetail, mask, count), product(twoDetail, twoDetail, mask, count)];
   if (Math.max(oneSpread, twoSpread) < FLAT ** 2) return 'unknown';

@@ -1,5 +1,5 @@
 import { brightness } from './stops.ts';
-import type { BracketCandidate } from './candidate.ts';
+import { MOST_EXPOSURES, type BracketCandidate } from './candidate.ts';
 import { compareNumbers, fileNumber, filesBetween, ofTwoCounters, type FileNumber } from './file-number.ts';
 import { decodeThumb } from './likeness.ts';
 import { momentsOf, type Moment } from './moment.ts';
@@ -21,7 +21,7 @@ export interface Exposure {
 export type Row = Exposure[];
 
 /** The next frame of a bracket begins within this after the end of the one before it. Milliseconds. */
-export const LONGEST_PAUSE = 2000;
+const LONGEST_PAUSE = 2000;
 /** A shutter marked 30 s is open for 32 s: engraved times are up to 7 % off. */
 const ENGRAVED = 0.07;
 
@@ -56,7 +56,7 @@ function sameSetting(first: Exposure, second: Exposure): boolean {
 }
 
 /** Shortest time, in milliseconds, between the end of one exposure and the beginning of the next, as far as the clock can tell. */
-export function pauseBetween(one: Exposure, two: Exposure): number {
+function pauseBetween(one: Exposure, two: Exposure): number {
   return two.moment.begins - (one.moment.begins + one.moment.unsure) - one.lasts * (1 + ENGRAVED);
 }
 
@@ -72,7 +72,7 @@ function last(row: Row): Exposure {
 function continues(row: Row, next: Exposure): boolean {
   const before = last(row);
   if (!sameKind(before, next) || pauseBetween(before, next) > LONGEST_PAUSE || overlap(before, next)) return false;
-  return row.slice(-9).every((one) => sameSetting(one, next));
+  return row.slice(-MOST_EXPOSURES).every((one) => sameSetting(one, next));
 }
 
 /** How surely a frame comes from the body of a row: by its serial number, then by the counter in the file names. */

@@ -55,8 +55,8 @@ function leadOf(byStops: readonly Exposure[], asTaken: readonly Exposure[]): Exp
   return asTaken.find((one) => middle.includes(one)) as Exposure;
 }
 
-/** Presents exposures, in the order they were taken, as the bracket they are. */
-export function presentBracket(asTaken: readonly Exposure[]): FoundBracket {
+/** Exposures, in the order they were taken, as the bracket they are. */
+export function describeBracket(asTaken: readonly Exposure[]): FoundBracket {
   const byStops = [...asTaken].sort((one, two) => (one.stops as number) - (two.stops as number));
   const lead = leadOf(byStops, asTaken);
   const frames = byStops.map(({ frame }) => frame);

@@ -1,9 +1,7 @@
+import { FEWEST_EXPOSURES, MOST_EXPOSURES } from './candidate.ts';
 import { rememberedLikeness } from './likeness.ts';
 import type { Row } from './row.ts';
 import { worthAsBracket } from './worth.ts';
-
-/** A bracket has two to nine frames. */
-const MOST = 9;
 
 interface Split {
   worth: number;
@@ -20,7 +18,7 @@ export function splitRow(row: Row): Row[] {
   const best: Split[] = [{ worth: 0, length: 0 }];
   for (let end = 1; end <= row.length; end++) {
     let split: Split = { worth: (best[end - 1] as Split).worth, length: 1 };
-    for (let length = 2; length <= Math.min(MOST, end); length++) {
+    for (let length = FEWEST_EXPOSURES; length <= Math.min(MOST_EXPOSURES, end); length++) {
       const worth = worthAsBracket(row.slice(end - length, end), compare);
       // An exposure that stands twice stands twice in every longer part too.
       if (worth === 'never') break;

@@ -1,6 +1,7 @@
 import type { Transaction } from 'objection';
 import type { Context } from '../../context.ts';
 import type { ArrangedBracket } from '../../domain/brackets/arrange.ts';
+import { FEWEST_EXPOSURES } from '../../domain/brackets/candidate.ts';
 import { DERIVATIVE_SIZES } from '../../imaging/derivative-sizes.ts';
 import { PixelsFailure } from '../../imaging/pixels/pixels.ts';
 import { Refusal } from '../../imaging/refusal.ts';
@@ -54,7 +55,7 @@ async function merge(ctx: Context, bracket: Bracket, { frames, steps }: Arranged
   const lead = frames.findIndex(({ id }) => id === bracket.leadFrameId);
   const merged = await ctx.pixels.merge(pictures, lead);
   const leftOut = merged.leftOut.map(({ index, why }) => ({ frameId: frames[index]?.id ?? '', why }));
-  if (frames.length - leftOut.length < 2) return void (await conclude(bracket, { problem: ALONE, leftOut }));
+  if (frames.length - leftOut.length < FEWEST_EXPOSURES) return void (await conclude(bracket, { problem: ALONE, leftOut }));
   const made = { ...bracket, madeOf: bracket.wanted };
   await Promise.all(merged.pictures.map(({ size, data }) => ctx.store.put(mergedKey(made, size), data, 'image/jpeg')));
   const { width, height, placeholder } = merged;

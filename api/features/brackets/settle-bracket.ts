@@ -1,13 +1,12 @@
 import type { Transaction } from 'objection';
 import { middleFrame } from '../../domain/brackets/arrange.ts';
+import { FEWEST_EXPOSURES } from '../../domain/brackets/candidate.ts';
 import { Bracket } from '../../models/Bracket.ts';
 import type { Frame } from '../../models/Frame.ts';
 import { framesOfBrackets } from './bracket-frames.ts';
 import { mergeName } from './merge-name.ts';
 import { queueDrop, queueMerge } from './queue-grouping.ts';
 import { layBracketProofs, layLeadProofs } from './settle-proofs.ts';
-
-const FEWEST = 2;
 
 /** What settling is to bring about beside what the frames say. */
 export interface Settling {
@@ -25,7 +24,7 @@ export interface Settling {
 export async function settleBracket(trx: Transaction, bracket: Bracket, settling: Settling = {}): Promise<Bracket | null> {
   const arranged = (await framesOfBrackets(bracket, [bracket], trx)).get(bracket.id);
   const frames = arranged?.frames ?? [];
-  if (frames.length < FEWEST) {
+  if (frames.length < FEWEST_EXPOSURES) {
     await dissolveBracket(trx, bracket);
     return null;
   }
