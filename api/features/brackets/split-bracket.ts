@@ -1,3 +1,4 @@
+import type { QueryBuilder } from 'objection';
 import type { TakenOut } from '../../contract/brackets.ts';
 import type { Context } from '../../context.ts';
 import type { StaffActor } from '../../middleware/actor.ts';
@@ -17,6 +18,12 @@ function refuseShown({ shown }: HeldBracket): void {
   if (why) throw problem(409, `This bracket stays as it is. ${why}`, { code: 'shown' });
 }
 
+/** Makes frames single frames that the machine leaves alone. Returns their ids. */
+async function letGo(frames: QueryBuilder<Frame>): Promise<string[]> {
+  const rows = await frames.patch({ bracketId: null, groupedByHand: true }).returning('id');
+  return (rows as unknown as Pick<Frame, 'id'>[]).map(({ id }) => id);
+}
+
 /**
  * Makes the frames of a bracket single frames, for good: the machine leaves them alone. Joining them again undoes it.
  * @returns ids of the frames @throws Problem 404, 409 for what a client has been shown or picked
@@ -26,12 +33,8 @@ export async function splitBracket(actor: StaffActor, bracketId: string): Promis
     const held = await holdBracket(actor, bracketId, trx);
     refuseShown(held);
     const { bracket } = held;
-    const frames = (await Frame.within(actor, trx)
-      .where({ bracketId })
-      .patch({ bracketId: null, groupedByHand: true })
-      .returning('id')) as unknown as { id: string }[];
+    const frameIds = await letGo(Frame.within(actor, trx).where({ bracketId }));
     await dissolveBracket(trx, bracket);
-    const frameIds = frames.map(({ id }) => id);
     await addToRecord(trx, {
       studioId: actor.studioId,
       commissionId: bracket.commissionId,
@@ -54,12 +57,7 @@ export async function takeOutFrames(ctx: Context, actor: StaffActor, bracketId: 
     const held = await holdBracket(actor, bracketId, trx);
     refuseShown(held);
     const { bracket } = held;
-    const rows = (await Frame.within(actor, trx)
-      .where({ bracketId })
-      .whereIn('id', frameIds)
-      .patch({ bracketId: null, groupedByHand: true })
-      .returning('id')) as unknown as { id: string }[];
-    const taken = rows.map(({ id }) => id);
+    const taken = await letGo(Frame.within(actor, trx).where({ bracketId }).whereIn('id', frameIds));
     if (taken.length === 0) return { taken, left: bracket };
     const left = await leaveByHand(trx, bracket);
     await addToRecord(trx, {
