@@ -7,7 +7,7 @@ interface Props {
   onChoose: (guides: Guides) => void;
 }
 
-/** Chooses the lines over the picture. On a phone the button names itself alone. */
+/** Chooses the lines over the picture. Where room is short the button names itself alone. */
 export function GuidesMenu({ guides, onChoose }: Props) {
   const { t } = useTranslation();
   return (
@@ -15,7 +15,7 @@ export function GuidesMenu({ guides, onChoose }: Props) {
       label={
         <span>
           {t('guides.label')}
-          <span className="max-sm:sr-only">: {t(`guides.${guides}`)}</span>
+          <span className="max-lg:sr-only">: {t(`guides.${guides}`)}</span>
         </span>
       }
       entries={GUIDES.map((one) => ({ words: t(`guides.${one}`), chosen: one === guides, onChoose: () => onChoose(one) }))}

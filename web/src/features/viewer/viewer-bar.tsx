@@ -35,7 +35,7 @@ export function ViewerBar(props: Props) {
   return (
     <header className="flex flex-wrap items-center justify-between gap-x-4 gap-y-2 px-4 py-3 md:flex-nowrap">
       <div className="flex min-w-0 items-center gap-3">
-        <Button size="small" onClick={onClose}>
+        <Button size="small" className="shrink-0" onClick={onClose}>
           <span aria-hidden="true">←</span> {t('viewer.all')}
         </Button>
         <PageTitle title={t('proof.name', { number: proof.number })} where={sheet.commission.title} className="flex min-w-0 gap-3 text-15">
