@@ -1,10 +1,10 @@
 import type { Knex } from 'knex';
 import type { Context } from '../../context.ts';
-import { announce } from '../../db/live.ts';
 import type { StudioScope } from '../../db/scope.ts';
 import { enqueue } from '../../jobs/queue.ts';
 import { problem } from '../../middleware/problem.ts';
 import type { Sheet } from '../../models/Sheet.ts';
+import { announceSheet } from './announce-sheet.ts';
 import { findSheet, holdSheet } from './find-sheet.ts';
 import { sheetCan } from './policy.ts';
 
@@ -34,8 +34,7 @@ export async function changeProofs(
 export async function touchSheet(trx: Knex.Transaction, sheetId: string, commissionId: string): Promise<void> {
   await trx('sheets').where({ id: sheetId }).increment('revision', 1);
   await enqueue(trx, 'watermark-proofs', { sheetId }, { key: `watermark-proofs:${sheetId}`, priority: -2 });
-  await announce(trx, `sheet:${sheetId}`, { what: 'proofs' });
-  await announce(trx, `commission:${commissionId}`, { what: 'sheet', sheetId });
+  await announceSheet(trx, { id: sheetId, commissionId }, 'proofs');
 }
 
 /** In a draft the numbers follow the order; once guests know them they stay. */

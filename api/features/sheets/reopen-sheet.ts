@@ -1,7 +1,6 @@
 import type { Knex } from 'knex';
 import type { Context } from '../../context.ts';
 import type { ReopenSheet } from '../../contract/sheets.ts';
-import { announce } from '../../db/live.ts';
 import type { StaffActor } from '../../middleware/actor.ts';
 import { invalid, problem } from '../../middleware/problem.ts';
 import { Sheet } from '../../models/Sheet.ts';
@@ -9,6 +8,7 @@ import { SheetGuest } from '../../models/SheetGuest.ts';
 import { linkAddress, newToken } from '../guests/tokens.ts';
 import { queueMail } from '../mail/queue-mail.ts';
 import { addToRecord } from '../record/add-to-record.ts';
+import { announceSheet } from './announce-sheet.ts';
 import { setLastDate } from './change-sheet.ts';
 import { findSheet, holdSheet } from './find-sheet.ts';
 import { sheetCan } from './policy.ts';
@@ -29,8 +29,7 @@ export async function reopenSheet(ctx: Context, actor: StaffActor, sheetId: stri
       throw invalid([{ path: 'chooseBy', message: 'The last date has passed: set a new one.' }]);
     }
     await mailLeads(ctx, trx, actor, await findSheet(actor, sheetId, trx), input.reason);
-    await announce(trx, `sheet:${sheetId}`, { what: 'sheet' });
-    await announce(trx, `commission:${sheet.commissionId}`, { what: 'sheet', sheetId });
+    await announceSheet(trx, sheet, 'sheet');
     await addToRecord(trx, {
       studioId: actor.studioId,
       commissionId: sheet.commissionId,

@@ -1,5 +1,4 @@
 import type { Context } from '../../context.ts';
-import { announce } from '../../db/live.ts';
 import type { Job } from '../../jobs/job.ts';
 import { Bracket } from '../../models/Bracket.ts';
 import type { Frame } from '../../models/Frame.ts';
@@ -7,6 +6,7 @@ import { Proof } from '../../models/Proof.ts';
 import { Sheet } from '../../models/Sheet.ts';
 import { proofKey } from '../../services/storage-keys.ts';
 import { shownPicture } from '../brackets/shown-picture.ts';
+import { announceSheet } from './announce-sheet.ts';
 
 /** Proofs under way at once: enough to keep every child at work while others are fetched and stored. */
 const ABREAST = 4;
@@ -77,6 +77,5 @@ async function watermarkProof(ctx: Context, sheet: Sheet, proof: ProofToMark, im
 
 async function tell(ctx: Context, sheet: Sheet): Promise<void> {
   await ctx.knex('sheets').where({ id: sheet.id }).increment('revision', 1);
-  await announce(ctx.knex, `sheet:${sheet.id}`, { what: 'proofs' });
-  await announce(ctx.knex, `commission:${sheet.commissionId}`, { what: 'sheet', sheetId: sheet.id });
+  await announceSheet(ctx.knex, sheet, 'proofs');
 }

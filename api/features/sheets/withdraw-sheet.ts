@@ -4,6 +4,7 @@ import type { StaffActor } from '../../middleware/actor.ts';
 import { problem } from '../../middleware/problem.ts';
 import { Sheet } from '../../models/Sheet.ts';
 import { addToRecord } from '../record/add-to-record.ts';
+import { announceSheet } from './announce-sheet.ts';
 import { findSheet, holdSheet } from './find-sheet.ts';
 
 /** Takes a sheet back from all its guests at once, or puts it back before them; marks and lists stay as they are. */
@@ -15,8 +16,7 @@ export async function withdrawSheet(ctx: Context, actor: StaffActor, sheetId: st
     await Sheet.within(actor, trx)
       .findById(sheetId)
       .patch({ withdrawnAt: withdrawn ? new Date() : null, version: sheet.version + 1 });
-    await announce(trx, `sheet:${sheetId}`, { what: 'sheet' });
-    await announce(trx, `commission:${sheet.commissionId}`, { what: 'sheet', sheetId });
+    await announceSheet(trx, sheet, 'sheet');
     await addToRecord(trx, {
       studioId: actor.studioId,
       commissionId: sheet.commissionId,
