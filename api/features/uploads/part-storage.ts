@@ -2,11 +2,6 @@ import type { Request } from 'express';
 import multer, { type StorageEngine } from 'multer';
 import { problem } from '../../middleware/problem.ts';
 
-/** What the storage engine leaves of a part. */
-export interface StoredFile {
-  size: number;
-}
-
 /** Fills one buffer of exactly the expected length. @throws Problem 422 where fewer bytes come. */
 async function readExactly(stream: NodeJS.ReadableStream, expected: number): Promise<Buffer> {
   const buffer = Buffer.allocUnsafe(expected);
