@@ -71,12 +71,12 @@ function FrameRow({ frame, step, bracket, onLead, onTakeOut }: RowProps) {
       {isLead ? (
         <b className="px-3 text-13 text-verdigris">Lead frame</b>
       ) : (
-        <Button size="small" disabled={!bracket.can.change} aria-label={`Make ${frame.name} the lead frame`} onClick={onLead}>
-          Make it the lead
+        <Button size="small" disabled={!bracket.can.change} onClick={onLead}>
+          Make it the lead <span className="sr-only">({frame.name})</span>
         </Button>
       )}
-      <Button size="small" disabled={!bracket.can.regroup} aria-label={`Take ${frame.name} out`} onClick={onTakeOut}>
-        Take out
+      <Button size="small" disabled={!bracket.can.regroup} onClick={onTakeOut}>
+        Take out <span className="sr-only">({frame.name})</span>
       </Button>
     </li>
   );

@@ -9,9 +9,9 @@ export function SectionHeading({ section, children }: { section: Section; childr
   return (
     <div role="rowheader" className="border-t border-ink pt-1.5 pb-2.5">
       <div className="flex min-h-8 flex-wrap items-center justify-between gap-x-4 gap-y-1">
-        <h3 className="text-15 font-normal">
+        <h2 className="text-15 font-normal">
           <b>{title}</b> {more ? <span className="text-mute">· {more}</span> : null}
-        </h3>
+        </h2>
         {children ? <div className="flex flex-wrap gap-2">{children}</div> : null}
       </div>
       {notes.map((note) => (

@@ -90,10 +90,10 @@ function Exposures({ proof, onShow }: Pick<Props, 'proof' | 'onShow'>) {
         <button
           type="button"
           className="target block text-left underline underline-offset-4 hover:no-underline"
-          aria-label={`Show ${merged ? 'the lead frame' : 'the merged picture'} as proof ${proof.number}`}
           onClick={() => onShow(merged ? 'lead' : 'merged')}
         >
           {merged ? 'Show the lead frame' : 'Show it merged'}
+          <span className="sr-only"> as proof {proof.number}</span>
         </button>
       ) : null}
     </span>

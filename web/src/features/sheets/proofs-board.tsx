@@ -63,7 +63,7 @@ export function ProofsBoard({ sheet, views }: { sheet: StudioSheet; views: Views
         <Storey
           key={storey.viewId ?? 'also'}
           gutter="narrow"
-          headingLevel="h3"
+          headingLevel="h2"
           lettering={`${storey.number === null ? '' : `View ${storey.number} · `}${counted(storey.proofs.length, 'proof')}`}
           title={storey.title}
         >
