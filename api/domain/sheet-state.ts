@@ -1,6 +1,9 @@
 /** The states of a proof sheet, derived from its moments and never stored. */
 export type SheetState = 'Draft' | 'Open' | 'Sent' | 'Ended';
 
+/** How long a sheet can still be looked at after its last date. */
+export const SHEET_STAYS_DAYS = 30;
+
 /** The moments of a sheet that decide its state; any form a Date accepts. */
 export interface SheetMoments {
   /** First issued to guests; null for a draft. */
@@ -21,4 +24,9 @@ export function sheetState(sheet: SheetMoments, now: Date): SheetState {
   if (!sheet.issuedAt) return 'Draft';
   if (sheet.sentAt) return 'Sent';
   return sheet.endsAt && new Date(sheet.endsAt) <= now ? 'Ended' : 'Open';
+}
+
+/** Whether the time in which a sheet can be looked at is over as well. */
+export function sheetIsOver({ endsAt }: Pick<SheetMoments, 'endsAt'>, now: Date): boolean {
+  return endsAt !== null && new Date(endsAt).getTime() + SHEET_STAYS_DAYS * 24 * 60 * 60 * 1000 <= now.getTime();
 }

@@ -177,6 +177,26 @@ describe('who may', () => {
   );
 });
 
+describe('while a commission is deleted', () => {
+  let gone: FullLife;
+  beforeAll(async () => {
+    gone = await makeFullLife(house, home);
+    await house.ctx.knex('commissions').where({ id: gone.ids.commissionId }).update({ deletedAt: new Date() });
+  });
+  /** Rows that belong to the studio and not to a commission, and the way back. */
+  const stays = /\{(clientId|mailId|invitationId|accountId)\}|\/\{commissionId\}\/restore$/;
+  const within = operations.filter(({ path, who }) => who !== 'anyone' && path.includes('{') && !stays.test(path));
+
+  it.each(named(within))('%s finds nothing of it', async (_name, operation) => {
+    const agent = STUDIO.includes(operation.who)
+      ? home.owner.agent
+      : operation.who === 'recipient'
+        ? gone.recipient.agent
+        : gone.lead.agent;
+    expect((await call(agent, operation, gone, home.studio.id)).status).toBe(404);
+  });
+});
+
 it('sweeps what the description says', () => {
   const described = Object.entries(document.paths).flatMap(([path, methods]) => Object.keys(methods).map((method) => `${method} ${path}`));
   expect(operations.length).toBeGreaterThan(100);

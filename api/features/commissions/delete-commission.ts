@@ -1,9 +1,12 @@
+import type { Transaction } from 'objection';
 import type { CommissionDetail } from '../../contract/commissions.ts';
 import type { Context } from '../../context.ts';
 import { announce } from '../../db/live.ts';
+import { enqueue } from '../../jobs/queue.ts';
 import type { StaffActor } from '../../middleware/actor.ts';
 import { problem } from '../../middleware/problem.ts';
 import { Commission } from '../../models/Commission.ts';
+import { Delivery } from '../../models/Delivery.ts';
 import { addToRecord } from '../record/add-to-record.ts';
 import { countContents } from './count-contents.ts';
 import { readCommission } from './read-commission.ts';
@@ -33,6 +36,7 @@ export async function restoreCommission(ctx: Context, actor: StaffActor, commiss
     const restored = await Commission.within(actor, trx).findById(commissionId).whereNotNull('deletedAt').patch({ deletedAt: null });
     const answer = await readCommission(trx, actor, commissionId);
     if (!restored) return answer;
+    await sendWhatWaits(trx, actor, commissionId);
     await addToRecord(trx, {
       studioId: actor.studioId,
       commissionId,
@@ -43,4 +47,10 @@ export async function restoreCommission(ctx: Context, actor: StaffActor, commiss
     await announce(trx, `commission:${commissionId}`, { what: 'commission-changed' });
     return readCommission(trx, actor, commissionId);
   });
+}
+
+/** Deliveries whose archives became ready while the commission was deleted were not sent; the job finds out which. */
+async function sendWhatWaits(trx: Transaction, actor: StaffActor, commissionId: string): Promise<void> {
+  const waiting = await Delivery.within(actor, trx).where({ commissionId }).whereNull('sentAt').whereNull('withdrawnAt').select('id');
+  for (const { id } of waiting) await enqueue(trx, 'send-delivery', { deliveryId: id }, { key: `send-delivery:${id}` });
 }

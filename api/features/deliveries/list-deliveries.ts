@@ -27,7 +27,6 @@ export async function listDeliveries(ctx: Context, scope: StudioScope, commissio
 
 /** One delivery of a commission. @throws Problem 404 */
 export async function readDelivery(ctx: Context, scope: StudioScope, commissionId: string, deliveryId: string): Promise<StudioDelivery> {
-  await findCommission(scope, commissionId);
   const [delivery] = await presentDeliveries(ctx, [await findDelivery(scope, commissionId, deliveryId)]);
   return delivery as StudioDelivery;
 }

@@ -3,13 +3,14 @@ import type { Context } from '../../context.ts';
 import { announce } from '../../db/live.ts';
 import type { Job } from '../../jobs/job.ts';
 import { Archive } from '../../models/Archive.ts';
+import { Commission } from '../../models/Commission.ts';
 import { Delivery } from '../../models/Delivery.ts';
 import { DeliveryRecipient } from '../../models/DeliveryRecipient.ts';
 import { addToRecord } from '../record/add-to-record.ts';
 import { mailDelivery } from './mail-delivery.ts';
 
 /**
- * Sends a delivery once both archives are ready: one transaction holds the moment, the links and the mails, so that no
+ * Sends a delivery once both archives are ready, unless its commission was deleted meanwhile; bringing that back queues it again. One transaction holds the moment, the links and the mails, so that no
  * mail goes out twice or is lost, however often this runs.
  */
 export const sendDelivery: Job<{ deliveryId: string }> = {
@@ -18,6 +19,7 @@ export const sendDelivery: Job<{ deliveryId: string }> = {
     await ctx.knex.transaction(async (trx) => {
       const delivery = await Delivery.query(trx).findById(deliveryId).forUpdate();
       if (!delivery || delivery.sentAt || delivery.withdrawnAt) return;
+      if (!(await Commission.within(delivery, trx).findById(delivery.commissionId).whereNull('deletedAt'))) return;
       const archives = await Archive.within(delivery, trx).where({ deliveryId });
       if (archives.length === 0 || archives.some((archive) => archive.state !== 'ready')) return;
       await send(ctx, trx, delivery);

@@ -1,8 +1,6 @@
 import type { Knex } from 'knex';
+import { SHEET_STAYS_DAYS } from '../../domain/sheet-state.ts';
 import { hashToken } from './tokens.ts';
-
-/** How long a sheet can still be looked at after its last date. */
-export const SHEET_STAYS_DAYS = 30;
 
 /** What a link was made for. */
 export interface Link {
@@ -21,7 +19,7 @@ export interface Link {
   /** Of the sheet or the delivery. */
   number: number;
   goTo: string;
-  /** The invitation, or the whole sheet or delivery, was taken back. */
+  /** The invitation, or the whole sheet or delivery, was taken back, or the commission deleted. */
   withdrawn: boolean;
   /** Nothing can be opened any more because its time is over. */
   ended: boolean;
@@ -31,7 +29,7 @@ export interface Link {
 
 const GUESTS = `
   select 'sheet' as kind, g.id, g.account_id, g.name, g.studio_id, st.name as studio_name, st.reply_to, st.time_zone, s.commission_id, c.title,
-         s.number, '/sheets/' || s.id as go_to, (g.withdrawn_at is not null or s.withdrawn_at is not null) as withdrawn,
+         s.number, '/sheets/' || s.id as go_to, (g.withdrawn_at is not null or s.withdrawn_at is not null or c.deleted_at is not null) as withdrawn,
          coalesce(s.ends_at + make_interval(days => ${SHEET_STAYS_DAYS}) <= now(), false) as ended,
          g.token_hash is distinct from :hash as replaced
     from sheet_guests g
@@ -42,7 +40,7 @@ const GUESTS = `
 
 const RECIPIENTS = `
   select 'delivery' as kind, r.id, r.account_id, r.name, r.studio_id, st.name as studio_name, st.reply_to, st.time_zone, d.commission_id, c.title,
-         d.number, '/deliveries/' || d.id as go_to, (r.withdrawn_at is not null or d.withdrawn_at is not null) as withdrawn,
+         d.number, '/deliveries/' || d.id as go_to, (r.withdrawn_at is not null or d.withdrawn_at is not null or c.deleted_at is not null) as withdrawn,
          d.ends_at <= now() as ended, r.token_hash is distinct from :hash as replaced
     from delivery_recipients r
     join deliveries d on d.id = r.delivery_id join studios st on st.id = r.studio_id join commissions c on c.id = d.commission_id

@@ -2,9 +2,8 @@ import type { Context } from '../../context.ts';
 import type { ListMine, MinePage, MineRow } from '../../contract/guests.ts';
 import { momentKeyOf, momentText } from '../../db/moment-key.ts';
 import { pageOf } from '../../db/page.ts';
-import { sheetState } from '../../domain/sheet-state.ts';
+import { sheetIsOver, sheetState } from '../../domain/sheet-state.ts';
 import type { GuestActor } from '../../middleware/actor.ts';
-import { SHEET_STAYS_DAYS } from './find-link.ts';
 
 interface Row {
   kind: 'sheet' | 'delivery';
@@ -25,13 +24,13 @@ interface Row {
 
 const EVERY_INVITATION = `
   select 'sheet' as kind, s.id, c.title, s.number, st.name as studio, st.time_zone, g.role, g.invited_at, s.issued_at, s.sent_at, s.ends_at,
-         (g.withdrawn_at is not null or s.withdrawn_at is not null) as withdrawn, false as fetched
+         (g.withdrawn_at is not null or s.withdrawn_at is not null or c.deleted_at is not null) as withdrawn, false as fetched
     from sheet_guests g
     join sheets s on s.id = g.sheet_id join studios st on st.id = g.studio_id join commissions c on c.id = s.commission_id
    where g.account_id = :account and s.issued_at is not null
   union all
   select 'delivery', d.id, c.title, d.number, st.name, st.time_zone, null, coalesce(r.invited_at, d.sent_at), d.sent_at, d.sent_at, d.ends_at,
-         (r.withdrawn_at is not null or d.withdrawn_at is not null),
+         (r.withdrawn_at is not null or d.withdrawn_at is not null or c.deleted_at is not null),
          exists (select from downloads w where w.delivery_id = d.id and w.account_id = r.account_id and w.finished_at is not null)
     from delivery_recipients r
     join deliveries d on d.id = r.delivery_id join studios st on st.id = r.studio_id join commissions c on c.id = d.commission_id
@@ -61,9 +60,7 @@ function stateOf(row: Row, now: Date): MineRow['state'] {
 /** A sheet can be looked at for a while after its end, a delivery cannot. */
 function canOpen(row: Row, now: Date): boolean {
   if (row.withdrawn) return false;
-  if (!row.endsAt) return true;
-  const stays = row.kind === 'sheet' ? SHEET_STAYS_DAYS * 24 * 60 * 60 * 1000 : 0;
-  return row.endsAt.getTime() + stays > now.getTime();
+  return row.kind === 'sheet' ? !sheetIsOver(row, now) : row.endsAt === null || row.endsAt > now;
 }
 
 function present(row: Row, now: Date): MineRow {

@@ -17,12 +17,14 @@ interface Wish {
 type Pair = Pick<Wish, 'proofId' | 'accountId'>;
 
 /**
- * Who may mark what, asked in the same statement that marks: an invitation not taken back, a sheet that is open, a proof that lies on it.
+ * Who may mark what, asked in the same statement that marks: an invitation not taken back, a sheet that is open and whose commission is there,
+ * a proof that lies on it.
  * The share lock makes a mark wait for a list that is being sent, and then find the sheet closed.
  */
 const ALLOWED = `
   select p.id as proof_id, g.account_id, s.studio_id
     from sheets s
+    join commissions c on c.id = s.commission_id and c.deleted_at is null
     join unnest(:proofIds::uuid[], :accountIds::uuid[]) as wish (proof_id, account_id) on true
     join sheet_guests g on g.sheet_id = s.id and g.account_id = wish.account_id and g.withdrawn_at is null
     join proofs p on p.sheet_id = s.id and p.id = wish.proof_id
@@ -93,7 +95,13 @@ export async function setMark(ctx: Context, actor: GuestActor, sheetId: string, 
 
 async function refusal(actor: GuestActor, sheetId: string, proofId: string): Promise<Error> {
   const invitation = await SheetGuest.query().findOne({ sheetId, accountId: actor.accountId }).whereNull('withdrawnAt');
-  const sheet = invitation && (await Sheet.query().findById(sheetId).whereNotNull('issuedAt').whereNull('withdrawnAt'));
+  const sheet =
+    invitation &&
+    (await Sheet.query()
+      .findById(sheetId)
+      .whereNotNull('issuedAt')
+      .whereNull('withdrawnAt')
+      .whereExists(Sheet.relatedQuery('commission').whereNull('deletedAt')));
   if (!sheet) return problem(404);
   const state = sheetState(sheet, new Date());
   if (state === 'Sent') return problem(409, 'The picks were sent already; nothing can be changed any more.', { code: 'sent' });

@@ -13,9 +13,11 @@ import { framesOfPick, framesOfPicks } from './picked-frames.ts';
 
 type ListRow = PickList & { sheetNumber: number; latest: boolean; originalsBytes: number; originals: number };
 
+/** Lists go with their commission: while that is deleted, there are none. */
 function listsOf(ctx: Context, scope: StudioScope) {
   return PickList.within(scope)
     .join('sheets', 'sheets.id', 'pickLists.sheetId')
+    .joinRaw('join commissions on commissions.id = pick_lists.commission_id and commissions.deleted_at is null')
     .select(
       'pickLists.*',
       'sheets.number as sheetNumber',
