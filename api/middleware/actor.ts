@@ -1,3 +1,4 @@
+import { sheetIsOver } from '../domain/sheet-state.ts';
 import { Commission } from '../models/Commission.ts';
 import { Delivery } from '../models/Delivery.ts';
 import { DeliveryRecipient } from '../models/DeliveryRecipient.ts';
@@ -40,7 +41,7 @@ export interface Gates {
   staff(role?: 'owner'): Station;
   /** Anybody with a guest session. */
   guest(): Station;
-  /** A guest invited to the sheet named by `:sheetId`; with a role, only that role. Otherwise there is no such sheet. */
+  /** A guest invited to the sheet named by `:sheetId`; with a role, only that role. Otherwise there is no such sheet; 410 once its time is over. */
   guestOfSheet(role?: 'lead'): Station;
   /** A recipient of the delivery named by `:deliveryId`. */
   guestOfDelivery(): Station;
@@ -93,8 +94,11 @@ export function createGates(sessions: Sessions): Gates {
           .whereNotNull('issuedAt')
           .whereNull('withdrawnAt')
           .whereExists(commissionOf('sheets'))
-          .select('id'));
+          .select('id', 'endsAt'));
       if (!invitation || !sheet) throw problem(404);
+      // A session outlives the sheet it was opened for.
+      if (sheetIsOver(sheet, new Date()))
+        throw problem(410, 'The time of this proof sheet is over. Please write to the studio if you still need it.', { code: 'ended' });
       if (role && invitation.role !== role) throw problem(403, 'Only the lead of this sheet may do this.', { code: 'lead-only' });
       req.invitation = invitation;
       next();
