@@ -1,4 +1,4 @@
-import { problem } from './problem.ts';
+import { problem, sqlState } from './problem.ts';
 
 /**
  * Runs a query that goes on behind a cursor. Cursors come back from outside: one that was not made here may hold what the
@@ -9,8 +9,7 @@ export async function behindCursor<T>(rows: PromiseLike<T>): Promise<T> {
   try {
     return await rows;
   } catch (error) {
-    const { nativeError } = error as { nativeError?: { code?: string } };
-    if (nativeError?.code?.startsWith('22')) throw problem(422, 'This cursor is none of ours. Begin at the first page.');
+    if (sqlState(error)?.startsWith('22')) throw problem(422, 'This cursor is none of ours. Begin at the first page.');
     throw error;
   }
 }

@@ -60,8 +60,11 @@ function fromZod(error: ZodError): Problem {
   return invalid(error.issues.map((issue) => ({ path: issue.path.join('.'), message: issue.message })));
 }
 
-function hasCode(error: unknown): error is { code: string; constraint?: string } {
-  return typeof error === 'object' && error !== null && typeof (error as { code?: unknown }).code === 'string';
+/** What PostgreSQL calls an error, also where the models have wrapped it. */
+export function sqlState(error: unknown): string | undefined {
+  const { code, nativeError } = (error ?? {}) as { code?: unknown; nativeError?: { code?: unknown } };
+  const state = nativeError?.code ?? code;
+  return typeof state === 'string' ? state : undefined;
 }
 
 function asProblem(error: unknown): Problem | undefined {
@@ -75,7 +78,9 @@ function asProblem(error: unknown): Problem | undefined {
     return problem(400, 'The request could not be read.');
   if (typeof status === 'number' && status >= 400 && status < 500) return problem(status);
   // Uniqueness is the last word where two requests race: whoever comes second hears it as a state.
-  if (hasCode(error) && error.code === '23505') return problem(409, 'That is there already.', { code: 'there-already' });
+  if (sqlState(error) === '23505') return problem(409, 'That is there already.', { code: 'there-already' });
+  // A text column holds every character but NUL (22021; 22P05 within JSON).
+  if (['22021', '22P05'].includes(sqlState(error) ?? '')) return problem(422, 'The text holds a character that cannot be kept (NUL).');
   return undefined;
 }
 

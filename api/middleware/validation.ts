@@ -27,10 +27,11 @@ export function query(schema: ZodType): Station {
 
 const Id = z.uuid();
 
-/** What is no id names nothing: 404 before the database is asked. */
+/** What is no id names nothing: 404 before the database is asked. One in capitals is the same id, and compared as the database writes it. */
 export function ids(...names: string[]): Station {
   return (req, _res, next) => {
     if (!names.every((name) => Id.safeParse(req.params[name]).success)) throw problem(404);
+    for (const name of names) req.params[name] = String(req.params[name]).toLowerCase();
     next();
   };
 }

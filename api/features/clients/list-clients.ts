@@ -3,6 +3,7 @@ import type { ClientPage, ListClients } from '../../contract/clients.ts';
 import { containing } from '../../db/like.ts';
 import { keyOf, pageOf } from '../../db/page.ts';
 import type { StaffActor } from '../../middleware/actor.ts';
+import { behindCursor } from '../../middleware/forged-cursor.ts';
 import { type ClientLine, presentClientLine } from './presenter.ts';
 
 /** A page of the studio's clients by name. */
@@ -20,7 +21,7 @@ export async function listClients(db: Knex, actor: StaffActor, { search, after, 
     conditions.push('(lower(cl.name), cl.id) > (?, ?::uuid)');
     bindings.push(String(key[0]), String(key[1]));
   }
-  const { rows } = await db.raw<{ rows: (ClientLine & { sortName: string })[] }>(
+  const question = db.raw<{ rows: (ClientLine & { sortName: string })[] }>(
     `select cl.id, cl.name, cl.deleted_at, lower(cl.name) as sort_name,
        (select count(*)::int from contacts k where k.client_id = cl.id) as contact_count,
        (select k.name from contacts k where k.client_id = cl.id order by k.created_at, k.id limit 1) as first_contact,
@@ -28,6 +29,7 @@ export async function listClients(db: Knex, actor: StaffActor, { search, after, 
      from clients cl where ${conditions.join(' and ')} order by lower(cl.name), cl.id limit ?`,
     [...bindings, limit + 1],
   );
+  const { rows } = await behindCursor(question);
   const page = pageOf(rows, limit, (row) => [row.sortName, row.id]);
   return { items: page.items.map(presentClientLine), next: page.next };
 }

@@ -3,6 +3,7 @@ import type { CommissionPage, ListCommissions } from '../../contract/commissions
 import { containing } from '../../db/like.ts';
 import { keyOf, pageOf } from '../../db/page.ts';
 import type { StaffActor } from '../../middleware/actor.ts';
+import { behindCursor } from '../../middleware/forged-cursor.ts';
 import { problem } from '../../middleware/problem.ts';
 import { COMMISSION_FACTS } from './commission-facts.ts';
 import { type CommissionLine, presentCommissionLine } from './presenter.ts';
@@ -61,7 +62,7 @@ export async function listCommissions(db: Knex, actor: StaffActor, input: ListCo
   if (input.deleted === 'true' && actor.role !== 'owner') throw problem(403, 'Only the owner sees deleted commissions.');
   const conditions = conditionsOf(actor, input);
   const { by, key } = ORDERS[input.sort];
-  const { rows } = await db.raw<{ rows: (CommissionLine & { sortKey: string | null })[] }>(
+  const question = db.raw<{ rows: (CommissionLine & { sortKey: string | null })[] }>(
     `select c.id, c.title, c.client_id, cl.name as client_name, c.shot_on, c.due_on, c.created_at, c.deleted_at, ${key} as sort_key,
        facts.state, facts.picks, facts.finals,
        (select count(*)::int from frames f where f.commission_id = c.id and f.deleted_at is null) as frames
@@ -70,6 +71,7 @@ export async function listCommissions(db: Knex, actor: StaffActor, input: ListCo
      order by ${by} limit ?`,
     [...conditions.flatMap(({ bindings }) => bindings), input.limit + 1],
   );
+  const { rows } = await behindCursor(question);
   const page = pageOf(rows, input.limit, (row) => [row.sortKey, row.id]);
   return { items: page.items.map(presentCommissionLine), next: page.next };
 }
