@@ -65,6 +65,11 @@ function SignOut({ name }: { name: string }) {
   );
 }
 
+/** A time that ends at midnight has the day before as its last. */
+function lastDay(endsAt: string, timeZone: string): string {
+  return formatDay(new Date(Date.parse(endsAt) - 1).toISOString(), timeZone);
+}
+
 function MineLine({ row }: { row: MineRow }) {
   const { t } = useTranslation();
   const over = row.state === 'Ended' || row.state === 'Withdrawn';
@@ -85,7 +90,7 @@ function MineLine({ row }: { row: MineRow }) {
       </div>
       <p>{row.studio}</p>
       <p className={over ? 'text-mute' : 'font-bold'}>{t(`mine.state.${row.state}`)}</p>
-      <p className="text-13 text-mute">{row.endsAt && !over ? t('mine.until', { day: formatDay(row.endsAt, row.timeZone) }) : ''}</p>
+      <p className="text-13 text-mute">{row.endsAt && !over ? t('mine.until', { day: lastDay(row.endsAt, row.timeZone) }) : ''}</p>
     </li>
   );
 }
