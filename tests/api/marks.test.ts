@@ -207,7 +207,7 @@ describe('a pick list', () => {
     const { items } = (await made.owner.agent.get(`/api/commissions/${commission.id}/pick-lists`)).body;
     const csv = await made.owner.agent.get(`/api/pick-lists/${items[0].id}/csv`);
     expect(csv.headers['content-type']).toContain('text/csv');
-    expect(csv.text.split('\r\n')[0]).toBe('\uFEFFPick,Proof,View,Frame,Extra,Marked by');
+    expect(csv.text.split('\r\n')[0]).toBe('\uFEFFPick,Proof,View,Frame,Exposures,Frames,Extra,Marked by');
     // OWASP, "CSV Injection": a cell must not begin with = + - @.
     expect(csv.text).not.toMatch(/(^|,|")=/m);
     const names = await made.owner.agent.get(`/api/pick-lists/${items[0].id}/names`);
