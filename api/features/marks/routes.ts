@@ -1,8 +1,8 @@
 import { Router } from 'express';
-import type { SheetMarks } from '../../contract/guest-sheets.ts';
 import { guestOf } from '../../middleware/actor.ts';
 import type { RouteContext } from '../../middleware/route-context.ts';
 import { ids } from '../../middleware/validation.ts';
+import { listMarks } from './list-marks.ts';
 import { setMark } from './set-mark.ts';
 
 /** Marks of guests. The rights to mark are asked by the statement that marks, so the chain needs the guest alone. */
@@ -10,14 +10,7 @@ export function markRoutes({ ctx, gates: { guest, guestOfSheet }, limits: { limi
   const router = Router();
 
   router.get('/guest/sheets/:sheetId/marks', ids('sheetId'), guestOfSheet(), async (req, res) => {
-    const marks = await ctx
-      .knex('marks')
-      .join('sheetGuests', (on) => on.on('sheetGuests.sheetId', 'marks.sheetId').andOn('sheetGuests.accountId', 'marks.accountId'))
-      .where({ 'marks.sheetId': req.params.sheetId })
-      .whereNull('sheetGuests.withdrawnAt')
-      .orderBy(['marks.markedAt', 'marks.proofId'])
-      .select<SheetMarks['marks']>('marks.proofId', 'marks.accountId');
-    res.json({ marks } satisfies SheetMarks);
+    res.json(await listMarks(ctx, req.params.sheetId));
   });
 
   const mark = '/guest/sheets/:sheetId/proofs/:proofId/mark';

@@ -1,3 +1,4 @@
+import type { Knex } from 'knex';
 import type { Context } from '../../context.ts';
 import type { StaffActor } from '../../middleware/actor.ts';
 import { problem } from '../../middleware/problem.ts';
@@ -9,26 +10,7 @@ import { changeProofs } from './change-proofs.ts';
 /** Takes proofs off a sheet. What a guest marked, or a sent list names, stays. */
 export async function takeProofs(ctx: Context, actor: StaffActor, sheetId: string, proofIds: string[]): Promise<Sheet> {
   return changeProofs(ctx, actor, sheetId, async (trx, sheet) => {
-    const kept = await Proof.within(actor, trx)
-      .where({ sheetId })
-      .whereIn('id', proofIds)
-      .where((any) =>
-        any
-          .whereExists(trx('marks').whereRaw('marks.proof_id = proofs.id'))
-          .orWhereExists(trx('picks').whereRaw('picks.proof_id = proofs.id')),
-      )
-      .orderBy('number')
-      .select('number');
-    if (kept.length > 0) {
-      const numbers = kept.map((proof) => proof.number).join(', ');
-      throw problem(
-        409,
-        `Somebody has marked ${kept.length === 1 ? 'proof' : 'proofs'} ${numbers}, so ${kept.length === 1 ? 'it stays' : 'they stay'} on the sheet.`,
-        {
-          code: 'marked',
-        },
-      );
-    }
+    await refuseMarked(trx, sheet, proofIds);
     const taken = await Proof.within(actor, trx).where({ sheetId }).whereIn('id', proofIds).delete();
     if (taken === 0) return;
     await addToRecord(trx, {
@@ -40,4 +22,22 @@ export async function takeProofs(ctx: Context, actor: StaffActor, sheetId: strin
       about: { sheetId, proofs: taken },
     });
   });
+}
+
+/** @throws Problem 409 that names the proofs that somebody has marked */
+async function refuseMarked(trx: Knex.Transaction, sheet: Sheet, proofIds: string[]): Promise<void> {
+  const kept = await Proof.within(sheet, trx)
+    .where({ sheetId: sheet.id })
+    .whereIn('id', proofIds)
+    .where((any) =>
+      any
+        .whereExists(trx('marks').whereRaw('marks.proof_id = proofs.id'))
+        .orWhereExists(trx('picks').whereRaw('picks.proof_id = proofs.id')),
+    )
+    .orderBy('number')
+    .select('number');
+  if (kept.length === 0) return;
+  const numbers = kept.map((proof) => proof.number).join(', ');
+  const [proofs, stay] = kept.length === 1 ? ['proof', 'it stays'] : ['proofs', 'they stay'];
+  throw problem(409, `Somebody has marked ${proofs} ${numbers}, so ${stay} on the sheet.`, { code: 'marked' });
 }

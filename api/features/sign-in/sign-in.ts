@@ -30,6 +30,7 @@ export async function signIn(ctx: Context, { email, password }: SignIn): Promise
   return { accountId: account.id, passwordHash: await renewed(ctx, account.id, account.passwordHash, password) };
 }
 
+/** One answer for whatever is wrong, so that nobody learns which addresses have an account. */
 export function refused() {
   return problem(
     401,
