@@ -38,6 +38,7 @@ export function inThirds(stops: number): number {
   return nearer === 0 ? 0 : nearer;
 }
 
+/** Each value less the one before it. */
 export function differences(values: readonly number[]): number[] {
   return values.slice(1).map((value, index) => value - (values[index] as number));
 }
