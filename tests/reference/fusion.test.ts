@@ -24,7 +24,7 @@ const EXPOSURE_ALONE = { contrast: 0, saturation: 0 };
 let scene: Scene;
 let frames: RawPicture[];
 
-const place = (pictures: RawPicture[]) => pictures.map((picture) => ({ picture, shift: { x: 0, y: 0 }, trust: null }));
+const place = (pictures: RawPicture[]) => pictures.map((picture) => ({ picture, shift: { x: 0, y: 0 }, patch: null }));
 const fused = (pictures: RawPicture[], rule: FusionConventions) => fuse(place(pictures), rule);
 
 /* eslint-disable @typescript-eslint/no-explicit-any -- the package's own types do not know MergeMertens */

@@ -1,7 +1,7 @@
 import type { RawPicture } from '../upright.ts';
 import { alignExposures, type GreyExposure } from './align/align-exposures.ts';
 import { greyOf, greyScale, type Grey } from './align/grey-pyramid.ts';
-import { referenceOf, trustMap } from './align/trust-map.ts';
+import { patchFor, referenceOf } from './align/patch.ts';
 import { PAPER, type FusionConventions } from './fusion/conventions.ts';
 import { fuse } from './fusion/fuse.ts';
 
@@ -50,25 +50,25 @@ function findable({ picture, ev }: Exposure, index: number): GreyExposure {
   return { index, ev, scale: greyScale(picture), grey: greyOf(picture), fine: () => (fine ??= greyOf(picture, 1)) };
 }
 
-/** How the frames of one size lie over the lead frame, and how far each is believed; none for one that cannot be laid over it. */
+/** How the frames of one size lie over the lead frame, and what is patched in them; none for one that cannot be laid over it. */
 function place(exposures: Exposure[], indexes: number[], lead: number, { align = true, deghost = true }: MergeOptions) {
   const greys = indexes.map((index) => findable(exposures[index]!, index));
   const first = greys.find(({ index }) => index === lead)!;
   const scale = greyScale(exposures[lead]!.picture);
   const shifts = align ? alignExposures(greys, first) : new Map(indexes.map((index) => [index, { x: 0, y: 0 }]));
-  const reference = deghost ? referenceOf(first.grey) : null;
+  const reference = deghost ? referenceOf(exposures[lead]!.picture, first.grey) : null;
   return greys.map(({ index, grey }) => {
     const found = shifts.get(index);
     if (!found) return { index, frame: null };
-    const trust = reference && index !== lead ? trustMap(reference, grey, found, scale) : null;
+    const patch = reference && index !== lead ? patchFor(reference, grey, found, scale) : null;
     const shift = { x: Math.round(found.x * scale) + 0, y: Math.round(found.y * scale) + 0 };
-    return { index, frame: { picture: exposures[index]!.picture, shift, trust } };
+    return { index, frame: { picture: exposures[index]!.picture, shift, patch } };
   });
 }
 
 /**
  * Merges the frames of a bracket into one picture that lies exactly over the lead frame: exposure fusion (`fuse`) of what could be aligned by
- * translation (`alignExposures`), what moved being taken from the lead frame (`trustMap`). Where a frame does not reach after it was moved it has no weight there.
+ * translation (`alignExposures`), what moved being taken from the lead frame (`patchFor`). Where a frame does not reach after it was moved it has no weight there.
  * @param lead Place in the list of the frame that the others are laid over; it always takes part, alone where no other can.
  * @throws RangeError where there is no frame at that place.
  */

@@ -14,10 +14,12 @@ const ALIKE = 0.6;
 const STRONG_TEXTURE = 6;
 /** Tiles agree that lie so near to their median. */
 const AGREEING = 1.2;
+/** So far around what was found in the grey copy it is looked for on the pixels themselves. */
+const NEARBY = 4;
 /** So many tiles say something about a picture. */
 const LEAST_TILES = 4;
 /** So many of them must agree; people, trees and water may move in the others. */
-const MAJORITY = 0.5;
+const MAJORITY = 0.6;
 
 /** Where a correlation of three places in a row is highest, from the middle one: a parabola through them. */
 function peak(before: number, middle: number, after: number): number {
@@ -25,25 +27,41 @@ function peak(before: number, middle: number, after: number): number {
   return bend >= 0 ? 0 : Math.max(-0.5, Math.min(0.5, (0.5 * (before - after)) / bend));
 }
 
-/** Climbs to where a tile is most alike; nothing where it is nowhere near, `lost` where it should have been. */
-function findTile(first: Grey, second: Grey, tile: Tile, { x, y }: Shift): Shift | 'lost' | null {
+/** How alike two pictures are at a shift of whole pixels. */
+type Score = (dx: number, dy: number) => number;
+
+/** A score that is worked out once for each shift. */
+function remembered(score: Score): Score {
   const known = new Map<string, number>();
-  const at = (dx: number, dy: number): number => {
+  return (dx, dy) => {
     const key = `${dx} ${dy}`;
-    const value = known.get(key) ?? correlation(first, second, tile, dx, dy);
+    const value = known.get(key) ?? score(dx, dy);
     known.set(key, value);
     return value;
   };
-  let [dx, dy] = [x, y];
+}
+
+/** Climbs from shift to shift to where the score is highest; nothing where that leads out of reach. */
+function climb(from: Shift, score: Score): Shift | null {
+  let best = from;
   for (;;) {
-    const around = [-1, 0, 1].flatMap((row) => [-1, 0, 1].map((column) => [dx + column, dy + row] as const));
-    const [bestX, bestY] = around.reduce((best, place) => (at(...place) > at(...best) ? place : best), [dx, dy] as const);
-    if (bestX === dx && bestY === dy) break;
-    [dx, dy] = [bestX, bestY];
-    if (Math.abs(dx - x) >= REACH || Math.abs(dy - y) >= REACH) return 'lost';
+    const { x, y } = best;
+    const around = [-1, 0, 1].flatMap((row) => [-1, 0, 1].map((column) => ({ x: x + column, y: y + row })));
+    const next = around.reduce((one, other) => (score(other.x, other.y) > score(one.x, one.y) ? other : one), best);
+    if (next === best) return best;
+    best = next;
+    if (Math.abs(best.x - from.x) >= REACH || Math.abs(best.y - from.y) >= REACH) return null;
   }
-  if (at(dx, dy) < ALIKE) return tile.texture >= STRONG_TEXTURE ? 'lost' : null;
-  return { x: dx + peak(at(dx - 1, dy), at(dx, dy), at(dx + 1, dy)), y: dy + peak(at(dx, dy - 1), at(dx, dy), at(dx, dy + 1)) };
+}
+
+/** Where a tile is most alike, to parts of a pixel; nothing where it is nowhere alike, `lost` where it should have been. */
+function findTile(first: Grey, second: Grey, tile: Tile, near: Shift): Shift | 'lost' | null {
+  const at = remembered((dx, dy) => correlation(first, second, tile, dx, dy));
+  const place = climb(near, at);
+  if (!place) return 'lost';
+  const { x, y } = place;
+  if (at(x, y) < ALIKE) return tile.texture >= STRONG_TEXTURE ? 'lost' : null;
+  return { x: x + peak(at(x - 1, y), at(x, y), at(x + 1, y)), y: y + peak(at(x, y - 1), at(x, y), at(x, y + 1)) };
 }
 
 const median = (values: number[]) => [...values].sort((a, b) => a - b)[values.length >> 1] ?? 0;
@@ -79,13 +97,22 @@ export interface Findable {
   scale: number;
 }
 
-/** Halves of pixels are lost in a grey copy, so what is moved at all is measured again on the pixels themselves. */
+/** Halves of pixels are lost in a grey copy, so what is moved at all is measured again on the pixels themselves, by all tiles together. */
 function refined(first: Findable, second: Findable, found: Shift): Shift {
-  const still = Math.abs(found.x) < 0.2 && Math.abs(found.y) < 0.2;
-  if (first.scale === 1 || still) return found;
+  if (Math.abs(found.x) < 0.2 && Math.abs(found.y) < 0.2) return found;
+  const [one, two] = [first.fine(), second.fine()];
   const near = { x: Math.round(found.x * first.scale), y: Math.round(found.y * first.scale) };
-  const { tiles, agreeing, shift } = vote(first.fine(), second.fine(), near);
-  return tiles >= LEAST_TILES && agreeing >= MAJORITY * tiles ? { x: shift.x / first.scale, y: shift.y / first.scale } : found;
+  const tiles = texturedTiles(one, two, near, REACH);
+  const together = (dx: number, dy: number) => tiles.reduce((sum, tile) => sum + correlation(one, two, tile, dx, dy), 0);
+  // All of them are tried: where edges slant, one peak does not lead to the next.
+  let [place, most] = [near, together(near.x, near.y)];
+  for (let y = near.y - NEARBY; y <= near.y + NEARBY; y++) {
+    for (let x = near.x - NEARBY; x <= near.x + NEARBY; x++) {
+      const score = together(x, y);
+      if (score > most) [place, most] = [{ x, y }, score];
+    }
+  }
+  return { x: place.x / first.scale, y: place.y / first.scale };
 }
 
 /**
@@ -101,5 +128,6 @@ export function alignPair(first: Findable, second: Findable): Verdict {
   const counted = votes.map((near) => voteAgain(one, two, vote(one, two, near)));
   const best = counted.reduce((before, after) => (after.agreeing > before.agreeing ? after : before));
   if (best.tiles < LEAST_TILES) return { is: 'unknown' };
-  return best.agreeing >= MAJORITY * best.tiles ? { is: 'aligned', shift: refined(first, second, best.shift) } : { is: 'moved' };
+  const most = best.agreeing >= LEAST_TILES && best.agreeing >= MAJORITY * best.tiles;
+  return most ? { is: 'aligned', shift: refined(first, second, best.shift) } : { is: 'moved' };
 }
