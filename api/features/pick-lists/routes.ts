@@ -1,10 +1,10 @@
 import contentDisposition from 'content-disposition';
 import { Router } from 'express';
-import { SendPickList, type SentPickList } from '../../contract/guest-sheets.ts';
+import { SendPickList } from '../../contract/guest-sheets.ts';
 import { guestOf, invitationOf, staffOf } from '../../middleware/actor.ts';
 import type { RouteContext } from '../../middleware/route-context.ts';
 import { body, ids } from '../../middleware/validation.ts';
-import { PickList } from '../../models/PickList.ts';
+import { listSent, presentSent } from './list-sent.ts';
 import { listPickLists, loadPickList } from './load-pick-list.ts';
 import { sendPickList } from './send-pick-list.ts';
 import { pickListCsv, pickListNames } from './write-csv.ts';
@@ -29,12 +29,7 @@ export function pickListRoutes({ ctx, gates: { staff, guestOfSheet }, limits: { 
   });
 
   router.get('/guest/sheets/:sheetId/pick-lists', ids('sheetId'), guestOfSheet(), async (req, res) => {
-    const lists = await PickList.within(invitationOf(req))
-      .where({ sheetId: req.params.sheetId })
-      .orderBy('number', 'desc')
-      .withGraphFetched('picks')
-      .modifyGraph('picks', (picks) => picks.orderBy('number').select('proofId', 'pickListId'));
-    res.json({ items: lists.map(presentSent) });
+    res.json({ items: await listSent(invitationOf(req)) });
   });
   router.post(
     '/guest/sheets/:sheetId/pick-lists',
@@ -49,19 +44,4 @@ export function pickListRoutes({ ctx, gates: { staff, guestOfSheet }, limits: { 
     },
   );
   return router;
-}
-
-function presentSent(list: PickList): SentPickList {
-  return {
-    number: list.number,
-    sentAt: list.sentAt.toISOString(),
-    sentBy: list.sentByName,
-    words: list.words,
-    picks: list.pickCount,
-    allowance: list.allowance,
-    extras: list.extraCount,
-    extraPrice: list.extraPrice,
-    currency: list.currency,
-    proofIds: (list.picks ?? []).map((pick) => pick.proofId),
-  };
 }
