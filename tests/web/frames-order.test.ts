@@ -1,32 +1,8 @@
 import { describe, expect, it } from 'vitest';
-import type { FrameItem } from '../../api/contract/frames.ts';
 import { arrange, type FrameWish } from '../../web/src/features/frames/frame-order.ts';
+import { frame } from './frames-support.ts';
 
 const WISH: FrameWish = { sort: 'taken', descending: false, shown: 'visible', group: 'all', view: '', text: '' };
-
-function frame(name: string, more: Partial<FrameItem> = {}): FrameItem {
-  return {
-    id: name,
-    name: `${name}.jpg`,
-    state: 'ready',
-    problem: null,
-    width: 6000,
-    height: 4000,
-    placeholder: null,
-    pictures: null,
-    viewId: null,
-    hidden: false,
-    takenLocal: null,
-    fNumber: null,
-    exposureTime: null,
-    iso: null,
-    focalLength: null,
-    bracketId: null,
-    checks: [],
-    alike: null,
-    ...more,
-  };
-}
 
 const DUSK = frame('HL_0412', { takenLocal: '2026-10-28T17:06:12.34', fNumber: 11, exposureTime: 0.25, iso: 100, focalLength: 35 });
 const LATER = frame('HL_0413', { takenLocal: '2026-10-28T17:06:12.9', fNumber: 8, exposureTime: 1 / 125, iso: 1000, focalLength: 24 });
