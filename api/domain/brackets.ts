@@ -12,5 +12,15 @@ export type { BracketCandidate, FoundBracket } from './brackets/candidate.ts';
  * depends on the set of frames alone, not on their order, and comes in the order the brackets were taken.
  */
 export function groupBrackets(frames: readonly BracketCandidate[]): FoundBracket[] {
-  return rowsOf(frames).map(completeRow).flatMap(splitRow).map(describeBracket);
+  const steps = groupInSteps(frames);
+  let step = steps.next();
+  while (!step.done) step = steps.next();
+  return step.value;
+}
+
+/** The same, in steps between which others may have their turn: ten thousand frames, one a second, take many seconds. */
+export function* groupInSteps(frames: readonly BracketCandidate[]): Generator<void, FoundBracket[]> {
+  const found: FoundBracket[] = [];
+  for (const row of rowsOf(frames)) found.push(...(yield* splitRow(completeRow(row))).map(describeBracket));
+  return found;
 }

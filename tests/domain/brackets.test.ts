@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { groupBrackets, type BracketCandidate } from '../../api/domain/brackets.ts';
+import { groupBrackets, groupInSteps, type BracketCandidate } from '../../api/domain/brackets.ts';
 import { Chance } from '../support/shoots/chance.ts';
 import { drawPlace, thumbOf } from '../support/shoots/scenery.ts';
 
@@ -256,4 +256,15 @@ describe('The pictures', () => {
     const broken = inARow(THREE, () => ({ thumb: '***' }));
     expect(sets(broken)).toEqual(asSets(broken));
   });
+});
+
+it('Thousands of frames in one row are grouped in as many steps, so that whoever asks can do something else in between', () => {
+  const frames = inARow(Array.from({ length: 2000 }, (_, index) => THREE[index % 3] as number));
+  const steps = groupInSteps(frames);
+  let count = 0;
+  let step = steps.next();
+  for (; !step.done; step = steps.next()) count += 1;
+  expect(count).toBeGreaterThanOrEqual(frames.length);
+  expect(step.value).toEqual(groupBrackets(frames));
+  expect(step.value.length).toBeGreaterThan(600);
 });

@@ -11,9 +11,9 @@ interface Split {
 
 /**
  * Cuts a row of exposures into brackets and frames that stand alone, so that the brackets together are worth most: two brackets of one view in
- * a row are two. Answers the brackets, in order.
+ * a row are two. Answers the brackets, in order, after one step for each exposure.
  */
-export function splitRow(row: Row): Row[] {
+export function* splitRow(row: Row): Generator<void, Row[]> {
   const compare = rememberedLikeness();
   const best: Split[] = [{ worth: 0, length: 0 }];
   for (let end = 1; end <= row.length; end++) {
@@ -26,6 +26,7 @@ export function splitRow(row: Row): Row[] {
       if (worth > 0 && total > split.worth + 1e-9) split = { worth: total, length };
     }
     best.push(split);
+    yield;
   }
   return cutBackwards(row, best);
 }

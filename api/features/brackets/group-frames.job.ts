@@ -1,5 +1,6 @@
+import { setImmediate } from 'node:timers/promises';
 import { raw, type Transaction } from 'objection';
-import { groupBrackets, type FoundBracket } from '../../domain/brackets.ts';
+import { groupInSteps, type BracketCandidate, type FoundBracket } from '../../domain/brackets.ts';
 import type { Job } from '../../jobs/job.ts';
 import { Bracket } from '../../models/Bracket.ts';
 import { Commission } from '../../models/Commission.ts';
@@ -40,7 +41,7 @@ async function regroup(trx: Transaction, commission: Commission): Promise<void> 
   // A bracket with a frame that is left alone is left alone as a whole.
   const free = frames.filter(({ bracketId }) => bracketId === null || open.has(bracketId));
   const there = [...open.values()].filter(({ id }) => free.some(({ bracketId }) => bracketId === id));
-  const found = groupBrackets(free.map(candidateOf));
+  const found = await groupWithPauses(free.map(candidateOf));
   const { kept, gone } = matchBrackets(found, there, free);
   const frameOf = new Map(free.map((frame) => [frame.id, frame]));
   for (const bracket of gone) {
@@ -48,6 +49,21 @@ async function regroup(trx: Transaction, commission: Commission): Promise<void> 
     await dissolveBracket(trx, bracket);
   }
   for (const [one, bracket] of kept) if (!isAsFound(one, bracket, frameOf)) await bringAbout(trx, commission, one, bracket);
+}
+
+/** Milliseconds at a stretch; a worker that gives no sign of life for long is taken for dead, and its jobs are begun again by others. */
+const A_STRETCH = 50;
+
+/** Groups frames, and lets everything else the worker does have its turn in between. */
+async function groupWithPauses(frames: BracketCandidate[]): Promise<FoundBracket[]> {
+  const steps = groupInSteps(frames);
+  let begun = Date.now();
+  for (let step = steps.next(); ; step = steps.next()) {
+    if (step.done) return step.value;
+    if (Date.now() - begun < A_STRETCH) continue;
+    await setImmediate();
+    begun = Date.now();
+  }
 }
 
 /** Measured frames that neither a person nor a client's eyes have settled, held. */
