@@ -35,14 +35,19 @@ const commission = () => makeCommission(ours.studio);
 const picture = () => drawPicture(900, 600, ++seed);
 const tools = { signal: new AbortController().signal, attempt: 1, lastAttempt: false };
 
-async function beginOne(file: Buffer): Promise<UploadAnswer> {
-  return (await begin(ours.owner, (await commission()).id, file)).body as UploadAnswer;
+async function beginOne(file: Buffer, by = ours): Promise<UploadAnswer> {
+  return (await begin(by.owner, (await makeCommission(by.studio)).id, file)).body as UploadAnswer;
 }
 const ask = async (id: string) => (await ours.owner.agent.get(`/api/uploads/${id}`)).body as UploadAnswer;
 const complete = (id: string) => ours.owner.agent.post(`/api/uploads/${id}/complete`);
 
 /** Begins to send a part by hand and leaves the rest to the test. */
-function openPart(upload: UploadAnswer, number: number, bytes: Buffer): { request: ClientRequest; answer: Promise<IncomingMessage> } {
+function openPart(
+  upload: UploadAnswer,
+  number: number,
+  bytes: Buffer,
+  by = ours,
+): { request: ClientRequest; answer: Promise<IncomingMessage> } {
   const head = Buffer.from(
     '--edge\r\nContent-Disposition: form-data; name="part"; filename="part"\r\nContent-Type: application/octet-stream\r\n\r\n',
   );
@@ -51,7 +56,7 @@ function openPart(upload: UploadAnswer, number: number, bytes: Buffer): { reques
     headers: {
       'Content-Type': 'multipart/form-data; boundary=edge',
       'Content-Length': head.length + bytes.length + '\r\n--edge--\r\n'.length,
-      Cookie: ours.owner.cookie.split(';')[0],
+      Cookie: by.owner.cookie.split(';')[0],
     },
   });
   const answer = new Promise<IncomingMessage>((resolve, reject) => {
@@ -170,13 +175,19 @@ describe('while the line to the browser fails', () => {
 
   it('holds no more parts in memory than it may, and asks the next to wait', async () => {
     const file = randomBytes(PART);
-    const upload = await beginOne(file);
-    const open = Array.from({ length: 12 }, () => openPart(upload, 1, file));
-    for (const { request } of open) request.write(file.subarray(0, 1000));
-    await pause(1500);
-    const refused = await sendPart(ours.owner, upload, file, 1);
-    expect(refused.status).toBe(503);
-    expect(refused.headers['retry-after']).toBe('1');
+    const theirs = await makeStudio(house, { name: 'Quay Street Pictures' });
+    const [upload, another] = [await beginOne(file), await beginOne(file, theirs)];
+    const hold = async (made: MadeStudio, to: UploadAnswer, count: number) => {
+      const begun = Array.from({ length: count }, () => openPart(to, 1, file, made));
+      for (const { request } of begun) request.write(file.subarray(0, 1000));
+      await pause(1500);
+      const refused = await sendPart(made.owner, to, file, 1);
+      expect(refused.status).toBe(503);
+      expect(refused.headers['retry-after']).toBe('1');
+      return begun;
+    };
+    // One studio never has them all: what it leaves is the others'.
+    const open = [...(await hold(ours, upload, 8)), ...(await hold(theirs, another, 4))];
     for (const { request } of open) {
       request.write(file.subarray(1000));
       request.end('\r\n--edge--\r\n');

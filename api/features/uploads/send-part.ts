@@ -8,12 +8,19 @@ import { isUnknownUpload, openMultipart, partCount, partLength } from './upload-
 
 /** Parts that this process holds in memory at the same time, at most: 12 of 8 MiB are 96 MiB. */
 const MOST_IN_FLIGHT = 12;
-let inFlight = 0;
+/** Two browsers' worth. A studio on a slow line, or one that means harm, leaves room for the others. */
+const MOST_OF_A_STUDIO = 8;
+/** The studio of each part in flight. */
+const inFlight: string[] = [];
 
 function notReceiving(upload: Upload): Problem {
   return problem(409, upload.state === 'done' || upload.state === 'checking' ? 'This upload is complete.' : 'This upload has ended.', {
     code: `upload-${upload.state}`,
   });
+}
+
+function hasRoom({ studioId }: Upload): boolean {
+  return inFlight.length < MOST_IN_FLIGHT && inFlight.filter((one) => one === studioId).length < MOST_OF_A_STUDIO;
 }
 
 /** Keeps an upload that still receives from being cleared away, and notices one that has ended meanwhile. */
@@ -46,8 +53,8 @@ export async function sendPart(ctx: Context, upload: Upload, number: number, req
   if (!Number.isInteger(number) || number < 1 || number > partCount(upload)) {
     throw problem(404, `This file has the parts 1 to ${partCount(upload)}.`);
   }
-  if (inFlight >= MOST_IN_FLIGHT) throw problem(503, 'Many parts are on their way just now.', { retryAfter: 1 });
-  inFlight += 1;
+  if (!hasRoom(upload)) throw problem(503, 'Many parts are on their way just now.', { retryAfter: 1 });
+  inFlight.push(upload.studioId);
   try {
     const { multipartId } = upload.multipartId === null ? await openMultipart(ctx, upload) : upload;
     if (multipartId === null) throw notReceiving(upload);
@@ -56,6 +63,6 @@ export async function sendPart(ctx: Context, upload: Upload, number: number, req
     await touch(upload);
     return { number, size };
   } finally {
-    inFlight -= 1;
+    inFlight.splice(inFlight.indexOf(upload.studioId), 1);
   }
 }
