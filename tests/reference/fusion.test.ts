@@ -4,7 +4,7 @@ import { createRequire } from 'node:module';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
 import { ssim } from 'ssim.js';
-import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { afterAll, beforeAll, describe, expect, it, vi } from 'vitest';
 import { type Exposure, mergeExposures } from '../../api/imaging/merge/merge-exposures.ts';
 import { type FusionConventions, OPENCV, PAPER } from '../../api/imaging/merge/fusion/conventions.ts';
 import { fuse } from '../../api/imaging/merge/fusion/fuse.ts';
@@ -17,6 +17,8 @@ import { BRIDGE, expose, photographLight, type Scene } from '../support/exposure
  * @techstark/opencv-js 4.12.0-release.1) under its conventions, and against Debian's enfuse 4.2, which adds its weights up
  * instead of multiplying them and is therefore the same for grey frames weighed by exposure alone.
  */
+// Whole photographs are merged, and compared by tools that take their time.
+vi.setConfig({ testTimeout: 120_000 });
 const folder = mkdtempSync(path.join(tmpdir(), 'oriel-fusion-'));
 afterAll(() => rmSync(folder, { recursive: true, force: true }));
 
