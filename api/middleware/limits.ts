@@ -23,6 +23,8 @@ const LIMITS = {
   'new-link': { points: 5, seconds: 60 * 60 },
   send: { points: 20, seconds: 60 * 60 },
   upload: { points: 6000, seconds: 60, here: true },
+  /** Pixels that somebody waits for: each costs a child a good part of a second and this process megabytes meanwhile. */
+  'watermark-picture': { points: 120, seconds: 60, here: true },
   mark: { points: 600, seconds: 60, here: true },
   download: { points: 600, seconds: 60, here: true },
 } satisfies Record<string, Limit>;

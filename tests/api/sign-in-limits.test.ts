@@ -1,5 +1,6 @@
 import { afterAll, beforeAll, expect, it } from 'vitest';
 import { newToken } from '../../api/features/guests/tokens.ts';
+import { makeStudio } from '../support/factories/studio.ts';
 import { type House, startHouse } from '../support/house.ts';
 
 let house: House;
@@ -29,6 +30,14 @@ it('limits guesses at links, requests for resets and sign-ups', async () => {
   const signUp = (nth: number) =>
     post('/api/sign-up', { studioName: 'S', name: 'N', email: `n${nth}@example.test`, password: 'four or five words here' });
   expect(await statuses(2, signUp)).toEqual([202, 429]);
+});
+
+it('limits the pictures of a watermark that one account has made, and no other account’s', async () => {
+  const { owner, assistant } = await makeStudio(house);
+  const send = ({ agent }: typeof owner) => agent.post('/api/studio/watermark-images');
+  const answers = await statuses(13, () => send(owner));
+  expect(answers).toEqual([...Array.from({ length: 12 }, () => 422), 429]);
+  expect((await send(assistant)).status).toBe(422);
 });
 
 it('keeps no address of a person among the counts', async () => {

@@ -27,11 +27,11 @@ export function watermarkRoutes({ ctx, gates: { staff }, limits: { limit } }: Ro
     res.json(watermark);
   });
 
-  router.post('/studio/watermark-images', staff(), limit('upload'), image, async (req, res) => {
+  router.post('/studio/watermark-images', staff(), limit('watermark-picture'), image, async (req, res) => {
     if (!req.file) throw problem(422, 'Choose a PNG.');
     res.status(201).json(await keepImage(ctx, staffOf(req), req.file.buffer));
   });
-  router.post('/studio/watermark-previews', staff(), limit('upload'), body(PreviewWatermark), async (req, res) => {
+  router.post('/studio/watermark-previews', staff(), limit('watermark-picture'), body(PreviewWatermark), async (req, res) => {
     const wish: PreviewWatermark = req.body;
     res.type('image/jpeg').end(await previewWatermark(ctx, staffOf(req), wish));
   });
