@@ -3,9 +3,8 @@ import type { Context } from '../../context.ts';
 import type { ArrangedBracket } from '../../domain/brackets/arrange.ts';
 import { FEWEST_EXPOSURES } from '../../domain/brackets/candidate.ts';
 import { DERIVATIVE_SIZES } from '../../imaging/derivative-sizes.ts';
-import { PixelsFailure } from '../../imaging/pixels/pixels.ts';
-import { Refusal } from '../../imaging/refusal.ts';
-import type { Job, JobTools } from '../../jobs/job.ts';
+import { isInVain } from '../../jobs/in-vain.ts';
+import type { Job } from '../../jobs/job.ts';
 import { Bracket } from '../../models/Bracket.ts';
 import type { Frame } from '../../models/Frame.ts';
 import { Proof } from '../../models/Proof.ts';
@@ -17,8 +16,6 @@ import { framesOfBrackets } from './bracket-frames.ts';
 import { holdSheets } from './hold-commission.ts';
 import { queueDrop } from './queue-grouping.ts';
 
-/** A merge that ends its process, or takes too long, so many times is given up. */
-const MOST_FAILURES = 3;
 const ALONE = 'No other frame could be laid over the lead frame, so that stands alone.';
 const FAILED = 'The frames could not be merged.';
 
@@ -37,16 +34,12 @@ export const mergeBracket: Job<{ bracketId: string }> = {
     try {
       await merge(ctx, bracket, arranged);
     } catch (error) {
-      if (tools.signal.aborted || !isFinal(error, tools)) throw error;
+      if (tools.signal.aborted || !isInVain(error, tools)) throw error;
       ctx.log.warn({ bracketId, err: error }, 'a bracket could not be merged');
       await conclude(bracket, { problem: FAILED, leftOut: [] });
     }
   },
 };
-
-function isFinal(error: unknown, { attempt, lastAttempt }: JobTools): boolean {
-  return lastAttempt || error instanceof Refusal || (error instanceof PixelsFailure && attempt >= MOST_FAILURES);
-}
 
 async function merge(ctx: Context, bracket: Bracket, { frames, steps }: ArrangedBracket<Frame>): Promise<void> {
   const pictures = await Promise.all(

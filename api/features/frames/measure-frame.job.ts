@@ -1,15 +1,11 @@
 import type { Context } from '../../context.ts';
 import { type FrameMeasures, MEASURES_RECIPE } from '../../domain/frame-measures.ts';
-import { PixelsFailure } from '../../imaging/pixels/pixels.ts';
-import { Refusal } from '../../imaging/refusal.ts';
+import { isInVain } from '../../jobs/in-vain.ts';
 import type { Job, JobTools } from '../../jobs/job.ts';
 import { Frame } from '../../models/Frame.ts';
 import { FrameMeasure } from '../../models/FrameMeasure.ts';
 import { frameKey } from '../../services/storage-keys.ts';
 import { queueGrouping } from '../brackets/queue-grouping.ts';
-
-/** A picture that ends its process, or takes too long, so many times stays unmeasured. */
-const MOST_FAILURES = 3;
 
 /**
  * Measures a frame on its largest picture, and has its commission grouped. A frame that cannot be measured is judged by its settings alone.
@@ -34,8 +30,7 @@ async function measure(ctx: Context, frame: Frame, tools: JobTools): Promise<Fra
   try {
     return await ctx.pixels.measure(await ctx.store.getBuffer(frameKey(frame, 2560)));
   } catch (error) {
-    const inVain = tools.lastAttempt || error instanceof Refusal || (error instanceof PixelsFailure && tools.attempt >= MOST_FAILURES);
-    if (tools.signal.aborted || !inVain) throw error;
+    if (tools.signal.aborted || !isInVain(error, tools)) throw error;
     ctx.log.warn({ frameId: frame.id, err: error }, 'a frame could not be measured');
     return null;
   }

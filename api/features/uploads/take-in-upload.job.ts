@@ -1,15 +1,12 @@
 import type { Context } from '../../context.ts';
-import { PixelsFailure } from '../../imaging/pixels/pixels.ts';
 import { Refusal } from '../../imaging/refusal.ts';
+import { failedTooOften } from '../../jobs/in-vain.ts';
 import type { Job, JobTools } from '../../jobs/job.ts';
 import { Upload } from '../../models/Upload.ts';
 import { takeInFinal } from '../finals/take-in-final.ts';
 import { endUpload } from './cancel-upload.ts';
 import { withUploadedFile } from './fetch-upload.ts';
 import { storePictures, takeInFrame } from './take-in-frame.ts';
-
-/** A picture that ends its process, or takes too long, so many times is refused. */
-const MOST_FAILURES = 3;
 
 async function takeIn(ctx: Context, upload: Upload, signal: AbortSignal): Promise<void> {
   if (upload.purpose === 'frame') {
@@ -32,7 +29,7 @@ async function takeIn(ctx: Context, upload: Upload, signal: AbortSignal): Promis
 /** What the person is told where trying again would be in vain; undefined where it may help. */
 function sentenceFor(error: unknown, tools: JobTools): string | undefined {
   if (error instanceof Refusal) return error.message;
-  if (error instanceof PixelsFailure && tools.attempt >= MOST_FAILURES) {
+  if (failedTooOften(error, tools)) {
     return 'The picture could not be read in the time it may take. Export it again, smaller if it is very large.';
   }
   if ((error as { name?: string }).name === 'NoSuchKey') return 'The file is no longer in the store. Upload it again.';
