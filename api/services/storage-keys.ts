@@ -1,9 +1,10 @@
 import { randomUUID } from 'node:crypto';
+import type { DerivativeSize } from '../imaging/derivative-sizes.ts';
 
 /** Version of the recipe that derivatives are made by; part of their keys, so that a new recipe never meets an old picture. */
 export const RECIPE = 1;
 
-export type DerivativeSize = 480 | 960 | 2560;
+export type { DerivativeSize };
 
 const commission = (studioId: string, commissionId: string) => `studios/${studioId}/commissions/${commissionId}`;
 

@@ -1,4 +1,5 @@
 import type { Context } from '../../context.ts';
+import { DERIVATIVE_SIZES } from '../../imaging/derivative-sizes.ts';
 import type { Job } from '../../jobs/job.ts';
 import { DeliveryFile } from '../../models/DeliveryFile.ts';
 import { Final } from '../../models/Final.ts';
@@ -30,7 +31,7 @@ export const sweepFinals: Job = {
 };
 
 async function letGo(ctx: Context, version: Removed): Promise<void> {
-  const pictures = ([480, 960, 2560] as const).map((size) => finalKey(version, version.commissionId, size));
+  const pictures = DERIVATIVE_SIZES.map((size) => finalKey(version, version.commissionId, size));
   await ctx.store.remove(version.storageKey, webSizeKey(version, version.commissionId), ...pictures);
   await FinalVersion.query(ctx.knex).deleteById(version.id);
 }

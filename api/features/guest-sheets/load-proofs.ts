@@ -7,7 +7,7 @@ import { problem } from '../../middleware/problem.ts';
 import { Sheet } from '../../models/Sheet.ts';
 import { View } from '../../models/View.ts';
 import { pictureAddress, windowAt } from '../../services/picture-address.ts';
-import { proofKey } from '../../services/storage-keys.ts';
+import { type DerivativeSize, proofKey } from '../../services/storage-keys.ts';
 import { type BracketExposures, exposuresOfProofs } from '../brackets/count-exposures.ts';
 import { exposuresOf, shownPicture } from '../brackets/shown-picture.ts';
 import { type ProofWithPicture, proofsInOrder } from '../sheets/presenter.ts';
@@ -67,7 +67,7 @@ async function presentProof(
 ): Promise<GuestProof> {
   const { frame, bracket } = proof;
   const shown = shownPicture(frame, bracket);
-  const address = (size: 480 | 960 | 2560) => pictureAddress(ctx, proofKey(proof, sheet.commissionId, size));
+  const address = (size: DerivativeSize) => pictureAddress(ctx, proofKey(proof, sheet.commissionId, size));
   const ready = proof.watermarkHash !== null && proof.watermarkHash === sheet.watermarkHash;
   return {
     id: proof.id,
