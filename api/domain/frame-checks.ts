@@ -15,10 +15,3 @@ export function checkFrame(shot: CheckedShot, measures: FrameMeasures | null, th
   const found = RULES.map((rule) => rule(shot, measures, thresholds)).filter((check) => check !== null);
   return found.toSorted((a, b) => Number(b.toCheck) - Number(a.toCheck));
 }
-
-/** The exposure headroom in words. */
-export function headroomWords(headroom: number): string {
-  const stops = Number(headroom.toFixed(1));
-  if (stops === 0) return 'The brightest parts are at the limit.';
-  return `The brightest parts are ${stops} ${stops === 1 ? 'stop' : 'stops'} below the limit.`;
-}

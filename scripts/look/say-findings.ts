@@ -1,5 +1,5 @@
 import path from 'node:path';
-import { headroomWords } from '../../api/domain/frame-checks.ts';
+import { headroomWords } from '../../api/domain/headroom.ts';
 import type { BracketFinding, FileFinding, Findings, UseFinding } from './findings.ts';
 
 function sayUses(uses: readonly UseFinding[]): string[] {

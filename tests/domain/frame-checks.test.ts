@@ -2,7 +2,8 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { CheckThresholds } from '../../api/contract/checks.ts';
 import { DEFAULT_THRESHOLDS } from '../../api/domain/check-thresholds.ts';
-import { checkFrame, headroomWords, type CheckedShot } from '../../api/domain/frame-checks.ts';
+import { checkFrame, type CheckedShot } from '../../api/domain/frame-checks.ts';
+import { headroomWords } from '../../api/domain/headroom.ts';
 import type { AtLimit, FrameMeasures, TiltMeasure } from '../../api/domain/frame-measures.ts';
 
 const SHOT: CheckedShot = { fNumber: 8, exposureTime: 1 / 250, iso: 100, focalLength: 35, focalLength35: 35, inBracket: false };

@@ -1,16 +1,10 @@
-import { execFileSync } from 'node:child_process';
-import { mkdtempSync, rmSync } from 'node:fs';
-import { createRequire } from 'node:module';
-import { tmpdir } from 'node:os';
-import path from 'node:path';
-import { ssim } from 'ssim.js';
-import { afterAll, beforeAll, describe, expect, it, vi } from 'vitest';
+import { beforeAll, describe, expect, it, vi } from 'vitest';
 import { type Exposure, mergeExposures } from '../../api/imaging/merge/merge-exposures.ts';
 import { type FusionConventions, OPENCV, PAPER } from '../../api/imaging/merge/fusion/conventions.ts';
 import { fuse } from '../../api/imaging/merge/fusion/fuse.ts';
 import { fromRaw, toRaw, type RawPicture } from '../../api/imaging/upright.ts';
-import sharp from 'sharp';
 import { BRIDGE, expose, photographLight, type Scene } from '../support/exposures.ts';
+import { averageOf, enfuse, likeness, openCvFused, openOpenCv } from '../support/fusion-oracles.ts';
 
 /**
  * The definition is Mertens, Kautz, Van Reeth: Exposure Fusion (Pacific Graphics 2007). Checked against OpenCV's MergeMertens (npm
@@ -19,8 +13,6 @@ import { BRIDGE, expose, photographLight, type Scene } from '../support/exposure
  */
 // Whole photographs are merged, and compared by tools that take their time.
 vi.setConfig({ testTimeout: 120_000 });
-const folder = mkdtempSync(path.join(tmpdir(), 'oriel-fusion-'));
-afterAll(() => rmSync(folder, { recursive: true, force: true }));
 
 const EXPOSURE_ALONE = { contrast: 0, saturation: 0 };
 let scene: Scene;
@@ -29,57 +21,11 @@ let frames: RawPicture[];
 const place = (pictures: RawPicture[]) => pictures.map((picture) => ({ picture, shift: { x: 0, y: 0 }, patch: null }));
 const fused = (pictures: RawPicture[], rule: FusionConventions) => fuse(place(pictures), rule);
 
-/* eslint-disable @typescript-eslint/no-explicit-any -- the package's own types do not know MergeMertens */
-let cv: any;
-async function openOpenCv(): Promise<void> {
-  cv = createRequire(import.meta.url)('@techstark/opencv-js');
-  // What it exports waits for itself for ever when it is awaited.
-  if (!cv.Mat) await new Promise<void>((resolve) => (cv.onRuntimeInitialized = () => resolve()));
-}
-/** MergeMertens' picture as bytes. It takes four arguments here; an error would print the whole package. */
-function openCvFused(pictures: RawPicture[], weights: [number, number, number]): Uint8ClampedArray {
-  const list = new cv.MatVector();
-  for (const { data, width, height } of pictures) {
-    const mat = new cv.Mat(height, width, cv.CV_8UC3);
-    mat.data.set(data);
-    list.push_back(mat);
-  }
-  const result = new cv.Mat();
-  new cv.MergeMertens(...weights).process(list, result, new cv.Mat(), new cv.Mat());
-  const bytes = Uint8ClampedArray.from(result.data32F as Float32Array, (value) => value * 255);
-  result.delete();
-  return bytes;
-}
-/* eslint-enable @typescript-eslint/no-explicit-any */
-
-async function enfuse(pictures: RawPicture[], options: string[]): Promise<Buffer> {
-  const files = await Promise.all(
-    pictures.map(async (picture, index) => {
-      const file = path.join(folder, `${index}.tif`);
-      await fromRaw(picture).tiff({ compression: 'none' }).toFile(file);
-      return file;
-    }),
-  );
-  const output = path.join(folder, 'fused.tif');
-  execFileSync('enfuse', ['--blend-colorspace=identity', ...options, '-o', output, ...files], { stdio: 'ignore' });
-  return (await toRaw(sharp(output).removeAlpha())).data;
-}
-
 function differences(one: ArrayLike<number>, other: ArrayLike<number>) {
   const counts = new Array<number>(256).fill(0);
   for (let at = 0; at < one.length; at++) counts[Math.abs((one[at] ?? 0) - (other[at] ?? 0))]!++;
   const within = (levels: number) => counts.slice(0, levels + 1).reduce((sum, count) => sum + count, 0) / one.length;
   return { most: counts.findLastIndex((count) => count > 0), within };
-}
-
-function likeness(one: ArrayLike<number>, other: ArrayLike<number>, { width, height }: { width: number; height: number }): number {
-  const rgba = (bytes: ArrayLike<number>) => {
-    const data = new Uint8ClampedArray(width * height * 4).fill(255);
-    for (let at = 0; at < width * height; at++)
-      for (let colour = 0; colour < 3; colour++) data[at * 4 + colour] = bytes[at * 3 + colour] ?? 0;
-    return { data, width, height } as ImageData;
-  };
-  return ssim(rgba(one), rgba(other)).mssim;
 }
 
 beforeAll(async () => {
@@ -135,7 +81,7 @@ describe('enfuse', () => {
   it('in colour the merged proof is nearer to both than the average and than the best single frame', async () => {
     const exposures: Exposure[] = frames.map((picture, index) => ({ picture, ev: 2 * index - 4 }));
     const ours = mergeExposures(exposures, 2).picture.data;
-    const average = Buffer.from(ours.map((_, at) => frames.reduce((sum, { data }) => sum + (data[at] ?? 0), 0) / frames.length));
+    const average = averageOf(frames);
     for (const theirs of [await enfuse(frames, []), openCvFused(frames, [1, 1, 1])]) {
       const found = likeness(ours, theirs, scene);
       const single = Math.max(...frames.map(({ data }) => likeness(data, theirs, scene)));

@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest';
 import { CLIPPED, markClipped } from '../../api/domain/clipping.ts';
 import { placesOf, stepIn } from '../../web/src/features/frames/bracket-places.ts';
 import { clippedShares, hatchClipped, shareWords } from '../../web/src/features/frames/clipping-hatch.ts';
-import { headroomWords, HEIGHT, pointsOf, topOf } from '../../web/src/features/frames/histogram-lines.ts';
+import { HEIGHT, pointsOf, topOf } from '../../web/src/features/frames/histogram-lines.ts';
 import { fitLine } from '../../web/src/features/uses/fit-words.ts';
 import { bracket, membersOf } from './frames-support.ts';
 
@@ -47,7 +47,7 @@ describe('what is clipped', () => {
   it('is said in shares', () => {
     const { highlights, shadows } = clippedShares(mask);
     expect([highlights, shadows]).toEqual([1 / 3, 1 / 3]);
-    expect([0, 0.0004, 0.032, 0.31].map(shareWords)).toEqual(['none', 'under 0.1 %', '3.2 %', '31 %']);
+    expect([0, 0.0004, 0.032, 0.31].map(shareWords)).toEqual(['none', 'under 0.1%', '3.2%', '31%']);
   });
 });
 
@@ -57,15 +57,6 @@ describe('the histogram', () => {
     expect(topOf([curve])).toBe(400);
     expect(pointsOf(curve, 400).split(' ')[3]).toBe('3.5,0.0');
     expect(pointsOf([0], 400)).toBe(`0.5,${HEIGHT}.0`);
-  });
-
-  it('says the headroom in stops', () => {
-    expect([0, 0.72, 1, 2].map(headroomWords)).toEqual([
-      'No headroom: the brightest parts are at the limit.',
-      '0.7 stops of headroom',
-      '1.0 stop of headroom',
-      '2.0 stops of headroom',
-    ]);
   });
 });
 

@@ -7,7 +7,7 @@ import { Frame } from '../../models/Frame.ts';
 import { addToRecord } from '../record/add-to-record.ts';
 import { announceBrackets } from './announce-brackets.ts';
 import { holdBracket } from './find-bracket.ts';
-import { whyShown } from './policy.ts';
+import { whyNotChanged } from './policy.ts';
 import { settleBracket } from './settle-bracket.ts';
 
 /**
@@ -20,7 +20,7 @@ export async function changeBracket(actor: StaffActor, bracketId: string, change
     const { leadFrameId = bracket.leadFrameId, shows = bracket.shows } = change;
     const newLead = leadFrameId !== bracket.leadFrameId;
     if (!newLead && shows === bracket.shows) return;
-    const why = whyShown(shown);
+    const why = whyNotChanged(shown);
     if (why) throw problem(409, `This bracket stays as it is. ${why}`, { code: 'shown' });
     const lead = await leadOf(trx, bracket, leadFrameId);
     if (newLead) await Bracket.within(actor, trx).findById(bracketId).patch({ leadByHand: true });

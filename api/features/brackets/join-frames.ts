@@ -9,7 +9,7 @@ import { Frame } from '../../models/Frame.ts';
 import { addToRecord } from '../record/add-to-record.ts';
 import { announceBrackets } from './announce-brackets.ts';
 import { holdForGrouping } from './hold-commission.ts';
-import { whyGrouped } from './policy.ts';
+import { whyNotRegrouped } from './policy.ts';
 import { settleBracket } from './settle-bracket.ts';
 import { shownFrames } from './shown-frames.ts';
 
@@ -68,7 +68,7 @@ async function framesToJoin(trx: Transaction, actor: StaffActor, { id }: Commiss
     throw invalid([{ path: 'leadFrameId', message: 'The lead frame has to be one of them.' }]);
   const shown = await shownFrames(trx, { studioId: actor.studioId, commissionId: id });
   const kept = frames.find((frame) => shown.has(frame.id));
-  if (kept) throw problem(409, `${kept.name} stays as it is. ${whyGrouped(shown.get(kept.id))}`, { code: 'shown' });
+  if (kept) throw problem(409, `${kept.name} stays as it is. ${whyNotRegrouped(shown.get(kept.id))}`, { code: 'shown' });
   return frames;
 }
 

@@ -10,11 +10,11 @@ import { announceBrackets } from './announce-brackets.ts';
 import { type HeldBracket, holdBracket } from './find-bracket.ts';
 import { leaveByHand } from './join-frames.ts';
 import { readBracket } from './list-brackets.ts';
-import { whyGrouped } from './policy.ts';
+import { whyNotRegrouped } from './policy.ts';
 import { dissolveBracket } from './settle-bracket.ts';
 
 function refuseShown({ shown }: HeldBracket): void {
-  const why = whyGrouped(shown);
+  const why = whyNotRegrouped(shown);
   if (why) throw problem(409, `This bracket stays as it is. ${why}`, { code: 'shown' });
 }
 

@@ -33,10 +33,10 @@ export function clippedShares(mask: Uint8Array): { highlights: number; shadows: 
   return { highlights: high / mask.length, shadows: low / mask.length };
 }
 
-/** "none", "under 0.1 %", "3.2 %", "31 %" */
+/** "none", "under 0.1%", "3.2%", "31%" */
 export function shareWords(share: number): string {
   const percent = share * 100;
   if (percent === 0) return 'none';
-  if (percent < 0.1) return 'under 0.1 %';
-  return `${percent < 10 ? percent.toFixed(1) : Math.round(percent)} %`;
+  if (percent < 0.1) return 'under 0.1%';
+  return `${percent < 10 ? percent.toFixed(1) : Math.round(percent)}%`;
 }

@@ -11,9 +11,3 @@ export function topOf(curves: readonly (readonly number[])[]): number {
 export function pointsOf(curve: readonly number[], top: number): string {
   return curve.map((parts, at) => `${at + 0.5},${(HEIGHT - Math.min(1, parts / top) * HEIGHT).toFixed(1)}`).join(' ');
 }
-
-/** "0.7 stops of headroom" */
-export function headroomWords(stops: number): string {
-  if (stops < 0.05) return 'No headroom: the brightest parts are at the limit.';
-  return `${stops.toFixed(1)} ${stops.toFixed(1) === '1.0' ? 'stop' : 'stops'} of headroom`;
-}

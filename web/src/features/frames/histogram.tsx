@@ -1,6 +1,7 @@
 import type { ShownMeasures } from '../../../../api/contract/frames.ts';
+import { headroomWords } from '../../../../api/domain/headroom.ts';
 import { shareWords } from './clipping-hatch.ts';
-import { HEIGHT, headroomWords, pointsOf, topOf, WIDTH } from './histogram-lines.ts';
+import { HEIGHT, pointsOf, topOf, WIDTH } from './histogram-lines.ts';
 
 /** Colour beside a picture would colour the eye, so the channels are told apart by their strokes. */
 const CHANNELS = [
@@ -12,7 +13,8 @@ const CHANNELS = [
 /** How much of the picture is how bright, from black to white, and what is at the ends. */
 export function Histogram({ measures: { histogram, highlights, shadows, headroom } }: { measures: ShownMeasures }) {
   const top = topOf([histogram.luma, histogram.red, histogram.green, histogram.blue]);
-  const says = `${headroomWords(headroom)}. Highlights at the limit: ${shareWords(highlights.any)} in any channel, ${shareWords(highlights.all)} in all. Shadows at the limit: ${shareWords(shadows.all)}.`;
+  // The words of the figures below, for those who cannot see the drawing.
+  const says = `${headroomWords(headroom)} Highlights at the limit: ${shareWords(highlights.any)} in any channel, ${shareWords(highlights.all)} in all. Shadows at the limit: ${shareWords(shadows.all)}.`;
   return (
     <>
       <svg
@@ -44,7 +46,7 @@ export function Histogram({ measures: { histogram, highlights, shadows, headroom
         ))}
       </ul>
       <dl className="pt-1">
-        <Line label="Headroom" value={headroom < 0.05 ? 'none' : headroomWords(headroom)} />
+        <Line label="Headroom" value={headroom < 0.05 ? 'none' : `${headroom.toFixed(1)} stops`} />
         <Line label="Highlights at the limit" value={`${shareWords(highlights.any)}, ${shareWords(highlights.all)} in all channels`} />
         <Line label="Shadows at the limit" value={shareWords(shadows.all)} />
       </dl>

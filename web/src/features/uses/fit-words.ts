@@ -1,4 +1,4 @@
-import { fitForUse, type Fit, type PictureSize, type Use } from '../../../../api/domain/fit-for-use.ts';
+import { fitForUse, sayPpi, type Fit, type PictureSize, type Use } from '../../../../api/domain/fit-for-use.ts';
 
 const NAMED = 3;
 
@@ -21,5 +21,5 @@ export function fitLine(picture: PictureSize, uses: readonly Use[]): string {
 }
 
 function shortly(fit: Fit & { sharp: false }): string {
-  return fit.kind === 'print' ? ` (${Math.floor(fit.ppi)} ppi)` : '';
+  return fit.kind === 'print' ? ` (${sayPpi(fit.ppi)} ppi)` : '';
 }

@@ -24,8 +24,8 @@ export function Component() {
     <>
       <PageTitle title="Uses" where="Settings" className="mb-1 text-30" />
       <p className="mb-5 max-w-2xl text-mute">
-        What your clients want pictures for. Every proof, crop and final is measured against these, for you and for them: sharp, or how
-        large it can be.
+        What your clients want pictures for. Every proof and final is measured against these, for you and for them: sharp, or how large it
+        can be.
       </p>
       {save.error ? (
         <p role="alert" className="mb-4 border border-copper bg-sheet px-4 py-2 font-bold text-copper">
