@@ -9,6 +9,8 @@ export interface EnqueueOptions {
   /** Lower runs first; 0 by default. */
   priority?: number;
   maxAttempts?: number;
+  /** Jobs of one line run one after the other. */
+  line?: string;
 }
 
 /** Each try meets a worker that takes the waiting job at that very moment; more than a few in a row is no chance any more. */
@@ -19,7 +21,8 @@ export async function enqueue(db: Knex, name: string, payload: Record<string, un
   for (let attempt = 1; attempt <= TRIES; attempt += 1) {
     const { rows } = await db.raw<{ rows: { id: unknown }[] }>(
       `select id from graphile_worker.add_job(
-         ?, payload := ?::json, run_at := ?::timestamptz, max_attempts := ?::int, job_key := ?::text, priority := ?::int, job_key_mode := ?::text)`,
+         ?, payload := ?::json, run_at := ?::timestamptz, max_attempts := ?::int, job_key := ?::text, priority := ?::int, job_key_mode := ?::text,
+         queue_name := ?::text)`,
       [
         name,
         JSON.stringify(payload),
@@ -28,6 +31,7 @@ export async function enqueue(db: Knex, name: string, payload: Record<string, un
         options.key ?? null,
         options.priority ?? 0,
         options.keepRunAt ? 'preserve_run_at' : 'replace',
+        options.line ?? null,
       ] as Knex.RawBinding[],
     );
     // No row: a worker took the waiting job of that key between the two statements of add_job, which then adds nothing.

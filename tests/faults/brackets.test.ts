@@ -65,13 +65,21 @@ async function mergeBegan(bracketId: string): Promise<boolean> {
   return rows.length > 0;
 }
 
+/** The bracket that is merged last: a commission's merges run one after the other. */
+async function lastInLine(): Promise<string> {
+  const { rows } = await house.ctx.knex.raw<{ rows: { key: string }[] }>(
+    `select key from graphile_worker.jobs where key like 'merge-bracket:%' order by run_at desc, id desc limit 1`,
+  );
+  return rows[0]?.key.split(':')[1] ?? '';
+}
+
 it('a worker killed in the middle of merging leaves nothing half done: another goes on', { timeout: 600_000 }, async () => {
   const { commission, frames } = await measuredBrackets(6);
   await groupFrames.run(house.ctx, { commissionId: commission.id }, tools);
   const rows = () => Bracket.query().where({ commissionId: commission.id }).orderBy('id');
   const merged = async () => (await rows()).filter(({ madeOf, wanted }) => madeOf === wanted).length;
   const before = (await rows()).map(({ id }) => id);
-  const [held = ''] = before;
+  const held = await lastInLine();
   // The worker can store this bracket's picture, and not write down that it did.
   const hold = await house.ctx.knex.transaction();
   await hold('brackets').where({ id: held }).forUpdate().select('id');

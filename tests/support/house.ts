@@ -111,12 +111,19 @@ async function runJobs(ctx: Context, databaseUrl: string): Promise<void> {
         job.run(ctx, payload as never, { signal, attempt: row.attempts, lastAttempt: row.attempts >= row.max_attempts }),
     ]),
   );
-  await runOnce({
-    connectionString: databaseUrl,
-    taskList,
-    concurrency: 2,
-    maxPoolSize: 4,
-    noHandleSignals: true,
-    logger: new QuietLogger(() => () => undefined),
-  });
+  // Jobs of one line wait for each other, and a run may end between two of them.
+  for (;;) {
+    await runOnce({
+      connectionString: databaseUrl,
+      taskList,
+      concurrency: 2,
+      maxPoolSize: 4,
+      noHandleSignals: true,
+      logger: new QuietLogger(() => () => undefined),
+    });
+    const { rows } = await ctx.knex.raw<{ rows: unknown[] }>(
+      'select id from graphile_worker.jobs where run_at <= now() and locked_at is null and attempts < max_attempts limit 1',
+    );
+    if (rows.length === 0) return;
+  }
 }

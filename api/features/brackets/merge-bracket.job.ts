@@ -1,3 +1,4 @@
+import { DERIVATIVE_SIZES } from '../../imaging/derivative-sizes.ts';
 import type { Transaction } from 'objection';
 import type { Context } from '../../context.ts';
 import type { ArrangedBracket } from '../../domain/brackets/arrange.ts';
@@ -52,8 +53,7 @@ async function merge(ctx: Context, bracket: Bracket, { frames, steps }: Arranged
   await Promise.all(merged.pictures.map(({ size, data }) => ctx.store.put(mergedKey(made, size), data, 'image/jpeg')));
   const { width, height, placeholder } = merged;
   const stands = await conclude(bracket, { madeOf: bracket.wanted, width, height, placeholder, leftOut });
-  // By a job of its own, which asks once more: a bracket that was changed back wants this very picture again.
-  if (!stands) await queueDrop(ctx.knex, made);
+  if (!stands) await ctx.store.remove(...DERIVATIVE_SIZES.map((size) => mergedKey(made, size)));
 }
 
 /** Writes down what came of it, unless another picture is wanted by now, and has the proofs made that waited. */

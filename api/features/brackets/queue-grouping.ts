@@ -1,5 +1,7 @@
 import type { Knex } from 'knex';
 import { enqueue } from '../../jobs/queue.ts';
+import type { Bracket } from '../../models/Bracket.ts';
+import { lineOf } from '../frames/queue-measuring.ts';
 
 /** Frames that come within so long of each other are grouped together. */
 const GATHER_MS = 3000;
@@ -13,8 +15,17 @@ export async function queueGrouping(trx: Knex, commissionId: string): Promise<vo
 }
 
 /** Has a bracket merged, behind everything that brings frames in. */
-export async function queueMerge(trx: Knex, bracketId: string, mayGrow: boolean): Promise<void> {
-  const options = { key: `merge-bracket:${bracketId}`, priority: 8, ...(mayGrow ? { runAt: new Date(Date.now() + GROWS_MS) } : {}) };
+export async function queueMerge(
+  trx: Knex,
+  { id: bracketId, commissionId }: Pick<Bracket, 'id' | 'commissionId'>,
+  mayGrow: boolean,
+): Promise<void> {
+  const options = {
+    key: `merge-bracket:${bracketId}`,
+    priority: 8,
+    line: lineOf(commissionId),
+    ...(mayGrow ? { runAt: new Date(Date.now() + GROWS_MS) } : {}),
+  };
   await enqueue(trx, 'merge-bracket', { bracketId }, options);
 }
 

@@ -33,7 +33,7 @@ export async function settleBracket(trx: Transaction, bracket: Bracket, settling
   const shows = settling.shows ?? bracket.shows;
   const same = wanted === bracket.wanted && shows === bracket.shows && leadFrameId === bracket.leadFrameId;
   const settled = same ? bracket : await patch(trx, bracket, { leadFrameId, wanted, shows });
-  if (settled.wanted !== settled.madeOf && settled.problem === null) await queueMerge(trx, bracket.id, settling.mayGrow ?? false);
+  if (settled.wanted !== settled.madeOf && settled.problem === null) await queueMerge(trx, bracket, settling.mayGrow ?? false);
   await layBracketProofs(trx, settled, frames, !same);
   return settled;
 }

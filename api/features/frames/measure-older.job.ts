@@ -18,7 +18,7 @@ export const measureOlder: Job = {
       .whereRaw(`created_at < now() - interval '10 minutes'`)
       .orderBy('createdAt', 'desc')
       .limit(A_RUN)
-      .select('id');
-    for (const { id } of frames) await queueMeasuring(ctx.knex, id);
+      .select('id', 'commissionId');
+    for (const frame of frames) await queueMeasuring(ctx.knex, frame);
   },
 };

@@ -56,7 +56,7 @@ export async function takeInFrame(trx: Transaction, upload: Upload, prepared: Pr
   const frame = await Frame.query(trx).insert(columnsOf(upload, prepared)).onConflict().ignore().returning('createdAt');
   // The time comes from the database: without it no row was made.
   const isNew = (frame.createdAt as Date | undefined) !== undefined;
-  if (isNew) await queueMeasuring(trx, upload.id);
+  if (isNew) await queueMeasuring(trx, upload);
   const frameId = isNew ? upload.id : await yieldToTwin(trx, upload);
   const done = await Upload.within(upload, trx)
     .patch({ state: 'done', frameId, multipartId: null, updatedAt: new Date() })

@@ -48,13 +48,19 @@ export class PixelsFailure extends Error {
 /** A new child has so long to begin, on a machine that is very busy. */
 const START_SECONDS = 60;
 
-function startPool(processes: number): workerpool.Pool {
+/**
+ * How far the children stand back behind the API, the database and the store on the same machine, as nice values: those that take files in, for
+ * which somebody waits, and those that look into what is there already.
+ */
+const NICE = { takingIn: 5, lookingInto: 15 };
+
+function startPool(processes: number, nice: number): workerpool.Pool {
   const loader = pathToFileURL(createRequire(import.meta.url).resolve('tsx')).href;
   return workerpool.pool(fileURLToPath(new URL('./child.ts', import.meta.url)), {
     workerType: 'process',
     maxWorkers: processes,
     workerTerminateTimeout: 500,
-    forkArgs: [String(Math.max(1, Math.floor(availableParallelism() / processes)))],
+    forkArgs: [Math.max(1, Math.floor(availableParallelism() / processes)), nice].map(String),
     forkOpts: {
       execArgv: ['--import', loader],
       // Buffers as they are, not as lists of numbers in JSON.
@@ -104,14 +110,16 @@ class Call {
 
 /** Opens the pool of child processes that all work on pixels goes through, so that no picture can harm the process that asks. */
 export function createPixels(options: PixelsOptions): Pixels {
-  const pool = startPool(options.processes ?? availableParallelism());
+  const pool = startPool(options.processes ?? availableParallelism(), NICE.takingIn);
+  // One child beside them: measuring and merging take what the others leave, and never a place from them.
+  const aside = startPool(1, NICE.lookingInto);
   const limits = { pixels: options.maxPixels, bytes: Number.MAX_SAFE_INTEGER };
   const calls = new Set<Call>();
-  async function run<Answer>(task: string, args: unknown[]): Promise<Answer> {
+  async function run<Answer>(task: string, args: unknown[], by = pool): Promise<Answer> {
     const call = new Call();
     calls.add(call);
     try {
-      const answer = pool.exec(task, args, { on: ({ pid }: { pid: number }) => call.begin(pid, options.timeoutSeconds) });
+      const answer = by.exec(task, args, { on: ({ pid }: { pid: number }) => call.begin(pid, options.timeoutSeconds) });
       // The pool's own clock is for a child that never comes to begin.
       return (await answer.timeout((options.timeoutSeconds + START_SECONDS) * 1000)) as Answer;
     } catch (error) {
@@ -125,14 +133,14 @@ export function createPixels(options: PixelsOptions): Pixels {
   return {
     judge: (path) => run('judge', [path, limits]),
     prepare: (path) => run('prepare', [path, limits]),
-    measure: (picture) => run('measure', [picture]),
+    measure: (picture) => run('measure', [picture], aside),
     watermark: (picture, settings, image, sizes) => run('watermark', [picture, settings, image, sizes]),
     cleanWatermark: (png) => run('cleanWatermark', [png]),
     webSize: (path) => run('webSize', [path, limits]),
-    merge: (frames, lead) => run('merge', [frames, lead]),
+    merge: (frames, lead) => run('merge', [frames, lead], aside),
     stop: async () => {
       for (const call of calls) call.kill();
-      await pool.terminate(true);
+      await Promise.all([pool.terminate(true), aside.terminate(true)]);
     },
   };
 }

@@ -75,6 +75,6 @@ async function takeFrame(house: House, { id, studioId }: { id: string; studioId:
   });
   await house.ctx.store.put(frame.storageKey, original, 'image/jpeg');
   for (const size of [480, 960, 2560] as const) await house.ctx.store.put(frameKey(frame, size), picture, 'image/jpeg');
-  await queueMeasuring(house.ctx.knex, frame.id);
+  await queueMeasuring(house.ctx.knex, frame);
   return frame;
 }
