@@ -2,6 +2,7 @@ import sharp from 'sharp';
 import type { DerivativeSize } from './derivative-sizes.ts';
 import { asRefusal, decodeOptions, pictureSource, type JudgedFile, type PictureLimits } from './judge-file.ts';
 import { makePlaceholder } from './placeholder.ts';
+import { isSrgbProfile } from './srgb-profile.ts';
 import { fromRaw, toRaw, turnUpright, type RawPicture } from './upright.ts';
 
 export interface Derivative {
@@ -37,7 +38,12 @@ export async function decodeInside(
 ): Promise<RawPicture> {
   try {
     const source = await pictureSource(path, judged);
-    const small = sharp(source, decodeOptions(limits)).resize(inside(size)).flatten({ background: '#ffffff' }).toColourspace('srgb');
+    const { icc } = await sharp(source, decodeOptions(limits)).metadata();
+    const ignoreIcc = icc !== undefined && (await isSrgbProfile(icc));
+    const small = sharp(source, { ...decodeOptions(limits), ignoreIcc })
+      .resize(inside(size))
+      .flatten({ background: '#ffffff' })
+      .toColourspace('srgb');
     return await turnUpright(await toRaw(small), judged.orientation);
   } catch (error) {
     throw asRefusal(error);

@@ -6,6 +6,7 @@ import sharp from 'sharp';
 import { afterAll, describe, expect, it } from 'vitest';
 import { judgeHeader } from '../../api/imaging/judge-file.ts';
 import { decodeInside } from '../../api/imaging/make-derivatives.ts';
+import { isSrgbProfile } from '../../api/imaging/srgb-profile.ts';
 
 /**
  * The colours of derivatives against Little CMS' own transicc (Debian liblcms2-utils). Profiles: Debian colord-data (CC0) and
@@ -99,5 +100,29 @@ describe('the profile of a file is honoured', () => {
 
   it('and a file without one is taken as sRGB', async () => {
     expect(await ours(await strip(null))).toEqual(COLOURS);
+  });
+});
+
+describe('a profile that says no more than sRGB is passed over', () => {
+  it('those of three makers are', async () => {
+    const written = await sharp({ create: { width: 8, height: 8, channels: 3, background: '#456' } })
+      .withIccProfile('srgb')
+      .jpeg()
+      .toBuffer();
+    const { icc = Buffer.alloc(0) } = await sharp(written).metadata();
+    for (const profile of [icc, readFileSync(SRGB), readFileSync(`${COLORD}/sRGB.icc`)]) expect(await isSrgbProfile(profile)).toBe(true);
+  });
+
+  it.each(['AdobeRGB1998', 'ProPhotoRGB', 'ECI-RGBv2', 'WideGamutRGB', 'SwappedRedAndGreen', 'AppleRGB', 'Rec709', 'SMPTE-C-RGB'])(
+    '%s is not',
+    async (name) => {
+      expect(await isSrgbProfile(readFileSync(`${COLORD}/${name}.icc`))).toBe(false);
+    },
+  );
+
+  it('nor is what is no profile, or none of red, green and blue', async () => {
+    const cmyk = Buffer.from(readFileSync(SRGB));
+    cmyk.write('CMYK', 16, 'latin1');
+    for (const profile of [Buffer.alloc(0), cmyk]) expect(await isSrgbProfile(profile)).toBe(false);
   });
 });
