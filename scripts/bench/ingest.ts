@@ -1,4 +1,4 @@
-import { spawn } from 'node:child_process';
+import { fork, spawn } from 'node:child_process';
 import { createHash } from 'node:crypto';
 import fs from 'node:fs';
 import os from 'node:os';
@@ -100,20 +100,21 @@ function run(command: string, args: string[]): Promise<void> {
   });
 }
 
-/** How long the other routes take meanwhile, asked for twenty times a second. */
+/** How long the other routes take meanwhile, in ms, asked by a process of its own. */
 async function askMeanwhile(house: BenchHouse, until: Promise<unknown>): Promise<number[]> {
-  let over = false;
-  void until.finally(() => (over = true)).catch(() => undefined);
-  const took: number[] = [];
-  for (let at = 0; !over; at += 1) {
-    const route = at % 2 === 0 ? '/api/me' : `/api/commissions/${house.commission.id}`;
-    const begun = performance.now();
-    const answer = await fetch(house.address + route, { headers: { cookie: house.cookie } });
-    await answer.arrayBuffer();
-    took.push(performance.now() - begun);
-    await pause(50);
-  }
-  return took;
+  const routes = ['/api/me', `/api/commissions/${house.commission.id}`].map((route) => house.address + route);
+  const child = fork('scripts/bench/ask-meanwhile.ts', {
+    execArgv: ['--import', 'tsx'],
+    env: { ...process.env, BENCH_ROUTES: JSON.stringify(routes), BENCH_COOKIE: house.cookie },
+  });
+  const answer = new Promise<number[]>((resolve, reject) => {
+    child.once('message', (took) => resolve(took as number[]));
+    child.once('error', reject);
+    child.once('exit', (code) => reject(new Error(`The process that asks ended with ${code}.`)));
+  });
+  await until;
+  child.send('stop');
+  return answer;
 }
 
 /** 60 JPEGs of 24 megapixels, uploaded over HTTP until the last derivative is stored. */

@@ -52,7 +52,7 @@ const START_SECONDS = 60;
  * How far the children stand back behind the API, the database and the store on the same machine, as nice values: those that take files in, for
  * which somebody waits, and those that look into what is there already.
  */
-const NICE = { takingIn: 5, lookingInto: 15 };
+const NICE = { takingIn: 12, lookingInto: 19 };
 
 function startPool(processes: number, nice: number): workerpool.Pool {
   const loader = pathToFileURL(createRequire(import.meta.url).resolve('tsx')).href;
