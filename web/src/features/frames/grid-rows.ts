@@ -8,6 +8,10 @@ export const CAPTION = 28;
 export const GAP = 12;
 const ROW_HEIGHT = 190;
 const HEADING = 48;
+/** In a narrow column the tools of a bracket stand below its words; each frame left out of the merge is a line more. */
+const NARROW = 700;
+const TOOLS = 36;
+const NOTE = 20;
 /** A sentence below a picture, as far as it can be known before it is drawn. */
 const SENTENCE = 40;
 
@@ -43,13 +47,18 @@ export function layGrid(sections: readonly Section[], width: number): GridModel 
   let first = 0;
   for (const section of sections) {
     if (section.kind !== 'to-check' && !(section.kind === 'single' && !section.headed)) {
-      model.rows.push({ kind: 'heading', key: `heading ${section.key}`, height: HEADING, section });
+      model.rows.push({ kind: 'heading', key: `heading ${section.key}`, height: headingHeight(section, width), section });
     }
     if (section.kind === 'bracket') layBracketRow(model, section, first, width);
     else layFrameRows(model, section, first, width);
     first += section.frames.length;
   }
   return model;
+}
+
+function headingHeight(section: Section, width: number): number {
+  if (section.kind !== 'bracket') return HEADING;
+  return HEADING + (width < NARROW ? TOOLS : 0) + section.bracket.merged.leftOut.length * NOTE;
 }
 
 function layFrameRows(model: GridModel, section: Section, first: number, width: number): void {
