@@ -70,7 +70,7 @@ export interface FrameMeasures {
   highlights: AtLimit;
   shadows: AtLimit;
   /**
-   * Stops between the brightest 0.1 % of the picture (by its largest channel, in linear light of sRGB) and the limit; 0 where
+   * Stops between the brightest 0.1% of the picture (by its largest channel, in linear light of sRGB) and the limit; 0 where
    * that is at the limit. Says what the developed file could still be brightened by, not what the sensor could have taken.
    */
   headroom: number;

@@ -23,12 +23,12 @@ export function divideHalfUp(numerator: bigint, denominator: bigint): bigint {
   return numerator < 0n ? -rounded : rounded;
 }
 
-/** A share of an amount, the rate in hundredths of a percent (20 % is 2000), rounded half up to a minor unit. */
+/** A share of an amount, the rate in hundredths of a percent (20% is 2000), rounded half up to a minor unit. */
 export function shareOf(minor: number, basisPoints: number): number {
   return safe(divideHalfUp(BigInt(minor) * BigInt(basisPoints), 10_000n));
 }
 
-/** The share contained in a gross amount: 20 % within 120.00 is 20.00. Rate in hundredths of a percent. */
+/** The share contained in a gross amount: 20% within 120.00 is 20.00. Rate in hundredths of a percent. */
 export function shareWithin(grossMinor: number, basisPoints: number): number {
   return safe(divideHalfUp(BigInt(grossMinor) * BigInt(basisPoints), 10_000n + BigInt(basisPoints)));
 }

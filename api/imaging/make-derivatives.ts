@@ -18,7 +18,7 @@ export interface Derivatives {
   placeholder: string;
 }
 
-/** Enough that brickwork holds at 100 %, half the bytes of 90. */
+/** Enough that brickwork holds at 100%, half the bytes of 90. */
 const QUALITY = 82;
 
 function inside(size: number) {
@@ -51,7 +51,7 @@ export async function decodeInside(
 }
 
 /**
- * Writes a JPEG. Huffman tables are the standard ones: making tables to measure takes five times as long and saves 4 % of
+ * Writes a JPEG. Huffman tables are the standard ones: making tables to measure takes five times as long and saves 4% of
  * the bytes. Only the viewer's size keeps full chroma, which thin coloured lines of a façade need.
  */
 export async function encodeDerivative(picture: RawPicture, size: DerivativeSize): Promise<Derivative> {

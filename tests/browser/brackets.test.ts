@@ -22,7 +22,7 @@ afterAll(() => site?.stop());
 /** A commission with one bracket of three and a single frame, measured, grouped and merged as after an upload. */
 async function makeShoot() {
   const commission = await makeCommission(studio.studio, { title: 'Ropewalk Library, first light to last', views: ['East front'] });
-  // Sizes as of a camera, so that there is something to see at 100 %.
+  // Sizes as of a camera, so that there is something to see at 100%.
   const values = { width: 3000, height: 2000 };
   const frames = await makeExposures(site.house, commission, { values });
   const [single] = await makeExposures(site.house, commission, { stops: [0], minute: 30, seed: 2, values });
@@ -214,7 +214,7 @@ describe("the photographer's view of a bracket", () => {
     await soon(() => shown(page)).toBe(merged);
     await strip.getByRole('button', { name: '+2' }).click();
     await page.getByRole('dialog', { name: `Frame ${frames[2]?.name}` }).waitFor();
-    await page.getByRole('img', { name: /headroom/i }).waitFor();
+    await page.getByRole('img', { name: /^Histogram\. The brightest parts are/ }).waitFor();
     await visitor.close();
   });
 
@@ -250,7 +250,7 @@ describe("the photographer's view of a bracket", () => {
     page.setDefaultTimeout(PATIENCE);
     await page.getByRole('dialog', { name: `Frame ${frames[2]?.name}` }).waitFor();
     await page.keyboard.press('h');
-    await page.getByText(/^Highlights [\d.]+ %, stripes rising/).waitFor();
+    await page.getByText(/^Highlights [\d.]+%, stripes rising/).waitFor();
     // Counted again in the picture itself: the share of pixels of which a channel is at 253 or above.
     const counted = await page.evaluate(async () => {
       const picture = document.querySelector<HTMLImageElement>('[data-stage-picture] img:not(.invisible)');

@@ -117,15 +117,15 @@ describe('the viewer', () => {
     await visitor.close();
   });
 
-  it('shows a proof at 100 % and fits it again, by the button, on a phone', async () => {
+  it('shows a proof at 100% and fits it again, by the button, on a phone', async () => {
     const open = await pickedSheet();
     const visitor = await site.visit(`${open.address}/proofs/1`, { cookie: open.lead.cookie, ...SCREENS.phone });
     const { page } = visitor;
     const width = () => page.locator('[data-stage-picture]').evaluate((element) => element.getBoundingClientRect().width);
-    await page.getByRole('button', { name: '100 %' }).waitFor();
+    await page.getByRole('button', { name: '100%' }).waitFor();
     await visitor.audit();
     expect(await width()).toBeCloseTo(390, 0);
-    await page.getByRole('button', { name: '100 %' }).click();
+    await page.getByRole('button', { name: '100%' }).click();
     // 2560 pixels of the proof on 2 pixels of the screen a CSS pixel.
     expect(await width()).toBeCloseTo(1280, 0);
     await page.getByRole('button', { name: 'Fit' }).click();

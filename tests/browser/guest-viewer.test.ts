@@ -74,7 +74,7 @@ describe('guides over the picture', () => {
     await visitor.close();
   });
 
-  it('lie on the picture itself, fitted and at 100 %', async () => {
+  it('lie on the picture itself, fitted and at 100%', async () => {
     const visitor = await visit(huge);
     const { page } = visitor;
     await page.getByRole('button', { name: /^Guides/ }).click();
@@ -87,7 +87,7 @@ describe('guides over the picture', () => {
       );
     const [picture, lines] = await boxes();
     expect(lines).toEqual(picture);
-    await page.getByRole('button', { name: '100 %' }).click();
+    await page.getByRole('button', { name: '100%' }).click();
     const [zoomed, over] = await boxes();
     expect(over).toEqual(zoomed);
     expect((zoomed as DOMRect).width).toBeGreaterThan((picture as DOMRect).width);

@@ -11,7 +11,7 @@ import { averageOf, enfuse, likeness, openCvFused, openOpenCv } from '../support
 vi.setConfig({ testTimeout: 120_000 });
 beforeAll(openOpenCv);
 
-/** Tone of the middle of a scene at 0 stops: common practice, 18 % grey. */
+/** Tone of the middle of a scene at 0 stops: common practice, 18% grey. */
 const MIDDLE = 0.18;
 
 /** enfuse adds its weights up, so it is another picture by definition; OpenCV follows the paper as we do. */

@@ -21,7 +21,7 @@ const ENOUGH = 0.12;
 const FLAT = 0.06;
 /**
  * How far details go together, 1 being all the way. Measured on 20 photographs exposed 1/3 to 2 stops apart: 0.81 and more from a tripod, 0.65 and more
- * moved by 1 % of the width, 0.5 and less for nearly all turned by 10 %.
+ * moved by 1% of the width, 0.5 and less for nearly all turned by 10%.
  */
 const [ALIKE, DIFFERENT] = [0.6, 0.3];
 

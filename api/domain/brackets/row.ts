@@ -22,7 +22,7 @@ export type Row = Exposure[];
 
 /** The next frame of a bracket begins within this after the end of the one before it. Milliseconds. */
 const LONGEST_PAUSE = 2000;
-/** A shutter marked 30 s is open for 32 s: engraved times are up to 7 % off. */
+/** A shutter marked 30 s is open for 32 s: engraved times are up to 7% off. */
 const ENGRAVED = 0.07;
 
 function fits<T>(one: T | null, two: T | null): boolean {

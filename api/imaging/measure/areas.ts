@@ -10,7 +10,7 @@ export interface Areas {
 
 /** Cells along the longer side. */
 const CELLS = 320;
-/** From this share of the picture on an area is large: a square of some 7 % of the sides, far more than a lamp or a lit window has. */
+/** From this share of the picture on an area is large: a square of some 7% of the sides, far more than a lamp or a lit window has. */
 export const LARGE_AREA = 0.005;
 
 /** A cell counts where at least half of its pixels are marked. Gives each cell's marked pixels, 0 where it does not count. */

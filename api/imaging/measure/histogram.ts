@@ -18,7 +18,7 @@ export function histogramOf({ red, green, blue, luma }: Counts, pixels: number):
 /** The brightest share of a picture that headroom is measured to: less are single sparkles. */
 const BRIGHTEST = 0.001;
 
-/** Stops from the brightest 0.1 % of the pixels, by their largest channel in linear light, to the limit; 0 from the limit on. */
+/** Stops from the brightest 0.1% of the pixels, by their largest channel in linear light, to the limit; 0 from the limit on. */
 export function headroomOf({ largest }: Counts, pixels: number, limit: number): number {
   let code = 255;
   for (let above = largest[255]!; above < pixels * BRIGHTEST && code > 1; above += largest[code]!) code--;

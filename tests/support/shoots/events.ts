@@ -68,7 +68,7 @@ export function bracket(work: Work, place: Place, direction: number, stops: read
   // A camera whose time is fixed by hand changes its sensitivity instead.
   const bySensitivity =
     camera.series === 'thirds' && chance.is(0.06) && stops.every((stop) => Number.isInteger(stop) && Math.abs(stop) <= 4);
-  // A hand moves by a column, which is 1.6 % of the width.
+  // A hand moves by a column, which is 1.6% of the width.
   const unsteady = chance.is(0.2) ? 1 : 0;
   const taken = stops.map((stop) => {
     const seconds = setShutter(camera, bySensitivity ? metered : metered * 2 ** stop) as number;

@@ -10,7 +10,7 @@ const LARGE = 2560;
 export interface FrameStageHandle {
   /** Between the whole picture and one of its pixels a screen pixel. */
   toggle(): void;
-  /** Moves a picture at 100 % by so many CSS pixels. */
+  /** Moves a picture at 100% by so many CSS pixels. */
   pan(x: number, y: number): void;
 }
 
@@ -36,7 +36,7 @@ interface Props {
   ref?: Ref<FrameStageHandle>;
 }
 
-/** A picture as large as its place allows, never cropped, or at 100 %. What is shown may change; how it lies stays. */
+/** A picture as large as its place allows, never cropped, or at 100%. What is shown may change; how it lies stays. */
 export function FrameStage({ size, shown, ready, clipping, onFull, onStep, ref }: Props) {
   const stage = useRef<HTMLDivElement>(null);
   const room = useRoom(stage);

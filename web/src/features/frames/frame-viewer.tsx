@@ -94,7 +94,7 @@ export function FrameViewer({ frame, place, before, after, set, merged, onGo, on
           Clipping
         </Button>
         <Button size="small" aria-pressed={isFull} tone={isFull ? 'first' : 'plain'} onClick={() => stage.current?.toggle()}>
-          100 %
+          100%
         </Button>
         <SurroundMenu surround={surround} onChoose={setSurround} />
         {children}

@@ -14,7 +14,7 @@ const CHANNELS = [
 export function Histogram({ measures: { histogram, highlights, shadows, headroom } }: { measures: ShownMeasures }) {
   const top = topOf([histogram.luma, histogram.red, histogram.green, histogram.blue]);
   // The words of the figures below, for those who cannot see the drawing.
-  const says = `${headroomWords(headroom)} Highlights at the limit: ${shareWords(highlights.any)} in any channel, ${shareWords(highlights.all)} in all. Shadows at the limit: ${shareWords(shadows.all)}.`;
+  const says = `Histogram. ${headroomWords(headroom)} Highlights at the limit: ${shareWords(highlights.any)} in any channel, ${shareWords(highlights.all)} in all. Shadows at the limit: ${shareWords(shadows.all)}.`;
   return (
     <>
       <svg

@@ -1,6 +1,6 @@
 import { keptChoice, nextOf, useKept } from '../../lib/kept-choice.ts';
 
-/** What lies around the pictures. Mid grey is sRGB 119, near 18 % reflectance (practice after ISO 3664). */
+/** What lies around the pictures. Mid grey is sRGB 119, near 18% reflectance (practice after ISO 3664). */
 export const SURROUNDS = ['paper', 'grey', 'mid', 'black'] as const;
 export type Surround = (typeof SURROUNDS)[number];
 

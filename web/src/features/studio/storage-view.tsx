@@ -14,7 +14,7 @@ export function StorageView({ storage }: { storage: StudioStorage }) {
   const { bytes, limitBytes, kinds } = storage;
   const part = Math.min(bytes / limitBytes, 1);
   const scarce = part >= 0.9;
-  const percent = part > 0 && part < 0.001 ? 'less than 0.1 %' : `${(part * 100).toFixed(1)} %`;
+  const percent = part > 0 && part < 0.001 ? 'less than 0.1%' : `${(part * 100).toFixed(1)}%`;
   return (
     <div className="max-w-3xl">
       <p>

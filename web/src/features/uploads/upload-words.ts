@@ -49,7 +49,7 @@ export function stateWords(file: UploadView): string {
     case 'reading':
       return 'Reading';
     case 'sending':
-      return file.size > 0 ? `${Math.floor((file.sent / file.size) * 100)} %` : 'Sending';
+      return file.size > 0 ? `${Math.floor((file.sent / file.size) * 100)}%` : 'Sending';
     case 'retrying':
       return 'Waiting to retry';
     case 'checking':

@@ -1,6 +1,6 @@
 import { GUIDE_LINES, type Guides } from './guides.ts';
 
-/** Draws guides over a picture: a hairline of white on a darker edge, seen on any picture and as thin at 100 %. */
+/** Draws guides over a picture: a hairline of white on a darker edge, seen on any picture and as thin at 100%. */
 export function GuideLines({ guides }: { guides: Guides }) {
   if (guides === 'none') return null;
   return (

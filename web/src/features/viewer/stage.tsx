@@ -53,7 +53,7 @@ function useSize(element: { current: HTMLElement | null }): Size {
   return size;
 }
 
-/** One picture on its surround: fitted, or at 100 % with panning; swiping leads to its neighbours. Give it a `key` a picture. */
+/** One picture on its surround: fitted, or at 100% with panning; swiping leads to its neighbours. Give it a `key` a picture. */
 export function Stage({ picture, alt, mark, over, onSwipe, onFull, onFailed, onShown, ref }: Props) {
   const stage = useRef<HTMLDivElement>(null);
   const size = useSize(stage);

@@ -62,7 +62,7 @@ export function WatermarkFields({ value, onChange, disabled }: Props) {
 
 function Slider({ label, value, min, onChange }: { label: string; value: number; min: number; onChange: (value: number) => void }) {
   return (
-    <Field label={`${label}: ${Math.round(value * 100)} %`}>
+    <Field label={`${label}: ${Math.round(value * 100)}%`}>
       {(control) => (
         <input
           {...control}
