@@ -3,6 +3,7 @@ import { setTimeout as pause } from 'node:timers/promises';
 import { afterAll, beforeAll, expect, it } from 'vitest';
 import { freeJobsOfTheDead } from '../../api/jobs/heart.ts';
 import { enqueue } from '../../api/jobs/queue.ts';
+import { startWork } from '../../api/jobs/work.ts';
 import { Proof } from '../../api/models/Proof.ts';
 import { makeOpenSheet } from '../support/factories/sheet.ts';
 import { makeStudio } from '../support/factories/studio.ts';
@@ -57,15 +58,30 @@ it(
   },
 );
 
-it('a lane that gives signs of life keeps its job', async () => {
+it('a job that takes long is locked in a name that gives signs of life', { timeout: 600_000 }, async () => {
+  let finish = () => undefined as void;
+  const finished = new Promise<void>((resolve) => (finish = resolve));
+  const work = await startWork(house.ctx, [{ name: 'take-long', run: () => finished }]);
+  await enqueue(house.ctx.knex, 'take-long', {});
+  await until(async () => (await lockedBy()).length === 1);
+  const [holder = ''] = await lockedBy();
+  await expect
+    .poll(() => house.ctx.knex('workerBeats').where({ workerId: holder }).select('workerId'), { timeout: 60_000 })
+    .toHaveLength(1);
+  finish();
+  await until(async () => (await lockedBy()).length === 0);
+  await work.stop();
+});
+
+it('a worker that gives signs of life keeps its job', async () => {
   await enqueue(house.ctx.knex, 'nobody-knows-this', {});
-  const hold = (lane: string) =>
-    house.ctx.knex.raw(`update graphile_worker._private_jobs set locked_by = ?, locked_at = now() - interval '5 minutes'`, [lane]);
-  await hold('lane-alive');
-  await house.ctx.knex('workerBeats').insert({ workerId: 'lane-alive', beatAt: house.ctx.knex.fn.now() });
+  const hold = (worker: string) =>
+    house.ctx.knex.raw(`update graphile_worker._private_jobs set locked_by = ?, locked_at = now() - interval '5 minutes'`, [worker]);
+  await hold('worker-alive');
+  await house.ctx.knex('workerBeats').insert({ workerId: 'worker-alive', beatAt: house.ctx.knex.fn.now() });
   expect(await freeJobsOfTheDead(house.ctx.knex)).toBe(0);
-  expect(await lockedBy()).toEqual(['lane-alive']);
-  await hold('lane-dead');
+  expect(await lockedBy()).toEqual(['worker-alive']);
+  await hold('worker-dead');
   expect(await freeJobsOfTheDead(house.ctx.knex)).toBe(1);
   expect(await lockedBy()).toEqual([]);
 });
