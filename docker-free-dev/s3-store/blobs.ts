@@ -4,7 +4,8 @@ import fsp from 'node:fs/promises';
 import path from 'node:path';
 import { pipeline } from 'node:stream/promises';
 
-const READ_BYTES = 256 * 1024;
+/** What is read or written at a time: each costs a hand-over to a thread and back, which in small bites takes longer than the disk. */
+const BITE = 1024 * 1024;
 
 /**
  * Files of raw bytes under random names: object keys never become paths. A blob counts only once the journal names
@@ -31,7 +32,7 @@ export class Blobs {
   async write(source: AsyncIterable<Buffer>): Promise<string> {
     const id = randomBytes(16).toString('hex');
     try {
-      await pipeline(source, fs.createWriteStream(this.file(id), { flags: 'wx', mode: 0o600, flush: this.sync }));
+      await pipeline(source, fs.createWriteStream(this.file(id), { flags: 'wx', mode: 0o600, flush: this.sync, highWaterMark: BITE }));
     } catch (error) {
       await fsp.rm(this.file(id), { force: true });
       throw error;
@@ -48,7 +49,7 @@ export class Blobs {
 
   /** Bytes from `start` to `end`, both included. */
   read(id: string, start: number, end: number): AsyncIterable<Buffer> {
-    return fs.createReadStream(this.file(id), { start, end, highWaterMark: READ_BYTES });
+    return fs.createReadStream(this.file(id), { start, end, highWaterMark: BITE });
   }
 
   /** Keeps blobs readable until the returned function is called, even when they are removed meanwhile. */
