@@ -98,7 +98,7 @@ async function ours(house: BenchHouse, pickListId: string): Promise<void> {
     const { state, problem } = (await (await fetch(address, { headers })).json()) as { state: string; problem: string | null };
     if (state === 'ready') break;
     if (state === 'failed') throw new Error(problem ?? 'The archive failed.');
-    await pause(50);
+    await pause(200);
   }
   await run('curl', ['-sS', '-f', '-o', '/dev/null', '-H', `Cookie: ${house.cookie}`, `${address}/download`]);
 }

@@ -3,6 +3,7 @@ import { once } from 'node:events';
 import { addAbortSignal, PassThrough, type Readable, type Writable } from 'node:stream';
 import { pipeline } from 'node:stream/promises';
 import { ZipArchive } from 'archiver';
+import './native-crc.ts';
 import type { ArchiveEntry, ArchivePlan } from './plan-archive.ts';
 
 /** The store gave other bytes than the row promises. Trying again may help only where the store was at fault. */
