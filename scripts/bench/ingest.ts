@@ -1,5 +1,5 @@
 import { fork, spawn } from 'node:child_process';
-import { createHash } from 'node:crypto';
+import { once } from 'node:events';
 import fs from 'node:fs';
 import os from 'node:os';
 import path from 'node:path';
@@ -7,50 +7,30 @@ import { setTimeout as pause } from 'node:timers/promises';
 import { type BenchHouse, startBenchHouse, watchMemory } from './bench-house.ts';
 import { type Figure, figure, inTurns, median, percentile, seconds } from './figures.ts';
 import { drawPhotographs } from './photographs.ts';
+import type { Sending } from './send-files.ts';
 
 const FILES = 60;
-const PART = 8 * 1024 * 1024;
 const SIZES = [2560, 960, 480];
 
-interface Source {
-  file: string;
-  bytes: Buffer;
-  sha256: string;
-}
-
-async function send(house: BenchHouse, source: Source): Promise<void> {
-  const headers = { cookie: house.cookie };
-  const json = { ...headers, 'content-type': 'application/json' };
-  const begun = await fetch(`${house.address}/api/commissions/${house.commission.id}/uploads`, {
-    method: 'POST',
-    headers: json,
-    body: JSON.stringify({ purpose: 'frame', name: path.basename(source.file), size: source.bytes.length, sha256: source.sha256 }),
+/** Uploads the files from a process of its own. */
+async function send(sending: Sending): Promise<void> {
+  const child = fork('scripts/bench/send-files.ts', {
+    execArgv: ['--import', 'tsx'],
+    env: { ...process.env, BENCH_SENDING: JSON.stringify(sending) },
   });
-  if (begun.status !== 201) throw new Error(`The upload was not opened: ${begun.status} ${await begun.text()}`);
-  const { id: uploadId } = (await begun.json()) as { id: string };
-  for (let at = 0; at * PART < source.bytes.length; at += 1) {
-    const form = new FormData();
-    form.set('part', new Blob([new Uint8Array(source.bytes.subarray(at * PART, (at + 1) * PART))]), 'part');
-    const answer = await fetch(`${house.address}/api/uploads/${uploadId}/parts/${at + 1}`, { method: 'PUT', headers, body: form });
-    if (!answer.ok) throw new Error(`Part ${at + 1} was refused: ${answer.status} ${await answer.text()}`);
-  }
-  const done = await fetch(`${house.address}/api/uploads/${uploadId}/complete`, { method: 'POST', headers: json, body: '{}' });
-  if (!done.ok) throw new Error(`The upload was not completed: ${done.status}`);
+  const [code] = (await once(child, 'exit')) as [number | null];
+  if (code !== 0) throw new Error(`The process that uploads ended with ${code}.`);
 }
 
-/** Four files abreast, as the browser sends them; ends when the last derivative is stored. */
-async function takeIn(house: BenchHouse, sources: Source[]): Promise<void> {
-  const waiting = [...sources];
-  const lane = async () => {
-    for (let source = waiting.shift(); source; source = waiting.shift()) await send(house, source);
-  };
-  await Promise.all([lane(), lane(), lane(), lane()]);
+/** Ends when the last derivative is stored. */
+async function takeIn(house: BenchHouse, files: string[]): Promise<void> {
+  await send({ address: house.address, commissionId: house.commission.id, cookie: house.cookie, files });
   for (;;) {
     const ready = await house.ctx
       .knex('frames')
       .where({ commissionId: house.commission.id, state: 'ready' })
       .count<{ count: number }[]>('* as count');
-    if (Number(ready[0]?.count) === sources.length) return;
+    if (Number(ready[0]?.count) === files.length) return;
     const failed = await house.ctx.knex('uploads').where({ state: 'failed' }).first('problem');
     if (failed) throw new Error(failed.problem);
     await pause(50);
@@ -66,11 +46,9 @@ async function forget(house: BenchHouse): Promise<void> {
 }
 
 /** libvips' own command on the same files: half of them to each of two processes, one thread each, every size from the original. */
-async function vipsthumbnail(sources: Source[], dir: string): Promise<void> {
+async function vipsthumbnail(sources: string[], dir: string): Promise<void> {
   const cores = os.availableParallelism();
-  const shares = Array.from({ length: cores }, (_, core) =>
-    sources.filter((_each, at) => at % cores === core).map((source) => source.file),
-  );
+  const shares = Array.from({ length: cores }, (_, core) => sources.filter((_each, at) => at % cores === core));
   await Promise.all(
     shares.map(async (files) => {
       for (const size of SIZES) {
@@ -120,10 +98,6 @@ async function askMeanwhile(house: BenchHouse, until: Promise<unknown>): Promise
 /** 60 JPEGs of 24 megapixels, uploaded over HTTP until the last derivative is stored. */
 export async function ingest(rounds: number): Promise<Figure[]> {
   const files = await drawPhotographs(FILES, 6000, 4000);
-  const sources = files.map((file) => {
-    const bytes = fs.readFileSync(file);
-    return { file, bytes, sha256: createHash('sha256').update(bytes).digest('hex') };
-  });
   const house = await startBenchHouse();
   const out = fs.mkdtempSync(path.join(os.tmpdir(), 'oriel-bench-vips-'));
   const memory: number[] = [];
@@ -134,7 +108,7 @@ export async function ingest(rounds: number): Promise<Figure[]> {
       async () => {
         const watched = await watchMemory(house.apiPid, () =>
           seconds(async () => {
-            const work = takeIn(house, sources);
+            const work = takeIn(house, files);
             latencies.push(...(await askMeanwhile(house, work)));
             await work;
           }),
@@ -143,7 +117,7 @@ export async function ingest(rounds: number): Promise<Figure[]> {
         await forget(house);
         return watched.result;
       },
-      () => seconds(() => vipsthumbnail(sources, out)),
+      () => seconds(() => vipsthumbnail(files, out)),
     );
     return [
       figure(`${FILES} JPEGs of 24 megapixels`, 's', median(ours), median(reference)),
