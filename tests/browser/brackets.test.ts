@@ -267,6 +267,9 @@ describe("the photographer's view of a bracket", () => {
     const words = await page.getByText(/^Highlights.*stripes rising/).textContent();
     expect(Number(/[\d.]+/.exec(words ?? '')?.[0])).toBeCloseTo(counted, counted < 10 ? 1 : 0);
     await visitor.audit();
+    await page.keyboard.press('g');
+    const lines = await page.locator('[data-guides=thirds]').evaluate((it) => it.getBoundingClientRect().toJSON());
+    expect(lines).toEqual(await page.locator('[data-stage-picture]').evaluate((it) => it.getBoundingClientRect().toJSON()));
     await page.keyboard.press('?');
     await page
       .getByRole('dialog', { name: 'Keys of this view' })

@@ -1,4 +1,4 @@
-import { useEffect, useImperativeHandle, useRef, useState, type Ref } from 'react';
+import { useEffect, useImperativeHandle, useRef, useState, type ReactNode, type Ref } from 'react';
 import { derivativeWidth } from '../../ui/picture.tsx';
 import { thumbhashAddress } from '../../ui/thumbhash-address.ts';
 import { fitInto, fullScale, type Size } from '../viewer/stage-view.ts';
@@ -31,13 +31,15 @@ interface Props {
   /** Large pictures that are kept ready beneath, so that changing to them is instant. */
   ready: readonly (string | undefined)[];
   clipping: boolean;
+  /** Drawn over the picture, as large as it. */
+  over: ReactNode;
   onFull: (isFull: boolean) => void;
   onStep: (to: 'next' | 'previous') => void;
   ref?: Ref<FrameStageHandle>;
 }
 
 /** A picture as large as its place allows, never cropped, or at 100%. What is shown may change; how it lies stays. */
-export function FrameStage({ size, shown, ready, clipping, onFull, onStep, ref }: Props) {
+export function FrameStage({ size, shown, ready, clipping, over, onFull, onStep, ref }: Props) {
   const stage = useRef<HTMLDivElement>(null);
   const room = useRoom(stage);
   const width = derivativeWidth({ ...size }, LARGE);
@@ -67,6 +69,7 @@ export function FrameStage({ size, shown, ready, clipping, onFull, onStep, ref }
       >
         <Layers shown={shown} ready={ready} />
         {clipping ? <ClippingStripes clipping={clipped} /> : null}
+        {over}
       </div>
       {clipping ? <ClippingWords clipping={clipped} /> : null}
     </div>

@@ -5,6 +5,9 @@ import { Button } from '../../ui/button.tsx';
 import { NoticeRegion } from '../../ui/notices.tsx';
 import { SurroundMenu } from '../sheets-guest/surround-menu.tsx';
 import { nextSurround, useSurround, type Surround } from '../sheets-guest/surround.ts';
+import { GuideLines } from '../viewer/guide-lines.tsx';
+import { GuidesMenu } from '../viewer/guides-menu.tsx';
+import { nextGuides, useGuides } from '../viewer/guides.ts';
 import { placesOf, stepIn, type BracketSet } from './bracket-places.ts';
 import { BracketStrip } from './bracket-strip.tsx';
 import { FramePanel } from './frame-panel.tsx';
@@ -16,6 +19,7 @@ import { frameQuery } from './queries.ts';
 import { useBlink } from './use-blink.ts';
 import { pressInViewer } from './use-frame-keys.ts';
 import { useLayers } from './use-layers.ts';
+import '../../messages/beyond-sheet.ts';
 
 /** Words on each surround keep 4.5:1. */
 const SURROUNDS: Record<Surround, string> = {
@@ -43,6 +47,7 @@ interface Props {
 /** One frame over the whole window, or its bracket's merged picture, with what is known of it at the side. */
 export function FrameViewer({ frame, place, before, after, set, merged, onGo, onClose, children }: Props) {
   const [surround, setSurround] = useSurround('viewer');
+  const [guides, setGuides] = useGuides();
   const [clipping, setClipping] = useState(false);
   const [isFull, setFull] = useState(false);
   const [asking, setAsking] = useState(false);
@@ -71,6 +76,7 @@ export function FrameViewer({ frame, place, before, after, set, merged, onGo, on
       pan: (x, y) => stage.current?.pan(x, y),
       zoom: () => stage.current?.toggle(),
       clipping: () => setClipping(!clipping),
+      guides: () => setGuides(nextGuides(guides)),
       surround: () => setSurround(nextSurround(surround)),
       help: () => setAsking(true),
     });
@@ -96,6 +102,7 @@ export function FrameViewer({ frame, place, before, after, set, merged, onGo, on
         <Button size="small" aria-pressed={isFull} tone={isFull ? 'first' : 'plain'} onClick={() => stage.current?.toggle()}>
           100%
         </Button>
+        <GuidesMenu guides={guides} onChoose={setGuides} />
         <SurroundMenu surround={surround} onChoose={setSurround} />
         {children}
         <Button size="small" onClick={() => setAsking(true)}>
@@ -120,6 +127,7 @@ export function FrameViewer({ frame, place, before, after, set, merged, onGo, on
                 shown={shown}
                 ready={ready}
                 clipping={clipping}
+                over={<GuideLines guides={guides} />}
                 onFull={setFull}
                 onStep={(to) => goTo(to === 'next' ? after : before)}
               />

@@ -23,6 +23,7 @@ export const VIEWER_KEYS: readonly KeyWords[] = [
   ['Z', 'Between the whole picture and 100%'],
   ['Shift with arrows', 'Move about at 100%'],
   ['H', 'Show what is clipped'],
+  ['G', 'The next guides over the picture'],
   ['S', 'Change the surround'],
   ['Escape', 'Back to all frames'],
   ['?', 'This list'],

@@ -9,6 +9,7 @@ export interface ViewerDeeds {
   pan: (x: number, y: number) => void;
   zoom: () => void;
   clipping: () => void;
+  guides: () => void;
   surround: () => void;
   help: () => void;
 }
@@ -40,6 +41,8 @@ function deedOf(key: string, deeds: ViewerDeeds): (() => void) | undefined {
       return deeds.zoom;
     case 'h':
       return deeds.clipping;
+    case 'g':
+      return deeds.guides;
     case 's':
       return deeds.surround;
     case '?':
