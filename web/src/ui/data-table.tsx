@@ -47,7 +47,10 @@ export function DataTable<T>({ caption, columns, rows, rowKey, sorting, onSort, 
           {rows.map((row) => (
             <tr key={rowKey(row)} className="border-t border-hair">
               {columns.map((column) => (
-                <td key={column.key} className={joinClasses('px-3.5 py-2 align-middle', column.align === 'right' && 'text-right')}>
+                <td
+                  key={column.key}
+                  className={joinClasses('px-2.5 py-2 align-middle lg:px-3.5', column.align === 'right' && 'text-right')}
+                >
                   {column.cell(row)}
                 </td>
               ))}
@@ -74,7 +77,7 @@ function HeadCell<T>({ column, sorting, onSort }: HeadProps<T>) {
       scope="col"
       aria-sort={sort}
       style={column.width ? { width: column.width } : undefined}
-      className={joinClasses('lettering px-3.5 py-2 font-normal whitespace-nowrap', column.align === 'right' && 'text-right')}
+      className={joinClasses('lettering px-2.5 py-2 lg:px-3.5 font-normal whitespace-nowrap', column.align === 'right' && 'text-right')}
     >
       {column.sortable && onSort ? (
         <button

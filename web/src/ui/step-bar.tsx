@@ -1,5 +1,6 @@
+import { useEffect, useRef } from 'react';
 import { useTranslation } from 'react-i18next';
-import { NavLink } from 'react-router-dom';
+import { NavLink, useLocation } from 'react-router-dom';
 import { joinClasses } from './join-classes.ts';
 
 export interface Step {
@@ -12,8 +13,15 @@ export interface Step {
 /** A commission's pages as its steps, left to right; drawn below the cells of the title block. */
 export function StepBar({ steps, label }: { steps: Step[]; label?: string }) {
   const { t } = useTranslation();
+  const bar = useRef<HTMLElement>(null);
+  const { pathname } = useLocation();
+  // Where not all steps fit, the one that is open has to be seen.
+  useEffect(() => {
+    const current = bar.current?.querySelector('[aria-current]');
+    if (bar.current && current) bar.current.scrollLeft += offsetWithin(current, bar.current);
+  }, [pathname]);
   return (
-    <nav aria-label={label ?? t('ui.steps')} className="overflow-x-auto border-t border-ink">
+    <nav ref={bar} aria-label={label ?? t('ui.steps')} className="overflow-x-auto border-t border-ink">
       <ul className="flex">
         {steps.map((step, at) => (
           <li key={step.to} className={joinClasses('min-w-20 flex-1', at > 0 && 'border-l border-line')}>
@@ -38,4 +46,10 @@ export function StepBar({ steps, label }: { steps: Step[]; label?: string }) {
       </ul>
     </nav>
   );
+}
+
+/** Pixels by which to scroll sideways, so that an element stands in the middle of the box around it. */
+function offsetWithin(element: Element, box: Element): number {
+  const [inner, outer] = [element.getBoundingClientRect(), box.getBoundingClientRect()];
+  return inner.left + inner.width / 2 - (outer.left + outer.width / 2);
 }

@@ -32,7 +32,7 @@ export function StudioShell({ account, entries = ENTRIES, children }: StudioShel
           <Logo />
           Oriel
         </p>
-        <nav aria-label="Studio" className="flex flex-wrap md:block">
+        <nav aria-label="Studio" className="max-md:order-last max-md:w-full flex flex-wrap md:block">
           {entries.map((entry) => (
             <NavLink
               key={entry.to}
@@ -45,7 +45,7 @@ export function StudioShell({ account, entries = ENTRIES, children }: StudioShel
             </NavLink>
           ))}
         </nav>
-        {account ? <div className="ml-auto p-5 text-13 text-mute md:mt-auto md:ml-0">{account}</div> : null}
+        {account ? <div className="ml-auto px-4 py-2 text-13 text-mute md:mt-auto md:ml-0 md:p-5">{account}</div> : null}
       </header>
       <main id="content" tabIndex={-1} className="min-w-0 px-4 pt-5 pb-16 lg:px-8">
         {children}

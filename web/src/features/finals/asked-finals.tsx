@@ -38,7 +38,7 @@ function AskedFinal({ commissionId, final, list }: { commissionId: string; final
       <div className="flex gap-3">
         <Thumb {...newest} picture={newest.pictures?.['480']} box={{ width: 150, height: 110 }} />
         <div className="min-w-0">
-          <p className="font-bold break-all">{newest.originalName}</p>
+          <p className="font-bold wrap-anywhere">{newest.originalName}</p>
           <p className="text-13 text-mute">{sizeWords(newest)}</p>
           <p className="mt-1 text-13 text-copper">{doubtWords(final.doubt ?? 'several')}</p>
         </div>

@@ -22,7 +22,7 @@ export function FinalCell({ final, besideProof = false }: { final: FinalItem; be
         <Thumb {...newest} picture={newest.pictures?.['480']} />
       </span>
       <span className="min-w-40">
-        <b className="block break-all">{newest.name}</b>
+        <b className="block wrap-anywhere">{newest.name}</b>
         <span className="block text-13 text-mute">{sizeWords(newest)}</span>
         <span className="block text-13 text-mute">
           {newest.number > 1 ? `Version ${newest.number}, ` : ''}
@@ -99,7 +99,7 @@ function VersionRow({ commissionId, version, alone }: { commissionId: string; ve
       <Thumb {...version} picture={version.pictures?.['480']} />
       <div className="min-w-0 flex-1 basis-60">
         <p>
-          <b>Version {version.number}</b> <span className="break-all">· {version.originalName}</span>
+          <b>Version {version.number}</b> <span className="wrap-anywhere">· {version.originalName}</span>
         </p>
         <p className="text-13 text-mute">
           {sizeWords(version)} · {formatTime(version.createdAt)}

@@ -18,7 +18,7 @@ export function PickedFinals({ commissionId, list }: Props) {
   const sheets = sheetCount(list.picks);
   const columns: Column<PickForFinal>[] = [
     { key: 'pick', words: sheets > 1 ? 'Sheet, pick' : 'Pick', width: '92px', cell: (pick) => <PickNumber pick={pick} sheets={sheets} /> },
-    { key: 'proof', words: 'Proof', width: '150px', cell: (pick) => <Thumb {...pick} /> },
+    { key: 'proof', words: 'Proof', cell: (pick) => <Thumb {...pick} /> },
     { key: 'view', words: 'View', cell: (pick) => <ViewCell pick={pick} title={finalOf(pick)} /> },
     { key: 'final', words: 'Final', width: '38%', cell: (pick) => <OptionalFinal final={finalOf(pick)} /> },
     { key: 'delivered', words: 'Delivered', cell: (pick) => <OptionalDelivered final={finalOf(pick)} /> },
@@ -49,7 +49,7 @@ function ViewCell({ pick, title }: { pick: PickForFinal; title: FinalItem | unde
   return (
     <>
       <span className="block min-w-28">{title?.ownTitle ? title.title : (pick.viewTitle ?? 'Also made')}</span>
-      <span className="block text-13 break-all text-mute">
+      <span className="block text-13 wrap-anywhere text-mute">
         {pick.frameName}
         {pick.exposures > 1 ? ` · ${pick.exposures} exposures` : ''}
       </span>

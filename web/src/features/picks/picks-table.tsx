@@ -2,14 +2,7 @@ import { Link } from 'react-router-dom';
 import type { PickListDetail, PickRow } from '../../../../api/contract/pick-lists.ts';
 import { type Column, DataTable } from '../../ui/data-table.tsx';
 import { Keystone } from '../../ui/keystone.tsx';
-import { Picture } from '../../ui/picture.tsx';
-
-/** Pictures lie in a box of this size, whatever their proportions. */
-const BOX = { width: 120, height: 80 };
-
-function drawnWidth(pick: PickRow): number {
-  return Math.min(BOX.width, (BOX.height * pick.width) / pick.height);
-}
+import { Thumb } from '../finals/thumb.tsx';
 
 function finalWords(pick: PickRow): string {
   if (!pick.final) return 'not yet';
@@ -18,16 +11,13 @@ function finalWords(pick: PickRow): string {
 
 function columnsOf(commissionId: string, changed: boolean): Column<PickRow>[] {
   const columns: Column<PickRow>[] = [
-    { key: 'pick', words: 'Pick', width: '84px', cell: (pick) => <Keystone number={pick.number} extra={pick.extra} size="small" /> },
+    { key: 'pick', words: 'Pick', width: '64px', cell: (pick) => <Keystone number={pick.number} extra={pick.extra} size="small" /> },
     {
       key: 'proof',
       words: 'Proof',
-      width: '180px',
       cell: (pick) => (
         <span className="flex items-center gap-3">
-          <span style={{ width: drawnWidth(pick) }}>
-            <Picture source={{ ...pick, small: pick.picture, thumbhash: pick.placeholder }} alt="" drawnWidth={BOX.width} />
-          </span>
+          <Thumb {...pick} />
           <span className="text-mute">{String(pick.proofNumber).padStart(2, '0')}</span>
         </span>
       ),
@@ -38,7 +28,10 @@ function columnsOf(commissionId: string, changed: boolean): Column<PickRow>[] {
       words: 'Frame',
       cell: (pick) => (
         <>
-          <Link to={`/commissions/${commissionId}/frames/${pick.frameId}`} className="break-all underline-offset-4 hover:underline">
+          <Link
+            to={`/commissions/${commissionId}/frames/${pick.frameId}`}
+            className="inline-block min-w-24 wrap-anywhere underline-offset-4 hover:underline"
+          >
             {pick.frameName}
           </Link>
           {pick.frames.length > 1 ? (

@@ -85,7 +85,7 @@ function GuestLine({ guest, sheet, deed, onTakeBack }: LineProps) {
         <b className="min-w-0 wrap-break-word">{guest.name}</b>
         <span className="lettering pt-1">{guest.role}</span>
       </p>
-      <p className="text-13 break-all text-mute">{guest.email}</p>
+      <p className="text-13 wrap-anywhere text-mute">{guest.email}</p>
       <p className="text-13">
         <span className={TONES[state.tone]}>{state.words}</span>
         {guest.marks > 0 ? <span className="text-mute"> · {counted(guest.marks, 'mark')}</span> : null}

@@ -60,7 +60,7 @@ export function ProofTile({ proof, view, editable, chosen, onChoose, onEarlier, 
       </button>
       <div className="flex items-start justify-between gap-1 pt-1 text-13">
         <p className="min-w-0 py-1">
-          <b>{String(proof.number).padStart(2, '0')}</b> <span className="break-all text-mute">{proof.frameName}</span>
+          <b>{String(proof.number).padStart(2, '0')}</b> <span className="wrap-anywhere text-mute">{proof.frameName}</span>
           {proof.exposures ? <Exposures proof={proof} onShow={onShow} /> : null}
           {proof.ready ? null : <span className="block text-mute">watermark being laid</span>}
           {proof.markedBy.length > 0 ? (

@@ -20,8 +20,8 @@ export function AccountCorner({ me }: { me: Me }) {
   });
   return (
     <div className="flex flex-wrap items-center gap-x-3 gap-y-1 md:block">
-      <p className="font-bold wrap-break-word text-ink">{me.studio.name}</p>
-      <p className="wrap-break-word">{me.account.name}</p>
+      <p className="font-bold wrap-break-word text-ink max-md:hidden">{me.studio.name}</p>
+      <p className="wrap-break-word max-md:hidden">{me.account.name}</p>
       {me.mailsPage ? (
         <p className="md:mt-2">
           <a href={me.mailsPage} className="target inline-flex items-center underline underline-offset-4" target="_blank" rel="noreferrer">
