@@ -36,7 +36,7 @@ function Person({ recipient }: { recipient: RecipientItem }) {
   return (
     <>
       <b className={recipient.withdrawnAt ? 'text-mute line-through' : ''}>{recipient.name}</b>
-      <span className="block text-13 wrap-anywhere text-mute">{recipient.email}</span>
+      <span className="block min-w-44 text-13 wrap-anywhere text-mute">{recipient.email}</span>
     </>
   );
 }
