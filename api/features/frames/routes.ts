@@ -50,9 +50,15 @@ export function frameRoutes({ ctx, gates: { staff } }: RouteContext): Router {
   router.get('/frames/:frameId', staff(), ids('frameId'), async (req, res) => {
     res.json(await presentFrame(ctx, staffOf(req), await findFrame(staffOf(req), req.params.frameId)));
   });
-  router.get('/commissions/:commissionId/events', staff(), ids('commissionId'), async (req, res) => {
-    const commission = await findCommission(staffOf(req), req.params.commissionId);
-    streamEvents(ctx.live, `commission:${commission.id}`, req, res);
+  const gate = staff();
+  router.get('/commissions/:commissionId/events', gate, ids('commissionId'), async (req, res) => {
+    const find = () => findCommission(staffOf(req), req.params.commissionId);
+    const { id } = await find();
+    const stillMay = async () => {
+      await gate(req, res, () => undefined);
+      await find();
+    };
+    streamEvents(ctx.live, `commission:${id}`, { res, stillMay });
   });
 
   return router;

@@ -40,8 +40,10 @@ export function guestSheetRoutes({ ctx, gates: { guestOfSheet, staff }, limits: 
     res.type('application/json').end(packed ? gzipped : plain);
   });
 
-  router.get('/guest/sheets/:sheetId/events', ids('sheetId'), guestOfSheet(), (req, res) => {
-    streamEvents(ctx.live, `sheet:${req.params.sheetId}`, req, res);
+  const gate = guestOfSheet();
+  router.get('/guest/sheets/:sheetId/events', ids('sheetId'), gate, (req, res) => {
+    const stillMay = async () => gate(req, res, () => undefined);
+    streamEvents(ctx.live, `sheet:${req.params.sheetId}`, { res, stillMay });
   });
 
   router.post(
