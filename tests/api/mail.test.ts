@@ -3,8 +3,8 @@ import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import { findUnsureMails } from '../../api/features/mail/find-unsure-mails.job.ts';
 import { sendMail } from '../../api/features/mail/send-mail.job.ts';
 import { type MailToSend, queueMail } from '../../api/features/mail/queue-mail.ts';
-import { withdrawWaitingMails } from '../../api/features/mail/withdraw-waiting.ts';
 import { Mail } from '../../api/models/Mail.ts';
+import { makeCommission } from '../support/factories/commission.ts';
 import { type MadeStudio, makeStudio } from '../support/factories/studio.ts';
 import { type House, startHouse } from '../support/house.ts';
 
@@ -141,16 +141,18 @@ describe('the outbox', () => {
     expect(await find(id)).toMatchObject({ state: 'sent' });
   });
 
-  it('does not send what was withdrawn, nor what is not there', async () => {
-    const id = await queue();
-    const count = await house.ctx.knex.transaction((trx) =>
-      withdrawWaitingMails(trx, { studioId: made.studio.id, kinds: ['sheet-invitation'] }),
-    );
-    expect(count).toBe(1);
+  it('does not send what waits for a commission that was deleted until it is brought back, nor what is not there', async () => {
+    const commission = await makeCommission(made.studio);
+    const id = await queue({ commissionId: commission.id });
+    await made.owner.agent.delete(`/api/commissions/${commission.id}`).expect(204);
     await house.runJobs();
     await run(randomUUID());
     expect(house.mails.mails()).toEqual([]);
     expect(await find(id)).toMatchObject({ state: 'withdrawn' });
+    await made.owner.agent.post(`/api/commissions/${commission.id}/restore`).expect(200);
+    await house.runJobs();
+    expect(await find(id)).toMatchObject({ state: 'sent' });
+    expect(house.mails.mails()).toHaveLength(1);
   });
 
   it('refuses an address that would end the header line, whoever wrote it into the table', async () => {

@@ -7,6 +7,7 @@ import type { StaffActor } from '../../middleware/actor.ts';
 import { problem } from '../../middleware/problem.ts';
 import { Commission } from '../../models/Commission.ts';
 import { Delivery } from '../../models/Delivery.ts';
+import { holdMails, releaseMails } from '../mail/hold-mails.ts';
 import { addToRecord } from '../record/add-to-record.ts';
 import { countContents } from './count-contents.ts';
 import { readCommission } from './read-commission.ts';
@@ -18,6 +19,7 @@ export async function deleteCommission(ctx: Context, actor: StaffActor, commissi
     if (!commission) throw problem(404);
     const { frames, sheets, deliveries } = await countContents(trx, actor, commissionId);
     await Commission.within(actor, trx).findById(commissionId).patch({ deletedAt: new Date() });
+    await holdMails(trx, commissionId);
     await addToRecord(trx, {
       studioId: actor.studioId,
       commissionId,
@@ -37,6 +39,7 @@ export async function restoreCommission(ctx: Context, actor: StaffActor, commiss
     const answer = await readCommission(trx, actor, commissionId);
     if (!restored) return answer;
     await sendWhatWaits(trx, actor, commissionId);
+    await releaseMails(trx, commissionId);
     await addToRecord(trx, {
       studioId: actor.studioId,
       commissionId,
