@@ -63,7 +63,10 @@ export class RowWindow {
 
   /** Takes the layout of this drawing; tells only when it moves a row. */
   arrange(layout: RowLayout): void {
-    if (layout.layoutKey !== this.#layout.layoutKey) this.#measured.clear();
+    const { count, heightOf, keyOf, layoutKey } = this.#layout;
+    // Scrolling draws the list again with the same layout; laying thousands of rows out each time would be felt.
+    if (layout.count === count && layout.heightOf === heightOf && layout.keyOf === keyOf && layout.layoutKey === layoutKey) return;
+    if (layout.layoutKey !== layoutKey) this.#measured.clear();
     this.#layout = layout;
     this.#lay();
   }
