@@ -117,7 +117,7 @@ export async function bridgesOut(stage: Stage, clientId: string): Promise<string
   await letTimePass(stage.ctx.knex, id, 2 * DAY);
   const chosen = [...stems(331), ...stems(334), ...stems(337), ...stems(339, 341), ...stems(344, 345)];
   const sheet = await draftSheet(stage, id, chosen, 4);
-  const words = 'The proofs of the basin. Five are included; please choose by the date above.';
+  const words = 'The proofs of the basin. Five are included; please choose in time.';
   const tokens = await openToGuests(stage, sheet, runa, [piet, saskia], words);
   await letTimePass(stage.ctx.knex, id, 3 * DAY);
   for (const { email } of [runa, piet]) await openLink(stage.ctx, tokenFor(tokens, email));

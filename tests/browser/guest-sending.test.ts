@@ -69,6 +69,40 @@ describe('reviewing and sending', () => {
     await visitor.close();
   });
 
+  it('fails at once without a line, with a sentence, and is not sent later', async () => {
+    const open = await pickedSheet();
+    const visitor = await site.visit(`${open.address}/review`, { cookie: open.lead.cookie });
+    const { page } = visitor;
+    await page.getByRole('button', { name: 'Send 3 picks' }).click();
+    visitor.expectErrors(/ERR_INTERNET_DISCONNECTED/);
+    await page.context().setOffline(true);
+    await page.getByRole('button', { name: 'Send now' }).click();
+    const dialog = page.getByRole('dialog');
+    await dialog.getByText(/^No answer from the server/).waitFor();
+    await dialog.getByRole('button', { name: 'Cancel' }).click();
+    const asked = page.waitForRequest(/pick-lists/, { timeout: 3000 }).then(
+      () => true,
+      () => false,
+    );
+    await page.context().setOffline(false);
+    expect(await asked).toBe(false);
+    expect(await listsOf(open.sheet.id)).toEqual([]);
+    await visitor.close();
+  });
+
+  it('shows every picture beside its words, not over them, on a phone', async () => {
+    const open = await pickedSheet();
+    const visitor = await site.visit(`${open.address}/review`, { cookie: open.lead.cookie, ...SCREENS.phone });
+    const rows = visitor.page.locator('main li').filter({ has: visitor.page.locator('img') });
+    await rows.first().waitFor();
+    for (const row of await rows.all()) {
+      const picture = await row.locator('img').boundingBox();
+      const words = await row.locator('b').first().boundingBox();
+      expect((picture?.x ?? 0) + (picture?.width ?? 0)).toBeLessThanOrEqual(words?.x ?? 0);
+    }
+    await visitor.close();
+  });
+
   it('takes a pick off the list and puts it back', async () => {
     const open = await pickedSheet();
     const visitor = await site.visit(`${open.address}/review`, { cookie: open.lead.cookie });

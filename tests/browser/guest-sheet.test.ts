@@ -49,6 +49,22 @@ describe('the guest’s sheet', () => {
     await visitor.close();
   });
 
+  it.each([
+    ['All proofs', (page: Visitor['page']) => page.getByRole('button', { name: 'All proofs' }).click()],
+    ['Escape', (page: Visitor['page']) => page.keyboard.press('Escape')],
+  ])('shows the proof that was looked at last, coming back by %s on a phone', async (_name, comeBack) => {
+    const open = await openSheet();
+    const visitor = await visit(open, 'lead', SCREENS.phone, '/proofs/6');
+    await visitor.page.getByRole('heading', { level: 1 }).waitFor();
+    await comeBack(visitor.page);
+    await picture(visitor, 6).waitFor();
+    await soon(async () => {
+      const box = await picture(visitor, 6).boundingBox();
+      return box !== null && box.y >= 0 && box.y < SCREENS.phone.viewport.height;
+    }).toBe(true);
+    await visitor.close();
+  });
+
   it.each(Object.entries(SCREENS))('has no violation of WCAG and nothing beyond the right edge on a %s', async (_name, screen) => {
     const open = await openSheet();
     await open.lead.agent.put(`/api/guest${open.address}/proofs/${open.proofs[0]?.id}/mark`);

@@ -123,7 +123,7 @@ async function tellStudio(
     to: { address: actor.email, name: invitation.name },
     fromName: about.studio.name,
     replyTo: about.studio.replyTo,
-    ...pickListReceiptMail({ ...about, list, guest: invitation.name }),
+    ...pickListReceiptMail({ ...about, list, picks, guest: invitation.name, link: `${ctx.config.address}/sheets/${sheet.id}/review` }),
   });
   await addToRecord(trx, {
     studioId: sheet.studioId,

@@ -10,7 +10,8 @@ export function worthRetrying(failures: number, error: unknown): boolean {
 /** The one cache of the page. Live updates tell when something is stale, so focus alone asks for nothing within 30 s. */
 export const queryClient = new QueryClient({
   defaultOptions: {
-    queries: { retry: worthRetrying, staleTime: 30_000, gcTime: 10 * 60_000 },
-    mutations: { retry: false },
+    queries: { retry: worthRetrying, staleTime: 30_000, gcTime: 10 * 60_000, networkMode: 'always' },
+    // Without a line a deed fails at once with a sentence. Kept back until the line is there it would happen later, when nobody expects it.
+    mutations: { retry: false, networkMode: 'always' },
   },
 });

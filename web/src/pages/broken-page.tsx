@@ -1,5 +1,5 @@
 import { useTranslation } from 'react-i18next';
-import { useRouteError } from 'react-router-dom';
+import { useNavigate, useRouteError } from 'react-router-dom';
 import { ApiProblem } from '../lib/api.ts';
 import { Button } from '../ui/button.tsx';
 import { GuestShell } from '../ui/guest-shell.tsx';
@@ -14,14 +14,21 @@ function isStaleBuild(error: unknown): boolean {
 export function BrokenPage() {
   const { t } = useTranslation();
   const error = useRouteError();
-  const stale = isStaleBuild(error);
+  const navigate = useNavigate();
+  const isGone = isStaleBuild(error);
+  // Without a line no page can be fetched, and loading this one again would lose it.
+  const kind = isGone ? (navigator.onLine ? 'stale' : 'offline') : 'broken';
   return (
     <GuestShell>
       <div className="max-w-xl py-12">
-        <PageTitle title={t(stale ? 'page.staleTitle' : 'page.brokenTitle')} />
-        <p className="mt-3">{error instanceof ApiProblem ? error.detail : t(stale ? 'page.stale' : 'page.broken')}</p>
-        <Button className="mt-6" tone="first" onClick={() => window.location.reload()}>
-          {t('ui.reload')}
+        <PageTitle title={t(`page.${kind}Title`)} />
+        <p className="mt-3">{error instanceof ApiProblem ? error.detail : t(`page.${kind}`)}</p>
+        <Button
+          className="mt-6"
+          tone="first"
+          onClick={() => (kind === 'offline' ? void navigate('.', { replace: true }) : window.location.reload())}
+        >
+          {t(kind === 'offline' ? 'ui.tryAgain' : 'ui.reload')}
         </Button>
       </div>
     </GuestShell>

@@ -52,7 +52,7 @@ export function Dialog({ open, onClose, title, children, actions, wide }: Props)
         if (event.target === dialog.current) onClose();
       }}
     >
-      <div className="flex items-start justify-between gap-4 border-b border-line px-5 py-3">
+      <div className="flex items-center justify-between gap-4 border-b border-line px-5 py-2">
         <h2 id={id} className="text-17">
           {title}
         </h2>

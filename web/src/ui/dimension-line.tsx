@@ -43,14 +43,14 @@ export function DimensionLine({ picked, included, price, className }: Props) {
       </p>
       <div aria-hidden="true" className="relative h-11">
         <p className="absolute top-0 left-0">
-          <b>{t('allowance.picked', { count: picked })}</b> {t('allowance.of', { included })}
+          <b>{t('allowance.picked', { count: picked })}</b>
+          {extra > 0 ? t('allowance.extra', { count: extra }) : ` ${t('allowance.of', { included })}`}
         </p>
         <p
           className="absolute top-0 pl-1.5 whitespace-nowrap"
-          style={{ left: `clamp(168px, ${percent(drawing.tick)}, calc(100% - 96px))` }}
+          style={{ left: `clamp(168px, ${percent(drawing.tick)}, calc(100% - 128px))` }}
         >
-          <span className="max-sm:hidden">{then}</span>
-          <span className="sm:hidden">{price === null ? then : t('allowance.thenShort', { price })}</span>
+          {then}
         </p>
         <div className="absolute inset-x-0 top-[28px] border-t border-ink" />
         <div className="absolute top-[25px] left-0 h-[7px] bg-copper transition-[width]" style={{ width: percent(drawing.fill) }} />

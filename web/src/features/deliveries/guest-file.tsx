@@ -43,10 +43,8 @@ export function GuestFileTile({ file, box, first, onLook, onFailed }: Props) {
           <b className="block truncate" title={file.title}>
             {file.title}
           </b>
-          <span className="block truncate text-mute">
-            {file.fetched ? <b className="text-verdigris">{t('delivery.fetched')} · </b> : null}
-            {sizeWords(file)}
-          </span>
+          <span className="block text-mute">{sizeWords(file)}</span>
+          {file.fetched ? <b className="block text-verdigris">{t('delivery.fetched')}</b> : null}
         </span>
         <AnchorButton size="small" href={file.download} download={file.name} aria-label={t('delivery.downloadOne', { title: file.title })}>
           {t('delivery.download')}

@@ -28,12 +28,12 @@ export function PickRow({ proof, view, place, marks, sheetId, onTakeOff }: Props
   return (
     <li className="flex items-center gap-3 border-b border-hair py-2 md:gap-5">
       <Keystone number={place.number} extra={place.extra} size="small" className="shrink-0" />
-      <span className="grid w-20 shrink-0 place-items-center sm:w-33">
+      <span className="grid w-20 shrink-0 grid-cols-1 place-items-center sm:w-33">
         <Link
           to={`/sheets/${sheetId}/proofs/${proof.number}`}
           aria-label={nameOfProof(t, { number: proof.number, view, marks, place })}
-          className="block max-w-full"
-          style={{ width }}
+          className="block"
+          style={{ width: `min(100%, ${width}px)` }}
         >
           <Picture source={{ ...proof, ...proof.pictures, thumbhash: proof.placeholder }} alt="" drawnWidth={width} />
         </Link>

@@ -34,7 +34,7 @@ function NextSteps({ sheet }: { sheet: GuestSheet }) {
       <li className="mb-1">{t('review.next2')}</li>
       <li>
         {t('review.next3')}{' '}
-        <a href={`mailto:${sheet.studio.replyTo}`} className="underline underline-offset-2">
+        <a href={`mailto:${sheet.studio.replyTo}`} className="target inline-flex items-center underline underline-offset-2">
           {t('sheet.writeTo', { studio: sheet.studio.name })}
         </a>
       </li>
@@ -69,7 +69,7 @@ function SentList({ data, list }: { data: SheetData; list: SentPickList }) {
           ))}
         </ul>
       </div>
-      <div className="max-lg:order-first">
+      <div>
         <Sums
           picks={list.picks}
           included={list.allowance}

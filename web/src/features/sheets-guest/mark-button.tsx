@@ -11,12 +11,15 @@ interface Props {
   className?: string;
   /** The number of the pick, shown after the word. */
   place?: number | undefined;
+  /** What a pick beyond the allowance costs, in words. */
+  extra?: string | undefined;
 }
 
 /** Sets or takes back one's own mark. A lead picks, a reviewer marks. */
-export function MarkButton({ number, marks, role, onMark, className, place }: Props) {
+export function MarkButton({ number, marks, role, onMark, className, place, extra }: Props) {
   const { t } = useTranslation();
-  const numbered = marks.mine && place !== undefined ? ` · ${place}` : '';
+  const cost = extra ? `, ${t('foot.extras', { count: 1, cost: extra })}` : '';
+  const numbered = marks.mine && place !== undefined ? ` · ${place}${cost}` : '';
   const verb = role === 'lead' ? (marks.mine ? 'picked' : 'pick') : marks.mine ? 'marked' : 'mark';
   return (
     <Button

@@ -44,7 +44,8 @@ export function SheetBody({ storeys, comingFrom, ...rest }: SheetBodyProps) {
   useEffect(() => {
     if (arrived.current || comingFrom === undefined || rows.length === 0) return;
     arrived.current = true;
-    focusProof(comingFrom);
+    // By the next frame the list is as high as its rows; before that the window cannot scroll to them.
+    requestAnimationFrame(() => focusProof(comingFrom));
   }, [comingFrom, rows, focusProof]);
 
   const heightOf = useCallback(

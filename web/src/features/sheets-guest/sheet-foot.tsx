@@ -26,12 +26,14 @@ export function SheetFoot({ sheet, picked, mine }: Props) {
         <p role="status">
           <b>{t('allowance.picked', { count: picked })}</b>
           <span className="text-mute">
+            <span className={state.extras > 0 ? undefined : 'max-sm:sr-only'}> · {rest}</span>
+            {state.extras > 0 ? null : (
+              <span aria-hidden="true" className="sm:hidden">
+                {' '}
+                {t('foot.ofIncluded', { included: sheet.allowance })}
+              </span>
+            )}
             {sheet.me.role === 'reviewer' ? ` · ${t('foot.mine', { count: mine })}` : ''}
-            <span className="max-sm:sr-only"> · {rest}</span>
-            <span aria-hidden="true" className="sm:hidden">
-              {' '}
-              {t('foot.ofIncluded', { included: sheet.allowance })}
-            </span>
           </span>
         </p>
         {sheet.me.role === 'reviewer' && sheet.state === 'Open' ? (

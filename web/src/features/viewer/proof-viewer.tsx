@@ -2,6 +2,7 @@ import { useCallback, useEffect, useRef, useState } from 'react';
 import { useTranslation } from 'react-i18next';
 import { useLocation, useNavigate } from 'react-router-dom';
 import type { GuestProof } from '../../../../api/contract/guest-sheets.ts';
+import { formatPrice } from '../../lib/money.ts';
 import { Keystone } from '../../ui/keystone.tsx';
 import { marksOf } from '../marks/read-marks.ts';
 import { noteLookedAt } from '../sheets-guest/looked-at.ts';
@@ -118,6 +119,7 @@ export function ProofViewer({ data, at }: Props) {
                 role={sheet.me.role}
                 onMark={toggleMark}
                 place={place?.number}
+                extra={place?.extra ? formatPrice(sheet.extraPrice, sheet.currency) : undefined}
                 className="flex-1 text-15 md:hidden"
               />
             ) : null}

@@ -1,5 +1,6 @@
 import { useTranslation } from 'react-i18next';
 import type { GuestProof, GuestSheet } from '../../../../api/contract/guest-sheets.ts';
+import { formatPrice } from '../../lib/money.ts';
 import { Button } from '../../ui/button.tsx';
 import { joinClasses } from '../../ui/join-classes.ts';
 import { PageTitle } from '../../ui/page-title.tsx';
@@ -60,6 +61,7 @@ export function ViewerBar(props: Props) {
             role={sheet.me.role}
             onMark={onMark}
             place={place?.number}
+            extra={place?.extra ? formatPrice(sheet.extraPrice, sheet.currency) : undefined}
             className="max-md:hidden"
           />
         ) : null}

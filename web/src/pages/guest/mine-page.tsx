@@ -52,7 +52,7 @@ function SignOut({ name }: { name: string }) {
     mutationFn: () => api.post('/api/guest/sign-out'),
     onSuccess: () => {
       queryClient.clear();
-      window.location.assign('/');
+      window.location.assign('/mine');
     },
   });
   return (
@@ -82,7 +82,7 @@ function MineLine({ row }: { row: MineRow }) {
   );
   return (
     <li
-      className={`relative grid gap-x-6 gap-y-0.5 border-b border-line px-4 py-3 md:grid-cols-[minmax(0,1fr)_200px_180px_160px] md:items-center ${row.goTo ? 'bg-sheet' : ''}`}
+      className={`relative grid gap-x-6 gap-y-0.5 border-b border-line px-4 py-3 lg:grid-cols-[minmax(0,1fr)_200px_180px_160px] lg:items-center ${row.goTo ? 'bg-sheet' : ''}`}
     >
       <div className="min-w-0">
         <p className="lettering">{t(`mine.${row.kind}`, { number: row.number })}</p>
@@ -90,7 +90,9 @@ function MineLine({ row }: { row: MineRow }) {
       </div>
       <p>{row.studio}</p>
       <p className={over ? 'text-mute' : 'font-bold'}>{t(`mine.state.${row.state}`)}</p>
-      <p className="text-13 text-mute">{row.endsAt && !over ? t('mine.until', { day: lastDay(row.endsAt, row.timeZone) }) : ''}</p>
+      <p className="text-13 text-mute">
+        {row.endsAt && !over && row.state !== 'Sent' ? t('mine.until', { day: lastDay(row.endsAt, row.timeZone) }) : ''}
+      </p>
     </li>
   );
 }
