@@ -13,6 +13,7 @@ import * as downloadsCovered from './20261201113000_downloads_covered.ts';
 import * as brackets from './20261201120000_brackets.ts';
 import * as measures from './20261201121000_measures.ts';
 import * as checksAndUses from './20261201122000_checks_and_uses.ts';
+import * as openLinks from './20261201130000_open_links.ts';
 
 /** Every migration in the order it runs. Names carry no file ending, so that they stay the same however the code is run. */
 const migrations: Record<string, Knex.Migration> = {
@@ -30,6 +31,7 @@ const migrations: Record<string, Knex.Migration> = {
   '20261201120000_brackets': brackets,
   '20261201121000_measures': measures,
   '20261201122000_checks_and_uses': checksAndUses,
+  '20261201130000_open_links': openLinks,
 };
 
 export const migrationSource: Knex.MigrationSource<string> = {

@@ -23,5 +23,7 @@ export class SheetGuest extends StudioRow {
   declare lastSeenAt: Date | null;
   declare remindedAt: Date | null;
   declare withdrawnAt: Date | null;
+  /** Came by the sheet's open link and confirmed an address; nobody named them. */
+  declare byOpenLink: boolean;
   declare account?: Account;
 }
