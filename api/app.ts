@@ -13,6 +13,7 @@ import { guestSheetRoutes } from './features/guest-sheets/routes.ts';
 import { healthRoutes } from './features/health/routes.ts';
 import { mailRoutes } from './features/mail/routes.ts';
 import { markRoutes } from './features/marks/routes.ts';
+import { openLinkRoutes } from './features/open-links/routes.ts';
 import { pickListRoutes } from './features/pick-lists/routes.ts';
 import { pictureRoutes } from './features/pictures/routes.ts';
 import { recordRoutes } from './features/record/routes.ts';
@@ -48,6 +49,7 @@ export function apiRoutes(routes: RouteContext): Router {
   api.use(watermarkRoutes(routes));
   api.use(sheetRoutes(routes));
   api.use(guestSheetRoutes(routes));
+  api.use(openLinkRoutes(routes));
   api.use(markRoutes(routes));
   api.use(pickListRoutes(routes));
   api.use(signInRoutes(routes));

@@ -24,7 +24,15 @@ export const GuestSheet = z.object({
   proofCount: z.number().int(),
   /** Counts up when the proofs change: then ask for them again. */
   revision: z.number().int(),
-  me: z.object({ accountId: z.uuid(), name: z.string(), email: z.string(), role: Role, shortcuts: z.boolean() }),
+  /** Of somebody who looks by the open link: no account yet, so an id of the looking itself, and neither name nor address. */
+  me: z.object({
+    accountId: z.uuid(),
+    name: z.string(),
+    email: z.string(),
+    role: z.enum([...Role.options, 'looker']),
+    shortcuts: z.boolean(),
+  }),
+  /** For somebody who looks by the open link, initials stand in the place of names. */
   people: z.array(z.object({ accountId: z.uuid(), name: z.string(), initials: z.string(), role: Role })),
   reopened: z.object({ at: z.iso.datetime(), reason: z.string() }).nullable(),
   lastPickList: z
@@ -32,7 +40,8 @@ export const GuestSheet = z.object({
     .nullable(),
   /** What a picture may be wanted for; whether it is good for it is worked out in the browser. */
   uses: Uses,
-  can: z.object({ mark: z.boolean(), send: z.boolean(), invite: z.boolean() }),
+  /** ask: give a name and confirm an address, to mark from then on. */
+  can: z.object({ mark: z.boolean(), ask: z.boolean(), send: z.boolean(), invite: z.boolean() }),
 });
 export type GuestSheet = z.infer<typeof GuestSheet>;
 
@@ -118,14 +127,14 @@ const sheet = '/api/guest/sheets/{sheetId}';
 
 export const guestSheetOperations: Operation[] = [
   { method: 'get', path: '/api/sheets/{sheetId}/preview', summary: 'The sheet as its guests see it', who: 'staff', answer: SheetPreview },
-  { method: 'get', path: sheet, summary: 'A sheet as its guest sees it', who: 'guest-of-sheet', answer: GuestSheet },
-  { method: 'get', path: `${sheet}/proofs`, summary: 'The proofs of the sheet', who: 'guest-of-sheet', answer: GuestProofs },
-  { method: 'get', path: `${sheet}/marks`, summary: 'Who marked what', who: 'guest-of-sheet', answer: SheetMarks },
+  { method: 'get', path: sheet, summary: 'A sheet as its guest sees it', who: 'looker', answer: GuestSheet },
+  { method: 'get', path: `${sheet}/proofs`, summary: 'The proofs of the sheet', who: 'looker', answer: GuestProofs },
+  { method: 'get', path: `${sheet}/marks`, summary: 'Who marked what', who: 'looker', answer: SheetMarks },
   {
     method: 'get',
     path: `${sheet}/events`,
     summary: 'Changes as they happen (server-sent events)',
-    who: 'guest-of-sheet',
+    who: 'looker',
     answer: 'text/event-stream',
   },
   { method: 'put', path: `${sheet}/proofs/{proofId}/mark`, summary: 'Mark a proof', who: 'guest-of-sheet', answer: MarkAnswer },

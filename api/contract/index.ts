@@ -10,12 +10,14 @@ import * as frames from './frames.ts';
 import * as guestSheets from './guest-sheets.ts';
 import * as guests from './guests.ts';
 import * as mail from './mail.ts';
+import * as openLinks from './open-links.ts';
 import type { Operation } from './operation.ts';
 import * as pickLists from './pick-lists.ts';
 import * as problem from './problem.ts';
 import * as record from './record.ts';
 import * as sheets from './sheets.ts';
 import * as signIn from './sign-in.ts';
+import * as studioOpenLink from './studio-open-link.ts';
 import * as studios from './studios.ts';
 import * as team from './team.ts';
 import * as uploads from './uploads.ts';
@@ -51,6 +53,7 @@ export const sections: readonly Section[] = [
   { name: 'Mail', module: mail },
   { name: 'Guests', module: guests },
   { name: 'Guests’ sheets', module: guestSheets },
+  { name: 'Open links', module: { ...openLinks, ...studioOpenLink } },
   { name: 'This description', module: { ...docs, ...problem } },
 ];
 

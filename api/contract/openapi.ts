@@ -39,12 +39,15 @@ export interface OpenApiDocument {
 
 const STUDIO = 'studioSession';
 const GUEST = 'guestSession';
+/** Begun by an open link, for one sheet: the name of its cookie ends with the sheet's id. */
+const LOOKER = 'lookerSession';
 
 const SESSIONS: Record<Who, string[]> = {
   anyone: [],
   staff: [STUDIO],
   owner: [STUDIO],
   guest: [GUEST],
+  looker: [GUEST, LOOKER],
   'guest-of-sheet': [GUEST],
   lead: [GUEST],
   recipient: [GUEST],
@@ -150,7 +153,7 @@ export function openApiDocument(server: string): OpenApiDocument {
           content: { 'application/problem+json': { schema: problem } },
         },
       },
-      securitySchemes: { [STUDIO]: cookie('oriel_studio'), [GUEST]: cookie('oriel_guest') },
+      securitySchemes: { [STUDIO]: cookie('oriel_studio'), [GUEST]: cookie('oriel_guest'), [LOOKER]: cookie('oriel_look_<sheet>') },
     },
   };
 }

@@ -1,7 +1,10 @@
 import type { ZodType } from 'zod';
 
-/** Who may call: nobody signed in, a person of the studio, its owner, a guest, a guest of that sheet, its lead, a recipient of that delivery. */
-export type Who = 'anyone' | 'staff' | 'owner' | 'guest' | 'guest-of-sheet' | 'lead' | 'recipient';
+/**
+ * Who may call: nobody signed in, a person of the studio, its owner, a guest, a guest of that sheet or
+ * whoever looks at it by its open link, a guest of that sheet, its lead, a recipient of that delivery.
+ */
+export type Who = 'anyone' | 'staff' | 'owner' | 'guest' | 'looker' | 'guest-of-sheet' | 'lead' | 'recipient';
 
 /** One thing the API can do, as the OpenAPI document describes it. */
 export interface Operation {

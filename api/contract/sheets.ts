@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import type { Operation } from './operation.ts';
+import { StudioOpenLink } from './studio-open-link.ts';
 import { Watermark } from './watermark.ts';
 
 const Day = z.iso.date('Write the day as year-month-day.');
@@ -76,6 +77,8 @@ export const SheetGuestRow = z.object({
   lastSeenAt: z.iso.datetime().nullable(),
   remindedAt: z.iso.datetime().nullable(),
   withdrawnAt: z.iso.datetime().nullable(),
+  /** Came by the open link and confirmed an address; nobody named them. */
+  byOpenLink: z.boolean(),
   marks: z.number().int(),
   /** State of the newest mail to this guest about this sheet. */
   mail: z.enum(['waiting', 'handing-over', 'sent', 'failed', 'unsure', 'withdrawn']).nullable(),
@@ -88,6 +91,8 @@ export const StudioSheet = SheetSummary.extend({
   reopenReason: z.string().nullable(),
   proofs: z.array(StudioProof),
   guests: z.array(SheetGuestRow),
+  /** Null while it is switched off. */
+  openLink: StudioOpenLink.nullable(),
   can: z.object({
     edit: z.boolean(),
     issue: z.boolean(),
@@ -96,6 +101,8 @@ export const StudioSheet = SheetSummary.extend({
     reopen: z.boolean(),
     remove: z.boolean(),
     price: z.boolean(),
+    /** Switch the open link on, or change it. */
+    openLink: z.boolean(),
   }),
 });
 export type StudioSheet = z.infer<typeof StudioSheet>;

@@ -1,10 +1,9 @@
-import { sheetIsOver } from '../domain/sheet-state.ts';
-import { Commission } from '../models/Commission.ts';
-import { Delivery } from '../models/Delivery.ts';
-import { DeliveryRecipient } from '../models/DeliveryRecipient.ts';
+import type { Request } from 'express';
+import type { DeliveryRecipient } from '../models/DeliveryRecipient.ts';
 import { Membership } from '../models/Membership.ts';
-import { Sheet } from '../models/Sheet.ts';
-import { SheetGuest } from '../models/SheetGuest.ts';
+import type { SheetGuest } from '../models/SheetGuest.ts';
+import { invitationTo, placeInDelivery } from './invitations.ts';
+import { carriesLooking, type Looker, readLooker } from './lookers.ts';
 import { problem } from './problem.ts';
 import type { Station } from './station.ts';
 import type { Sessions } from './sessions.ts';
@@ -30,6 +29,8 @@ declare module 'express-serve-static-core' {
     actor?: Actor;
     /** The guest's invitation to the sheet in the address. */
     invitation?: SheetGuest;
+    /** Who looks at the sheet in the address by its open link; there is no `actor` then. */
+    looker?: Looker;
     /** The guest's place among the recipients of the delivery in the address. */
     recipient?: DeliveryRecipient;
   }
@@ -39,35 +40,45 @@ declare module 'express-serve-static-core' {
 export interface Gates {
   /** Somebody of a studio; with a role, only that role. The actor's studio is the scope of all that follows. */
   staff(role?: 'owner'): Station;
-  /** Anybody with a guest session. */
+  /** Anybody with a guest session. Below `:sheetId`, somebody who looks by its open link is told what to do instead. */
   guest(): Station;
   /** A guest invited to the sheet named by `:sheetId`; with a role, only that role. Otherwise there is no such sheet; 410 once its time is over. */
   guestOfSheet(role?: 'lead'): Station;
+  /** The same without a role, or somebody who looks at that sheet by its open link: for what may be seen, never for what changes something. */
+  looksAtSheet(): Station;
   /** A recipient of the delivery named by `:deliveryId`. */
   guestOfDelivery(): Station;
 }
 
-/** The commission of a sheet or a delivery; one that was deleted takes its links along. */
-function commissionOf(table: 'sheets' | 'deliveries') {
-  return Commission.query()
-    .select('commissions.id')
-    .whereColumn('commissions.id', `${table}.commissionId`)
-    .whereNull('commissions.deletedAt');
+/** What stands in the way of somebody who only looks; undefined where nobody looks by the sheet's open link. */
+async function refusalOfLooker(req: Request): Promise<Error | undefined> {
+  const { sheetId } = req.params;
+  if (typeof sheetId !== 'string' || !(await readLooker(req, sheetId))) return undefined;
+  return problem(403, 'You are looking. To mark, give your name and confirm your e-mail address.', { code: 'looking' });
 }
 
+const noGuest = () => problem(401, 'Please open the link in your e-mail again.', { code: 'no-guest' });
+
 export function createGates(sessions: Sessions): Gates {
-  const signIn = async (...[req, res]: Parameters<Station>): Promise<GuestActor> => {
+  const readGuest = async (...[req, res]: Parameters<Station>): Promise<GuestActor | undefined> => {
     const session = await sessions.read(req, res, 'guest');
-    if (!session) throw problem(401, 'Please open the link in your e-mail again.', { code: 'no-guest' });
-    const actor: GuestActor = {
-      kind: 'guest',
-      accountId: session.accountId,
-      name: session.name,
-      email: session.email,
-      sessionId: session.id,
-    };
+    if (!session) return undefined;
+    const { accountId, name, email, id: sessionId } = session;
+    return { kind: 'guest', accountId, name, email, sessionId };
+  };
+  const signIn = async (...[req, res, next]: Parameters<Station>): Promise<GuestActor> => {
+    const actor = await readGuest(req, res, next);
+    if (!actor) throw (await refusalOfLooker(req)) ?? noGuest();
     req.actor = actor;
     return actor;
+  };
+  /** Lets a guest with a place on the sheet in; gives false where there is none. */
+  const letIn = async (req: Request, actor: GuestActor | undefined): Promise<boolean> => {
+    const invitation = actor && (await invitationTo(String(req.params.sheetId), actor.accountId));
+    if (!invitation) return false;
+    req.actor = actor;
+    req.invitation = invitation;
+    return true;
   };
   return {
     staff: (role) => async (req, res, next) => {
@@ -80,42 +91,32 @@ export function createGates(sessions: Sessions): Gates {
       next();
     },
     guest: () => async (req, res, next) => {
-      await signIn(req, res, next);
+      const actor = await signIn(req, res, next);
+      // A guest of other sheets may look here by the open link, and has no place on this one yet.
+      if (carriesLooking(req) && !(await letIn(req, actor))) {
+        const refusal = await refusalOfLooker(req);
+        if (refusal) throw refusal;
+      }
       next();
     },
     guestOfSheet: (role) => async (req, res, next) => {
       const actor = await signIn(req, res, next);
-      const { sheetId } = req.params;
-      const invitation = await SheetGuest.query().findOne({ sheetId, accountId: actor.accountId }).whereNull('withdrawnAt');
-      const sheet =
-        invitation &&
-        (await Sheet.query()
-          .findById(invitation.sheetId)
-          .whereNotNull('issuedAt')
-          .whereNull('withdrawnAt')
-          .whereExists(commissionOf('sheets'))
-          .select('id', 'endsAt'));
-      if (!invitation || !sheet) throw problem(404);
-      // A session outlives the sheet it was opened for.
-      if (sheetIsOver(sheet, new Date()))
-        throw problem(410, 'The time of this proof sheet is over. Please write to the studio if you still need it.', { code: 'ended' });
-      if (role && invitation.role !== role) throw problem(403, 'Only the lead of this sheet may do this.', { code: 'lead-only' });
-      req.invitation = invitation;
+      if (!(await letIn(req, actor))) throw (await refusalOfLooker(req)) ?? problem(404);
+      if (role && req.invitation?.role !== role) throw problem(403, 'Only the lead of this sheet may do this.', { code: 'lead-only' });
+      next();
+    },
+    looksAtSheet: () => async (req, res, next) => {
+      const actor = await readGuest(req, res, next);
+      if (await letIn(req, actor)) return next();
+      const looker = await readLooker(req, String(req.params.sheetId));
+      if (!looker) throw actor ? problem(404) : noGuest();
+      req.looker = looker;
       next();
     },
     guestOfDelivery: () => async (req, res, next) => {
       const actor = await signIn(req, res, next);
-      const { deliveryId } = req.params;
-      const recipient = await DeliveryRecipient.query().findOne({ deliveryId, accountId: actor.accountId }).whereNull('withdrawnAt');
-      const delivery =
-        recipient &&
-        (await Delivery.query()
-          .findById(recipient.deliveryId)
-          .whereNotNull('sentAt')
-          .whereNull('withdrawnAt')
-          .whereExists(commissionOf('deliveries'))
-          .select('id'));
-      if (!recipient || !delivery) throw problem(404);
+      const recipient = await placeInDelivery(String(req.params.deliveryId), actor.accountId);
+      if (!recipient) throw problem(404);
       req.recipient = recipient;
       next();
     },

@@ -19,6 +19,12 @@ const LIMITS = {
   'reset-address': { points: 10, seconds: 60 * 60 },
   'reset-account': { points: 3, seconds: 60 * 60 },
   token: { points: 40, seconds: 15 * 60 },
+  look: { points: 120, seconds: 15 * 60 },
+  /** Passphrases tried at one open link from one address. */
+  passphrase: { points: 10, seconds: 15 * 60 },
+  'ask-to-mark': { points: 20, seconds: 60 * 60 },
+  /** Mails to one address, whoever asks for them. */
+  'ask-to-mark-person': { points: 5, seconds: 60 * 60 },
   mail: { points: 60, seconds: 60 * 60 },
   'new-link': { points: 5, seconds: 60 * 60 },
   send: { points: 20, seconds: 60 * 60 },
@@ -33,6 +39,8 @@ export type LimitName = keyof typeof LIMITS;
 export interface Limits {
   /** Counts one attempt. @throws Problem 429 with Retry-After once there are too many. */
   count(name: LimitName, key: string): Promise<void>;
+  /** Takes one attempt back that turned out to be none. */
+  giveBack(name: LimitName, key: string): Promise<void>;
   /** A station that counts by the address the request came from, or by the account where somebody is signed in. */
   limit(name: LimitName): Station;
 }
@@ -68,6 +76,7 @@ export function createLimits(knex: Knex, scale = 1): Limits {
   }
   return {
     count,
+    giveBack: async (name, key) => void (await limiters.get(name)?.reward(key)),
     limit: (name) => async (req, _res, next) => {
       await count(name, req.actor ? `account:${req.actor.accountId}` : `address:${req.ip ?? ''}`);
       next();

@@ -6,7 +6,7 @@ import { pinoHttp } from 'pino-http';
 
 /** Addresses carry tokens and seals; the log keeps the path, with a link's token blotted out, and no query. */
 export function loggedPath(url: string): string {
-  return (url.split('?')[0] ?? '').replace(/(\/(?:open|join|reset-password|confirm-email)\/)[^/]+/, '$1…');
+  return (url.split('?')[0] ?? '').replace(/(\/(?:open|look|begin|join|reset-password|confirm-email)\/)[^/]+/, '$1…');
 }
 
 /** A JSON line a request with an id, which is also in the answer's X-Request-Id. No addresses, no cookies, no queries. */

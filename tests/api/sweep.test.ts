@@ -42,7 +42,7 @@ const parameters = ({ path }: Operation) => [...path.matchAll(/\{(\w+)\}/g)].map
 const forWhom = (...who: Who[]) => operations.filter((operation) => who.includes(operation.who));
 
 const STUDIO: Who[] = ['staff', 'owner'];
-const GUESTS: Who[] = ['guest', 'guest-of-sheet', 'lead', 'recipient'];
+const GUESTS: Who[] = ['guest', 'looker', 'guest-of-sheet', 'lead', 'recipient'];
 
 /** The id of a row that full-life.ts does not know, from the table that is called like it. */
 async function idOf(name: string, life: FullLife, studioId: string): Promise<string> {
@@ -116,7 +116,7 @@ describe('somebody of the studio', () => {
 });
 
 describe('a guest', () => {
-  const ofSheet = forWhom('guest-of-sheet', 'lead');
+  const ofSheet = forWhom('looker', 'guest-of-sheet', 'lead');
 
   it.each(named(forWhom(...STUDIO)))('%s is not for guests', async (_name, operation) => {
     expect((await call(here.lead.agent, operation, here, home.studio.id)).status).toBe(401);
@@ -144,6 +144,38 @@ describe('a guest', () => {
     for (const elsewhere of [beside, there]) {
       expect(REFUSED).toContain((await call(agent, operation, here, home.studio.id, elsewhere)).status);
     }
+  });
+});
+
+describe('somebody who looks by the open link', () => {
+  const others = operations.filter(({ who }) => who !== 'anyone' && who !== 'looker');
+  const below = ({ path }: Operation) => path.startsWith('/api/guest/sheets/{sheetId}');
+
+  it.each(named(forWhom('looker')))('%s is open to them', async (_name, operation) => {
+    if (operation.answer === 'text/event-stream') return;
+    const response = await call(here.looker, operation, here, home.studio.id);
+    expect(response.status, response.text).toBe(operation.status ?? 200);
+  });
+
+  it.each(named(forWhom('looker')))('of another sheet, %s asks who it is', async (_name, operation) => {
+    for (const stranger of [beside.looker, there.looker]) {
+      expect((await call(stranger, operation, here, home.studio.id)).status).toBe(401);
+    }
+  });
+
+  it.each(named(others.filter((operation) => !below(operation))))('%s asks who it is', async (_name, operation) => {
+    expect((await call(here.looker, operation, here, home.studio.id)).status).toBe(401);
+  });
+
+  it.each(named(others.filter(below)))('%s says how to come to it', async (_name, operation) => {
+    const response = await call(here.looker, operation, here, home.studio.id);
+    expect(response.status).toBe(403);
+    expect(response.body.detail).toContain('give your name and confirm your e-mail address');
+  });
+
+  it('changes nothing but to ask for a place', () => {
+    const changing = forWhom('looker').filter(({ method }) => method !== 'get');
+    expect(changing.map(({ path }) => path)).toEqual(['/api/guest/sheets/{sheetId}/ask-to-mark']);
   });
 });
 

@@ -8,6 +8,7 @@ import { Upload } from '../../api/models/Upload.ts';
 import { archiveKey } from '../../api/services/storage-keys.ts';
 import { makeClient } from './factories/client.ts';
 import { rowOfBracket, rowOfDelivery, rowOfFinal, rowOfPickList, rowOfSheet } from './factories/commission-life.ts';
+import { makeLooker, switchOn } from './factories/open-link.ts';
 import { makeOpenSheet, type SheetPerson } from './factories/sheet.ts';
 import { type GuestPerson, makeGuestAgent, type MadeStudio } from './factories/studio.ts';
 import type { House } from './house.ts';
@@ -19,6 +20,8 @@ export interface FullLife {
   lead: SheetPerson;
   reviewer: SheetPerson;
   recipient: GuestPerson;
+  /** At a browser that looks at the sheet by its open link. */
+  looker: Awaited<ReturnType<typeof makeLooker>>;
 }
 
 /** Builds it by rows, with the files that addresses lead to in the store. */
@@ -68,6 +71,7 @@ export async function makeFullLife(house: House, made: MadeStudio): Promise<Full
     lead,
     reviewer,
     recipient,
+    looker: await makeLooker(house, await switchOn(made, sheet.id)),
   };
 }
 

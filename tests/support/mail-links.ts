@@ -8,7 +8,7 @@ export function newestMail(house: House, to: string) {
 }
 
 /** The token of the link in the newest mail to an address: what stands after "/join/", "/open/" … */
-export function tokenIn(house: House, to: string, page: 'open' | 'join' | 'reset-password' | 'confirm-email'): string {
+export function tokenIn(house: House, to: string, page: 'open' | 'begin' | 'join' | 'reset-password' | 'confirm-email'): string {
   const token = new RegExp(`/${page}/([\\w-]+)`).exec(newestMail(house, to).text)?.[1];
   if (!token) throw new Error(`The newest mail to ${to} has no link to ${page}.`);
   return token;

@@ -7,6 +7,7 @@ const WHO: Record<Who, string> = {
   staff: 'owner and assistants of the studio',
   owner: 'owner of the studio',
   guest: 'any guest',
+  looker: 'guests of the sheet, and whoever looks at it by its open link',
   'guest-of-sheet': 'guests of the sheet',
   lead: 'lead of the sheet',
   recipient: 'recipients of the delivery',

@@ -1,6 +1,7 @@
 import type { GuestSheet } from '../../contract/guest-sheets.ts';
 import { initials } from '../../domain/initials.ts';
 import { sheetState } from '../../domain/sheet-state.ts';
+import type { Looker } from '../../middleware/lookers.ts';
 import { problem } from '../../middleware/problem.ts';
 import { PickList } from '../../models/PickList.ts';
 import { Proof } from '../../models/Proof.ts';
@@ -9,7 +10,7 @@ import { SheetGuest } from '../../models/SheetGuest.ts';
 import { Studio } from '../../models/Studio.ts';
 import { usesOf } from '../studios/studio-uses.ts';
 
-/** Who looks: a guest by invitation, or the studio in a preview. */
+/** Who looks: a guest by invitation, somebody by the open link, or the studio in a preview. */
 export type Viewer = GuestSheet['me'];
 
 /** The sheet besides its pictures, as this person sees it. */
@@ -46,6 +47,22 @@ export async function loadGuestSheet(sheetId: string, me: Viewer): Promise<Guest
       ? { number: list.number, sentAt: list.sentAt.toISOString(), sentBy: list.sentByName, picks: list.pickCount, extras: list.extraCount }
       : null,
     uses: usesOf(studio),
-    can: { mark: open, send: open && me.role === 'lead', invite: open && me.role === 'lead' },
+    can: {
+      mark: open && me.role !== 'looker',
+      ask: open && me.role === 'looker',
+      send: open && me.role === 'lead',
+      invite: open && me.role === 'lead',
+    },
+  };
+}
+
+/** The same for somebody who looks by the open link: initials in place of names, and no words that were written to the client. */
+export async function loadSheetForLooker(looker: Looker): Promise<GuestSheet> {
+  const sheet = await loadGuestSheet(looker.sheetId, { accountId: looker.id, name: '', email: '', role: 'looker', shortcuts: true });
+  return {
+    ...sheet,
+    people: sheet.people.map((person) => ({ ...person, name: person.initials })),
+    reopened: null,
+    lastPickList: sheet.lastPickList && { ...sheet.lastPickList, sentBy: initials(sheet.lastPickList.sentBy) },
   };
 }

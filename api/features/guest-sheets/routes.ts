@@ -9,7 +9,7 @@ import { SheetGuest } from '../../models/SheetGuest.ts';
 import { findSheet } from '../sheets/find-sheet.ts';
 import { inviteReviewer } from './invite-reviewer.ts';
 import { loadGuestProofs, proofsBody } from './load-proofs.ts';
-import { loadGuestSheet } from './load-sheet.ts';
+import { loadGuestSheet, loadSheetForLooker } from './load-sheet.ts';
 
 /** The studio reads "seen 10 minutes ago"; more exact is nobody's business. */
 const SEEN_EVERY_MS = 5 * 60 * 1000;
@@ -20,10 +20,11 @@ async function noteSeen(invitation: SheetGuest): Promise<void> {
 }
 
 /** The sheet as its guests see it. */
-export function guestSheetRoutes({ ctx, gates: { guestOfSheet, staff }, limits: { limit } }: RouteContext): Router {
+export function guestSheetRoutes({ ctx, gates: { guestOfSheet, looksAtSheet, staff }, limits: { limit } }: RouteContext): Router {
   const router = Router();
 
-  router.get('/guest/sheets/:sheetId', ids('sheetId'), guestOfSheet(), async (req, res) => {
+  router.get('/guest/sheets/:sheetId', ids('sheetId'), looksAtSheet(), async (req, res) => {
+    if (req.looker) return void res.json(await loadSheetForLooker(req.looker));
     const { accountId, email } = guestOf(req);
     const { name, role } = invitationOf(req);
     await noteSeen(invitationOf(req));
@@ -31,7 +32,7 @@ export function guestSheetRoutes({ ctx, gates: { guestOfSheet, staff }, limits: 
     res.json(await loadGuestSheet(req.params.sheetId, { accountId, email, name, role, shortcuts: account?.shortcuts ?? true }));
   });
 
-  router.get('/guest/sheets/:sheetId/proofs', ids('sheetId'), guestOfSheet(), async (req, res) => {
+  router.get('/guest/sheets/:sheetId/proofs', ids('sheetId'), looksAtSheet(), async (req, res) => {
     const { etag, plain, gzipped } = await proofsBody(ctx, req.params.sheetId);
     res.set({ 'Cache-Control': 'private, no-cache', ETag: etag, Vary: 'Accept-Encoding, Cookie' });
     if (req.header('if-none-match') === etag) return void res.status(304).end();
@@ -40,7 +41,7 @@ export function guestSheetRoutes({ ctx, gates: { guestOfSheet, staff }, limits: 
     res.type('application/json').end(packed ? gzipped : plain);
   });
 
-  const gate = guestOfSheet();
+  const gate = looksAtSheet();
   router.get('/guest/sheets/:sheetId/events', ids('sheetId'), gate, (req, res) => {
     const stillMay = async () => gate(req, res, () => undefined);
     streamEvents(ctx.live, `sheet:${req.params.sheetId}`, { res, stillMay });
@@ -65,7 +66,10 @@ export function guestSheetRoutes({ ctx, gates: { guestOfSheet, staff }, limits: 
     const { accountId, name, email } = staffOf(req);
     const sheet = await findSheet(staffOf(req), req.params.sheetId);
     const seen = await loadGuestSheet(sheet.id, { accountId, name, email, role: 'reviewer', shortcuts: true });
-    res.json({ sheet: { ...seen, can: { mark: false, send: false, invite: false } }, proofs: await loadGuestProofs(ctx, sheet) });
+    res.json({
+      sheet: { ...seen, can: { mark: false, ask: false, send: false, invite: false } },
+      proofs: await loadGuestProofs(ctx, sheet),
+    });
   });
   return router;
 }

@@ -47,7 +47,7 @@ function refuseClosed(link: Link): void {
  * Whoever holds the link got the mail, so the address is theirs. Not so for an account with a password that is not confirmed yet:
  * somebody else may have chosen that password, and it must not start to count by this.
  */
-async function confirmAddress(trx: Transaction, accountId: string): Promise<void> {
+export async function confirmAddress(trx: Transaction, accountId: string): Promise<void> {
   await Account.query(trx)
     .findById(accountId)
     .whereNull('emailConfirmedAt')

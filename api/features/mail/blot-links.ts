@@ -3,5 +3,5 @@
  * into the outbox nor a copy of the database may give it away.
  */
 export function blotLinks(words: string): string {
-  return words.replace(/(\/(?:open|join|reset-password|confirm-email)\/)[\w-]{20,}/g, '$1…');
+  return words.replace(/(\/(?:open|look|begin|join|reset-password|confirm-email)\/)[\w-]{20,}/g, '$1…');
 }

@@ -6,10 +6,10 @@ import { listMarks } from './list-marks.ts';
 import { setMark } from './set-mark.ts';
 
 /** Marks of guests. The rights to mark are asked by the statement that marks, so the chain needs the guest alone. */
-export function markRoutes({ ctx, gates: { guest, guestOfSheet }, limits: { limit } }: RouteContext): Router {
+export function markRoutes({ ctx, gates: { guest, looksAtSheet }, limits: { limit } }: RouteContext): Router {
   const router = Router();
 
-  router.get('/guest/sheets/:sheetId/marks', ids('sheetId'), guestOfSheet(), async (req, res) => {
+  router.get('/guest/sheets/:sheetId/marks', ids('sheetId'), looksAtSheet(), async (req, res) => {
     res.json(await listMarks(ctx, req.params.sheetId));
   });
 

@@ -9,7 +9,11 @@ export interface SheetCan {
   remove: boolean;
   /** Money is the owner's. */
   price: boolean;
+  /** Switch the open link on, or change it. */
+  openLink: boolean;
 }
+
+const hasPassed = (moment: SheetMoments['endsAt'], now: Date) => moment !== null && new Date(moment) <= now;
 
 /** What a person of the studio may do to a sheet in its present state. */
 export function sheetCan(sheet: SheetMoments, proofCount: number, now: Date, role: 'owner' | 'assistant' = 'assistant'): SheetCan {
@@ -21,6 +25,7 @@ export function sheetCan(sheet: SheetMoments, proofCount: number, now: Date, rol
     withdraw: state !== 'Draft' && !sheet.withdrawnAt,
     reopen: state === 'Sent' || (state === 'Ended' && !sheet.withdrawnAt),
     remove: state === 'Draft',
+    openLink: state === 'Open' || (state === 'Sent' && !hasPassed(sheet.endsAt, now)),
     price: role === 'owner' && (state === 'Draft' || state === 'Open'),
   };
 }

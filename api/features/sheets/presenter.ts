@@ -10,6 +10,7 @@ import { SheetGuest } from '../../models/SheetGuest.ts';
 import { pictureAddress } from '../../services/picture-address.ts';
 import { type Exposed, exposuresOfProofs } from '../brackets/count-exposures.ts';
 import { exposuresOf, shownPicture } from '../brackets/shown-picture.ts';
+import { presentOpenLink } from '../open-links/presenter.ts';
 import { countsOf, presentSummary } from './list-sheets.ts';
 import { sheetCan } from './policy.ts';
 
@@ -20,7 +21,7 @@ const iso = (moment: Date | null) => moment?.toISOString() ?? null;
 /** A sheet with everything the studio's Proofs page shows. */
 export async function presentSheet(ctx: Context, actor: StaffActor, sheet: Sheet): Promise<StudioSheet> {
   const now = new Date();
-  const [counted, proofs, guests, marks] = await Promise.all([
+  const [counted, proofs, guests, marks, openLink] = await Promise.all([
     Sheet.query()
       .findById(sheet.id)
       .select(...countsOf(ctx.knex))
@@ -28,6 +29,7 @@ export async function presentSheet(ctx: Context, actor: StaffActor, sheet: Sheet
     proofsInOrder(sheet),
     guestRows(ctx, sheet),
     marksOf(ctx, sheet.id),
+    presentOpenLink(ctx, sheet),
   ]);
   const exposed = await exposuresOfProofs(ctx.knex, proofs);
   return {
@@ -37,6 +39,7 @@ export async function presentSheet(ctx: Context, actor: StaffActor, sheet: Sheet
     reopenReason: sheet.reopenReason,
     proofs: await Promise.all(proofs.map((proof) => presentProof(ctx, sheet, proof, marks, exposed))),
     guests,
+    openLink,
     can: sheetCan(sheet, counted.proofCount, now, actor.role),
   };
 }
@@ -119,6 +122,7 @@ async function guestRows(ctx: Context, sheet: Sheet): Promise<SheetGuestRow[]> {
     lastSeenAt: iso(guest.lastSeenAt),
     remindedAt: iso(guest.remindedAt),
     withdrawnAt: iso(guest.withdrawnAt),
+    byOpenLink: guest.byOpenLink,
     marks: guest.marks,
     mail: guest.mail,
   }));

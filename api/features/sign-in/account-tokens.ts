@@ -7,7 +7,12 @@ import { hashToken, newToken } from '../guests/tokens.ts';
 export type Purpose = AccountToken['purpose'];
 
 const HOUR = 60 * 60 * 1000;
-const LASTS: Record<Purpose, number> = { 'reset-password': HOUR, 'confirm-email': 7 * 24 * HOUR, 'join-studio': 7 * 24 * HOUR };
+const LASTS: Record<Purpose, number> = {
+  'reset-password': HOUR,
+  'confirm-email': 7 * 24 * HOUR,
+  'join-studio': 7 * 24 * HOUR,
+  'begin-marking': 24 * HOUR,
+};
 
 export interface IssuedToken {
   id: string;
@@ -17,9 +22,9 @@ export interface IssuedToken {
 }
 
 type Fields = Pick<AccountToken, 'purpose' | 'email'> &
-  Partial<Pick<AccountToken, 'accountId' | 'studioId' | 'name' | 'passwordHash' | 'createdBy'>>;
+  Partial<Pick<AccountToken, 'accountId' | 'studioId' | 'name' | 'passwordHash' | 'openLinkId' | 'createdBy'>>;
 
-/** Makes a single-use token: a reset lasts an hour, a confirmation and an invitation seven days. */
+/** Makes a single-use token: a reset lasts an hour, what begins marking a day, a confirmation and an invitation seven days. */
 export async function issueToken(trx: Transaction, fields: Fields): Promise<IssuedToken> {
   const { token, hash } = newToken();
   const expiresAt = new Date(Date.now() + LASTS[fields.purpose]);
