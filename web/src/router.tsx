@@ -63,6 +63,8 @@ const studioPages: RouteObject[] = [
 /** The guests' pages: sheets, deliveries and what they were ever invited to. */
 const guestPages: RouteObject[] = [
   { path: 'open/:token', lazy: () => import('./pages/guest/open-page.tsx') },
+  { path: 'look/:token', lazy: () => import('./pages/guest/look-page.tsx') },
+  { path: 'begin/:token', lazy: () => import('./pages/guest/begin-page.tsx') },
   { path: 'deliveries/:deliveryId', lazy: () => import('./pages/guest/delivery-page.tsx') },
   { path: 'mine', lazy: () => import('./pages/guest/mine-page.tsx') },
   { path: 'sheets/:sheetId/review', loader: sheetLoader(queryClient), lazy: () => import('./pages/guest/review-page.tsx') },

@@ -17,7 +17,7 @@ export function GuestRefused({ error, onRetry }: { error: Error; onRetry?: () =>
         {why ? (
           <>
             <PageTitle title={t(`refused.${why}Title`)} />
-            <p className="mt-3">{t(`refused.${why}`)}</p>
+            <p className="mt-3">{(error as ApiProblem).code === 'look' ? error.message : t(`refused.${why}`)}</p>
             {why === 'notYours' ? (
               <LinkButton to="/mine" className="mt-6">
                 {t('refused.mine')}

@@ -1,6 +1,7 @@
 import { useQuery, useQueryClient, type QueryClient } from '@tanstack/react-query';
-import { useCallback, useEffect, useMemo, type ReactNode } from 'react';
+import { lazy, Suspense, useCallback, useEffect, useMemo, useState, type ReactNode } from 'react';
 import type { GuestProofs, GuestSheet, SheetMarks } from '../../../../api/contract/guest-sheets.ts';
+import type { ApiProblem } from '../../lib/api.ts';
 import { useLive } from '../../lib/live.ts';
 import { QueryView } from '../../ui/query-view.tsx';
 import { numberPicks, readMarks } from '../marks/read-marks.ts';
@@ -8,6 +9,8 @@ import { useMarks } from '../marks/use-marks.ts';
 import { GuestRefused } from './guest-refused.tsx';
 import { eventsAddress, marksQuery, proofsQuery, sheetKeys, sheetQuery } from './queries.ts';
 import { readStoreys } from './sheet-rows.ts';
+
+const AskDialog = lazy(() => import('../open-links/ask-dialog.tsx'));
 
 /** Changes of one second are read together, so that 200 guests marking at once are no storm of requests. */
 const GATHER = 800;
@@ -27,6 +30,8 @@ export function SheetDoor({ sheetId, children }: Props) {
   const marks = useQuery(marksQuery(sheetId));
   useSheetLive(sheetId, sheet.isSuccess);
   const failed = (error: Error) => <GuestRefused error={error} />;
+  // Whoever looked by a link that was withdrawn sees nothing more, not even what is drawn already.
+  if ((sheet.error as ApiProblem | null)?.code === 'look') return failed(sheet.error as ApiProblem);
   return (
     <QueryView query={sheet} failed={failed}>
       {(sheetNow) => (
@@ -54,10 +59,20 @@ interface InsideProps {
 }
 
 function SheetInside({ sheet, proofs, marks, children }: InsideProps) {
-  return <>{children(useSheetData(sheet, proofs, marks))}</>;
+  const [asking, setAsking] = useState(false);
+  return (
+    <>
+      {children(useSheetData(sheet, proofs, marks, setAsking))}
+      {asking && sheet.can.ask ? (
+        <Suspense>
+          <AskDialog sheet={sheet} onClose={() => setAsking(false)} />
+        </Suspense>
+      ) : null}
+    </>
+  );
 }
 
-function useSheetData(sheet: GuestSheet, answer: GuestProofs, serverMarks: SheetMarks) {
+function useSheetData(sheet: GuestSheet, answer: GuestProofs, serverMarks: SheetMarks, setAsking: (asking: boolean) => void) {
   const queryClient = useQueryClient();
   const { marks, mark } = useMarks(sheet, serverMarks.marks);
   const read = useMemo(() => readMarks(marks, sheet.people, sheet.me.accountId), [marks, sheet.people, sheet.me.accountId]);
@@ -70,7 +85,9 @@ function useSheetData(sheet: GuestSheet, answer: GuestProofs, serverMarks: Sheet
   }, [sheet.revision, sheet.id, answer.revision, queryClient]);
 
   const renewPictures = useRenewPictures(queryClient, sheet.id);
-  return { sheet, storeys, proofs, marks: read, places, mark: sheet.can.mark ? mark : undefined, renewPictures };
+  /** For somebody who looks: to mark they have to say who they are. */
+  const ask = useCallback(() => setAsking(true), [setAsking]);
+  return { sheet, storeys, proofs, marks: read, places, mark: sheet.can.mark ? mark : sheet.can.ask ? ask : undefined, ask, renewPictures };
 }
 
 /** The addresses of pictures end after some hours; an open page asks for new ones, at most once in half a minute. */
