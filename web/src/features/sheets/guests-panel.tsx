@@ -88,6 +88,7 @@ function GuestLine({ guest, sheet, deed, onTakeBack }: LineProps) {
       <p className="text-13 wrap-anywhere text-mute">{guest.email}</p>
       <p className="text-13">
         <span className={TONES[state.tone]}>{state.words}</span>
+        {guest.byOpenLink ? <span className="text-mute"> · by the open link</span> : null}
         {guest.marks > 0 ? <span className="text-mute"> · {counted(guest.marks, 'mark')}</span> : null}
       </p>
       {sheet.can.invite ? (

@@ -1,5 +1,6 @@
 import { useMutation, useQueryClient } from '@tanstack/react-query';
 import { useNavigate } from 'react-router-dom';
+import type { OpenLinkTerms } from '../../../../api/contract/open-links.ts';
 import type { ChangeSheet, InviteGuests, ReopenSheet, StudioSheet } from '../../../../api/contract/sheets.ts';
 import { api } from '../../lib/api.ts';
 import { showNotice } from '../../ui/notices.tsx';
@@ -19,6 +20,8 @@ export type SheetDeed =
   | { what: 'send-again'; guestId: string; words: string }
   | { what: 'withdraw-guest' | 'restore-guest'; guestId: string }
   | { what: 'show-bracket'; bracketId: string; shows: 'merged' | 'lead' }
+  | { what: 'switch-open-link-on' | 'change-open-link'; input: OpenLinkTerms }
+  | { what: 'withdraw-open-link' }
   | { what: 'withdraw' | 'restore' }
   | { what: 'reopen'; input: ReopenSheet };
 
@@ -45,6 +48,12 @@ async function request(sheetId: string, deed: SheetDeed): Promise<StudioSheet> {
       return api.post(`${at}/guests/${deed.guestId}/send-again`, { words: deed.words });
     case 'withdraw-guest':
       return api.post(`${at}/guests/${deed.guestId}/withdraw`);
+    case 'switch-open-link-on':
+      return api.post(`${at}/open-link`, deed.input);
+    case 'change-open-link':
+      return api.patch(`${at}/open-link`, deed.input);
+    case 'withdraw-open-link':
+      return api.post(`${at}/open-link/withdraw`);
     case 'show-bracket':
       await api.patch(`/api/brackets/${deed.bracketId}`, { shows: deed.shows });
       return api.get(at);

@@ -5,6 +5,7 @@ import type { SheetSummary } from '../../../../../api/contract/sheets.ts';
 import { useCommissionChanges } from '../../../features/commissions/live.ts';
 import { useViewTitles } from '../../../features/frames/use-frames.ts';
 import { GuestsPanel } from '../../../features/sheets/guests-panel.tsx';
+import { OpenLinkPanel } from '../../../features/sheets/open-link-panel.tsx';
 import { ProofsBoard } from '../../../features/sheets/proofs-board.tsx';
 import { sheetKeys, sheetQuery, sheetsQuery } from '../../../features/sheets/queries.ts';
 import { type SheetDialog, SheetHead } from '../../../features/sheets/sheet-head.tsx';
@@ -104,6 +105,7 @@ function OneSheet({ sheetId }: { sheetId: string }) {
                 <SheetTerms sheet={sheet} />
               </section>
               <GuestsPanel sheet={sheet} onInvite={() => setDialog('invite')} />
+              <OpenLinkPanel sheet={sheet} />
             </aside>
           </div>
         </div>
