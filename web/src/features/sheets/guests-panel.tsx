@@ -99,10 +99,10 @@ function GuestLine({ guest, sheet, deed, onTakeBack }: LineProps) {
             </Button>
           ) : (
             <>
-              <Button size="small" tone="quiet" aria-label={`Send ${guest.name} a new link`} onClick={again}>
+              <Button size="small" tone="quiet" aria-label={`Send again: a new link to ${guest.name}`} onClick={again}>
                 Send again
               </Button>
-              <Button size="small" tone="quiet" aria-label={`Take the link of ${guest.name} back`} onClick={onTakeBack}>
+              <Button size="small" tone="quiet" aria-label={`Take back the link of ${guest.name}`} onClick={onTakeBack}>
                 Take back
               </Button>
             </>
