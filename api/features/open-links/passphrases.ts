@@ -12,5 +12,5 @@ export function hashPassphrase(passphrase: string): Promise<string> {
 /** @throws Problem 422 at the field `passphrase` where it is another one */
 export async function checkPassphrase(passphraseHash: string, passphrase: string): Promise<void> {
   if (await verifyPassword(passphraseHash, written(passphrase))) return;
-  throw invalid([{ path: 'passphrase', message: 'This is not the passphrase of this link. Whoever sent you the link knows it.' }]);
+  throw invalid([{ path: 'passphrase', message: 'This is not the passphrase of this link.' }]);
 }

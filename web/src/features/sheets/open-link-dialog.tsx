@@ -58,7 +58,7 @@ export function OpenLinkDialog({ sheet, onClose }: { sheet: StudioSheet; onClose
             optional="may stay empty"
             hint={
               link?.hasPassphrase
-                ? 'At least 8 characters. Whoever looks by the present one has to give the new one.'
+                ? 'Empty: it stays as it is. A new one has at least 8 characters, and whoever looks by the present one has to give it.'
                 : 'At least 8 characters. Tell it by another way than the link: on the telephone, say.'
             }
             error={wrong('passphrase')}

@@ -16,7 +16,7 @@ export function OpenLinkPanel({ sheet }: { sheet: StudioSheet }) {
   const { openLink: link, can } = sheet;
   if (!link && !can.openLink) return null;
   return (
-    <section aria-labelledby="open-link-of-sheet" className="border border-ink bg-sheet px-4.5 py-4">
+    <section aria-labelledby="open-link-of-sheet" className="border border-ink bg-sheet px-4.5 py-4 max-lg:md:col-span-2">
       <div className="flex flex-wrap items-center justify-between gap-2">
         <h2 id="open-link-of-sheet" className="text-17">
           Open link
@@ -50,7 +50,9 @@ export function OpenLinkPanel({ sheet }: { sheet: StudioSheet }) {
 
 function LinkFacts({ sheet, link }: { sheet: StudioSheet; link: StudioOpenLink }) {
   const { address } = link;
-  const ends = link.endsOn ?? sheet.chooseBy;
+  // The sheet's last date may have been set earlier since.
+  const ownDay = link.endsOn !== null && (!sheet.chooseBy || link.endsOn < sheet.chooseBy);
+  const ends = ownDay ? link.endsOn : sheet.chooseBy;
   const copy = (words: string) =>
     navigator.clipboard.writeText(words).then(
       () => showNotice('The link is copied.'),
@@ -83,7 +85,7 @@ function LinkFacts({ sheet, link }: { sheet: StudioSheet; link: StudioOpenLink }
         <dt className="text-mute">Last day</dt>
         <dd>
           {ends ? formatDay(ends) : 'none'}
-          {link.endsOn ? '' : ', with the sheet'}
+          {ownDay ? '' : ', with the sheet'}
         </dd>
         <dt className="text-mute">Looking</dt>
         <dd>{link.lookers === 0 ? 'nobody at present' : counted(link.lookers, 'browser')}</dd>
