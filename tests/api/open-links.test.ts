@@ -2,7 +2,10 @@ import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import { OpenLink } from '../../api/models/OpenLink.ts';
 import { RecordEntry } from '../../api/models/RecordEntry.ts';
 import { Sheet } from '../../api/models/Sheet.ts';
+import { blotLinks } from '../../api/features/mail/blot-links.ts';
 import { sealToken, unsealToken } from '../../api/features/open-links/sealed-token.ts';
+import { sweepAccounts } from '../../api/features/sign-in/sweep-accounts.job.ts';
+import { loggedPath } from '../../api/middleware/request-log.ts';
 import { makeLooker, switchOn } from '../support/factories/open-link.ts';
 import { makeOpenSheet } from '../support/factories/sheet.ts';
 import { makeStudio, type MadeStudio } from '../support/factories/studio.ts';
@@ -108,6 +111,14 @@ it('is sealed for one installation and one sheet', () => {
   expect(unsealToken('one secret', 'sheet-a', 'rubbish')).toBeUndefined();
 });
 
+it('is blotted out of the log and of mails that went out', () => {
+  const token = 'a-token-of-an-open-link-or-its-mail';
+  for (const page of ['look', 'begin']) {
+    expect(loggedPath(`/${page}/${token}?x=1`)).toBe(`/${page}/…`);
+    expect(blotLinks(`Open http://oriel.test/${page}/${token} now`)).toBe(`Open http://oriel.test/${page}/… now`);
+  }
+});
+
 describe('looking', () => {
   it('shows the sheet, its proofs and marks; of people their initials alone', async () => {
     const { sheet, lead } = await openSheet();
@@ -210,6 +221,17 @@ describe('looking', () => {
     expect(answer.body.goTo).toBe(`/sheets/${sheet.id}`);
     expect(JSON.stringify(answer.headers['set-cookie'] ?? '')).not.toContain('oriel_look');
     expect((await lead.agent.get(seen(sheet.id)).expect(200)).body.me.role).toBe('lead');
+  });
+
+  it('is over after two weeks, and its row is swept then', async () => {
+    const { sheet } = await openSheet();
+    const looker = await makeLooker(house, await switchOn(made, sheet.id));
+    const lookers = () =>
+      house.ctx.knex('lookers').whereIn('openLinkId', house.ctx.knex('openLinks').where({ sheetId: sheet.id }).select('id'));
+    await lookers().update({ expiresAt: new Date(Date.now() - 1000) });
+    await looker.get(seen(sheet.id)).expect(401);
+    await sweepAccounts.run(house.ctx, {}, { signal: new AbortController().signal, attempt: 1, lastAttempt: false });
+    expect(await lookers()).toEqual([]);
   });
 
   it('knows no link that was cut short', async () => {
