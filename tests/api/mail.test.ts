@@ -148,7 +148,7 @@ describe('the outbox', () => {
     await house.runJobs();
     await run(randomUUID());
     expect(house.mails.mails()).toEqual([]);
-    expect(await find(id)).toMatchObject({ state: 'withdrawn' });
+    expect(await find(id)).toMatchObject({ state: 'waiting' });
     await made.owner.agent.post(`/api/commissions/${commission.id}/restore`).expect(200);
     await house.runJobs();
     expect(await find(id)).toMatchObject({ state: 'sent' });

@@ -7,7 +7,8 @@ import type { StaffActor } from '../../middleware/actor.ts';
 import { problem } from '../../middleware/problem.ts';
 import { Commission } from '../../models/Commission.ts';
 import { Delivery } from '../../models/Delivery.ts';
-import { holdMails, releaseMails } from '../mail/hold-mails.ts';
+import { Mail } from '../../models/Mail.ts';
+import { enqueueSending } from '../mail/queue-mail.ts';
 import { addToRecord } from '../record/add-to-record.ts';
 import { countContents } from './count-contents.ts';
 import { readCommission } from './read-commission.ts';
@@ -19,7 +20,6 @@ export async function deleteCommission(ctx: Context, actor: StaffActor, commissi
     if (!commission) throw problem(404);
     const { frames, sheets, deliveries } = await countContents(trx, actor, commissionId);
     await Commission.within(actor, trx).findById(commissionId).patch({ deletedAt: new Date() });
-    await holdMails(trx, commissionId);
     await addToRecord(trx, {
       studioId: actor.studioId,
       commissionId,
@@ -39,7 +39,6 @@ export async function restoreCommission(ctx: Context, actor: StaffActor, commiss
     const answer = await readCommission(trx, actor, commissionId);
     if (!restored) return answer;
     await sendWhatWaits(trx, actor, commissionId);
-    await releaseMails(trx, commissionId);
     await addToRecord(trx, {
       studioId: actor.studioId,
       commissionId,
@@ -52,8 +51,10 @@ export async function restoreCommission(ctx: Context, actor: StaffActor, commiss
   });
 }
 
-/** Deliveries whose archives became ready while the commission was deleted were not sent; the job finds out which. */
+/** Mails were held while the commission was deleted, and deliveries whose archives became ready were not sent; the job finds out which. */
 async function sendWhatWaits(trx: Transaction, actor: StaffActor, commissionId: string): Promise<void> {
   const waiting = await Delivery.within(actor, trx).where({ commissionId }).whereNull('sentAt').whereNull('withdrawnAt').select('id');
   for (const { id } of waiting) await enqueue(trx, 'send-delivery', { deliveryId: id }, { key: `send-delivery:${id}` });
+  const mails = await Mail.query(trx).where({ commissionId, state: 'waiting' }).select('id');
+  for (const { id } of mails) await enqueueSending(trx, id);
 }

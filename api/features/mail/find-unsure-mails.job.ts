@@ -21,6 +21,7 @@ export const findUnsureMails: Job = {
       const { rows } = await trx.raw<{ rows: { id: string }[] }>(
         `select id from mails
           where state = 'waiting' and created_at < now() - interval '5 minutes'
+            and not exists (select from commissions c where c.id = mails.commission_id and c.deleted_at is not null)
             and not exists (select from graphile_worker.jobs where key = 'send-mail:' || mails.id and attempts < max_attempts)
           limit 500 for update skip locked`,
       );

@@ -1,5 +1,6 @@
 import type { Context } from '../../context.ts';
 import type { Job } from '../../jobs/job.ts';
+import { Commission } from '../../models/Commission.ts';
 import { Mail } from '../../models/Mail.ts';
 import { handOver, type Outcome } from '../../services/mail.ts';
 import { blotLinks } from './blot-links.ts';
@@ -34,10 +35,11 @@ export function messageIdOf(from: string, mailId: string): string {
   return `<${mailId}@${from.split('@').at(-1) ?? 'localhost'}>`;
 }
 
-/** The UPDATE is the claim: of two workers one gets the row, the other none. */
+/** The UPDATE is the claim: of two workers one gets the row, the other none. What a deleted commission has to say waits until it is brought back. */
 async function claim(ctx: Context, mailId: string): Promise<Mail | undefined> {
   const [mail] = await Mail.query(ctx.knex)
     .where({ id: mailId, state: 'waiting' })
+    .whereNotExists(Commission.query().whereColumn('commissions.id', 'mails.commissionId').whereNotNull('commissions.deletedAt'))
     .patch({ state: 'handing-over', handedOverAt: new Date(), attempts: ctx.knex.raw('attempts + 1') })
     .returning('*');
   return mail;
