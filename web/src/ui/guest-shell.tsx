@@ -27,7 +27,11 @@ export function GuestShell({ studio, aside, foot, children }: GuestShellProps) {
       <main id="content" tabIndex={-1} className="flex flex-1 flex-col px-4 pt-3 md:px-10">
         {children}
       </main>
-      {foot ? <footer className="sticky bottom-0 z-20 border-t border-ink bg-sheet px-4 py-3 md:px-10">{foot}</footer> : null}
+      {foot ? (
+        <footer data-foot className="sticky bottom-0 z-20 border-t border-ink bg-sheet px-4 py-3 md:px-10">
+          {foot}
+        </footer>
+      ) : null}
     </div>
   );
 }

@@ -74,7 +74,7 @@ export function NoticeRegion() {
     <div
       role="region"
       aria-label={t('ui.notices')}
-      className="fixed right-4 bottom-20 left-4 z-40 grid gap-2 md:left-auto md:w-96"
+      className="fixed right-4 bottom-4 left-4 in-[body:has([data-foot])]:bottom-20 z-40 grid gap-2 md:left-auto md:w-96"
       aria-live="polite"
     >
       {shown.map((notice) => (

@@ -29,7 +29,10 @@ export function SelectionBar(props: Props) {
   const someHidden = frames.some((frame) => frame.hidden);
   const someVisible = frames.some((frame) => !frame.hidden);
   return (
-    <div className="sticky bottom-0 z-20 -mx-1 mt-3 flex flex-wrap items-center gap-x-2 gap-y-1.5 border border-ink bg-sheet px-3 py-2">
+    <div
+      data-foot
+      className="sticky bottom-0 z-20 -mx-1 mt-3 flex flex-wrap items-center gap-x-2 gap-y-1.5 border border-ink bg-sheet px-3 py-2"
+    >
       <p role="status" className="font-bold">
         {counted(frames.length, { one: 'chosen', many: 'chosen' })}
       </p>
