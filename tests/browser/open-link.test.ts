@@ -129,6 +129,8 @@ describe('the open link', () => {
     const open = await openSheet();
     const visitor = await site.visit(`/look/${await switchOn(made, open.sheet.id)}`);
     await visitor.page.getByRole('link', { name: /^Proof 1,/ }).click();
+    // The sheet's own button has the same name until the viewer is there.
+    await visitor.page.waitForURL(/\/proofs\/1$/);
     await visitor.page.getByRole('button', { name: 'Mark, Proof 1', exact: true }).click();
     await visitor.page.getByRole('dialog', { name: 'To mark, say who you are' }).waitFor();
     await visitor.page.keyboard.press('Escape');
