@@ -2,13 +2,14 @@ import { useMutation, useQueryClient } from '@tanstack/react-query';
 import { useId, type FormEvent } from 'react';
 import { useTranslation } from 'react-i18next';
 import type { GuestSheet, InviteReviewer } from '../../../../api/contract/guest-sheets.ts';
-import { api, ApiProblem } from '../../lib/api.ts';
+import { api } from '../../lib/api.ts';
 import { Button } from '../../ui/button.tsx';
 import { Dialog } from '../../ui/dialog.tsx';
 import { Field } from '../../ui/field.tsx';
 import { showNotice } from '../../ui/notices.tsx';
 import { TextArea, TextInput } from '../../ui/text-input.tsx';
 import { guestsAddress, sheetKeys } from '../sheets-guest/queries.ts';
+import { formProblem } from './form-problem.ts';
 import '../../messages/beyond-sheet.ts';
 
 interface Props {
@@ -29,9 +30,7 @@ export default function InviteDialog({ sheet, onClose }: Props) {
       onClose();
     },
   });
-  const problem = invite.error instanceof ApiProblem ? invite.error : undefined;
-  const wrong = (path: string) => problem?.errors.find((error) => error.path === path)?.message;
-  const general = invite.error && (problem?.errors.length ?? 0) === 0 ? invite.error.message : undefined;
+  const { at, general } = formProblem(invite.error);
 
   const onSubmit = (event: FormEvent<HTMLFormElement>) => {
     event.preventDefault();
@@ -56,13 +55,13 @@ export default function InviteDialog({ sheet, onClose }: Props) {
     >
       <form id={form} noValidate onSubmit={onSubmit} className="grid gap-4">
         <p>{t('invite.words')}</p>
-        <Field label={t('invite.name')} error={wrong('name')}>
+        <Field label={t('invite.name')} error={at('name')}>
           {(control) => <TextInput {...control} name="name" autoComplete="off" maxLength={120} />}
         </Field>
-        <Field label={t('invite.email')} error={wrong('email')}>
+        <Field label={t('invite.email')} error={at('email')}>
           {(control) => <TextInput {...control} name="email" type="email" autoComplete="off" />}
         </Field>
-        <Field label={t('invite.message')} optional={t('ui.optional')} error={wrong('words')}>
+        <Field label={t('invite.message')} optional={t('ui.optional')} error={at('words')}>
           {(control) => <TextArea {...control} name="words" maxLength={4000} />}
         </Field>
         {general ? (

@@ -3,11 +3,12 @@ import { useId, type FormEvent } from 'react';
 import { useTranslation } from 'react-i18next';
 import type { GuestSheet } from '../../../../api/contract/guest-sheets.ts';
 import type { AskedToMark, AskToMark } from '../../../../api/contract/open-links.ts';
-import { api, ApiProblem } from '../../lib/api.ts';
+import { api } from '../../lib/api.ts';
 import { Button } from '../../ui/button.tsx';
 import { Dialog } from '../../ui/dialog.tsx';
 import { Field } from '../../ui/field.tsx';
 import { TextInput } from '../../ui/text-input.tsx';
+import { formProblem } from '../guests/form-problem.ts';
 import '../../messages/beyond-sheet.ts';
 
 interface Props {
@@ -22,9 +23,7 @@ export default function AskDialog({ sheet, onClose }: Props) {
   const ask = useMutation({
     mutationFn: (who: AskToMark) => api.post<AskedToMark>(`/api/guest/sheets/${sheet.id}/ask-to-mark`, who),
   });
-  const problem = ask.error instanceof ApiProblem ? ask.error : undefined;
-  const wrong = (path: string) => problem?.errors.find((error) => error.path === path)?.message;
-  const general = ask.error && (problem?.errors.length ?? 0) === 0 ? ask.error.message : undefined;
+  const { at, general } = formProblem(ask.error);
 
   const onSubmit = (event: FormEvent<HTMLFormElement>) => {
     event.preventDefault();
@@ -57,10 +56,10 @@ export default function AskDialog({ sheet, onClose }: Props) {
     >
       <form id={form} noValidate onSubmit={onSubmit} className="grid gap-4">
         <p>{t('looking.why', { studio: sheet.studio.name })}</p>
-        <Field label={t('looking.name')} hint={t('looking.nameHint')} error={wrong('name')}>
+        <Field label={t('looking.name')} hint={t('looking.nameHint')} error={at('name')}>
           {(control) => <TextInput {...control} name="name" autoComplete="name" maxLength={120} />}
         </Field>
-        <Field label={t('looking.email')} error={wrong('email')}>
+        <Field label={t('looking.email')} error={at('email')}>
           {(control) => <TextInput {...control} name="email" type="email" autoComplete="email" maxLength={254} />}
         </Field>
         {general ? (

@@ -1,7 +1,6 @@
 import { useId, useState, type FormEvent } from 'react';
 import type { OpenLinkTerms } from '../../../../api/contract/open-links.ts';
 import type { StudioSheet } from '../../../../api/contract/sheets.ts';
-import { ApiProblem } from '../../lib/api.ts';
 import { formatDay } from '../../lib/dates.ts';
 import { Button } from '../../ui/button.tsx';
 import { Checkbox } from '../../ui/checkbox.tsx';
@@ -9,6 +8,7 @@ import { Dialog } from '../../ui/dialog.tsx';
 import { Field } from '../../ui/field.tsx';
 import { showNotice } from '../../ui/notices.tsx';
 import { TextInput } from '../../ui/text-input.tsx';
+import { formProblem } from '../guests/form-problem.ts';
 import { useSheetDeed } from './mutations.ts';
 
 /** What the link asks for and its last day: when it is switched on, and to change it later. */
@@ -19,9 +19,7 @@ export function OpenLinkDialog({ sheet, onClose }: { sheet: StudioSheet; onClose
   const [passphrase, setPassphrase] = useState('');
   const [clears, setClears] = useState(false);
   const [endsOn, setEndsOn] = useState(link?.endsOn ?? '');
-  const problem = deed.error instanceof ApiProblem ? deed.error : null;
-  const wrong = (path: string) => problem?.errors.find((error) => error.path === path)?.message;
-  const general = deed.error && (problem?.errors.length ?? 0) === 0 ? deed.error.message : undefined;
+  const { at, general } = formProblem(deed.error);
 
   const save = (event: FormEvent) => {
     event.preventDefault();
@@ -61,7 +59,7 @@ export function OpenLinkDialog({ sheet, onClose }: { sheet: StudioSheet; onClose
                 ? 'Empty: it stays as it is. A new one has at least 8 characters, and whoever looks by the present one has to give it.'
                 : 'At least 8 characters. Tell it by another way than the link: on the telephone, say.'
             }
-            error={wrong('passphrase')}
+            error={at('passphrase')}
           >
             {(control) => (
               <TextInput
@@ -84,7 +82,7 @@ export function OpenLinkDialog({ sheet, onClose }: { sheet: StudioSheet; onClose
           label="Last day"
           optional="may stay empty"
           hint={`Else it ends with the sheet${sheet.chooseBy ? `, on ${formatDay(sheet.chooseBy)}` : ''}.`}
-          error={wrong('endsOn')}
+          error={at('endsOn')}
         >
           {(control) => (
             <TextInput

@@ -1,8 +1,8 @@
 import { useMutation, useQueryClient } from '@tanstack/react-query';
-import { useEffect, useRef } from 'react';
 import { useTranslation } from 'react-i18next';
 import { useNavigate, useParams } from 'react-router-dom';
 import type { OpenedLink } from '../../../../api/contract/guests.ts';
+import { useHandOver } from '../../features/guests/use-hand-over.ts';
 import { RefusedLink } from '../../features/open-links/refused-link.tsx';
 import { api, ApiProblem } from '../../lib/api.ts';
 import { Pending } from '../../ui/pending.tsx';
@@ -27,12 +27,7 @@ export function Component() {
     },
   });
   const { mutate } = begin;
-  const asked = useRef('');
-  useEffect(() => {
-    if (asked.current === token) return;
-    asked.current = token;
-    mutate();
-  }, [mutate, token]);
+  useHandOver(token, mutate);
 
   return begin.isError ? <RefusedLink error={begin.error} onRetry={() => mutate()} /> : <Pending what={t('lookLink.confirming')} />;
 }

@@ -1,8 +1,9 @@
 import { useMutation, useQueryClient } from '@tanstack/react-query';
-import { useEffect, useRef, type FormEvent } from 'react';
+import type { FormEvent } from 'react';
 import { useTranslation } from 'react-i18next';
 import { useNavigate, useParams } from 'react-router-dom';
 import type { LookAnswer } from '../../../../api/contract/open-links.ts';
+import { useHandOver } from '../../features/guests/use-hand-over.ts';
 import { RefusedLink } from '../../features/open-links/refused-link.tsx';
 import { api, ApiProblem } from '../../lib/api.ts';
 import { Button } from '../../ui/button.tsx';
@@ -28,12 +29,7 @@ export function Component() {
   const look = useMutation({ mutationFn: () => open(), onSuccess });
   const answer = useMutation({ mutationFn: open, onSuccess });
   const { mutate } = look;
-  const asked = useRef('');
-  useEffect(() => {
-    if (asked.current === token) return;
-    asked.current = token;
-    mutate();
-  }, [mutate, token]);
+  useHandOver(token, mutate);
 
   if (look.isError) return <RefusedLink error={look.error} onRetry={() => mutate()} />;
   if (!look.isSuccess || look.data.goTo) return <Pending what={t('open.opening')} />;

@@ -1,8 +1,8 @@
 import { useMutation, useQueryClient } from '@tanstack/react-query';
-import { useEffect, useRef } from 'react';
 import { useTranslation } from 'react-i18next';
 import { useNavigate, useParams } from 'react-router-dom';
 import type { Asked, OpenedLink } from '../../../../api/contract/guests.ts';
+import { useHandOver } from '../../features/guests/use-hand-over.ts';
 import { api, ApiProblem } from '../../lib/api.ts';
 import { Button } from '../../ui/button.tsx';
 import { GuestShell } from '../../ui/guest-shell.tsx';
@@ -29,12 +29,7 @@ export function Component() {
     },
   });
   const { mutate } = open;
-  const asked = useRef('');
-  useEffect(() => {
-    if (asked.current === token) return;
-    asked.current = token;
-    mutate();
-  }, [mutate, token]);
+  useHandOver(token, mutate);
 
   if (!open.isError) return <Pending what={t('open.opening')} />;
   const error = open.error;
